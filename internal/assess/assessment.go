@@ -1,0 +1,46 @@
+package assess
+
+import (
+	"crypto/sha256"
+	"encoding/base32"
+	"encoding/json"
+	"fmt"
+	"strings"
+
+	"ridgehop/profile"
+)
+
+// EngineVersion names the way in which answers are computed. It changes
+// whenever the same question over the same rasters may be answered otherwise,
+// and with it every id.
+const EngineVersion = "1"
+
+// Assessment is one link judged, with all that an answer or a drawing needs.
+// It never changes.
+type Assessment struct {
+	ID      string
+	Engine  string
+	Request Request // with defaults filled in
+	Link    profile.Link
+	// GroundAM and GroundBM are the terrain heights at the ends; NaN if void.
+	GroundAM, GroundBM float64
+	Profile            profile.Profile
+	Judgement          profile.Assessment
+	Cautions           []Caution
+}
+
+// identify computes the id: a hash of the canonical request, the versions of
+// the rasters that it rests on, and the engine's version.
+func (a *Assessment) identify() error {
+	h := sha256.New()
+	if err := json.NewEncoder(h).Encode(a.Request); err != nil {
+		return fmt.Errorf("canonical request: %w", err)
+	}
+	for _, s := range a.Profile.Sources {
+		fmt.Fprintf(h, "%s %s\n", s.Name, s.Version)
+	}
+	fmt.Fprintf(h, "engine %s\n", a.Engine)
+	digest := base32.StdEncoding.WithPadding(base32.NoPadding).EncodeToString(h.Sum(nil))
+	a.ID = "as_" + strings.ToLower(digest[:26]) // 130 bits
+	return nil
+}

@@ -1,0 +1,58 @@
+package assess
+
+import (
+	"fmt"
+
+	"ridgehop/profile"
+)
+
+// Caution is something that whoever acts on an assessment should know.
+type Caution struct {
+	Code   string
+	Detail string
+}
+
+// standing cautions hold for every link.
+func standing() []Caution {
+	return []Caution{
+		{"survey_before_build", "Heights come from elevation data, which may miss new buildings, trees and cranes: confirm the path on site before building."},
+		{"work_at_height", "Roofs and masts: trained crews with fall protection only; structure, wind load and lightning protection by local codes and licensed practice."},
+		{"radio_exposure", "Keep people out of the beam while it is on; local exposure limits apply."},
+		{"spectrum_licence", "Frequency, power and antenna need the licence or exemption of the country concerned."},
+	}
+}
+
+// obstacleUncertaintyGHz is the frequency above which P.530-19 section 2.2.2
+// says that the uncertainty of obstacle heights counts.
+const obstacleUncertaintyGHz = 13.0
+
+// cautions are those that this link needs, the particular ones first.
+func (r Request) cautions(p *profile.Profile) []Caution {
+	var out []Caution
+	add := func(code, format string, args ...any) {
+		out = append(out, Caution{code, fmt.Sprintf(format, args...)})
+	}
+	kinds := map[profile.Kind]bool{}
+	for _, s := range p.Sources {
+		kinds[s.Kind] = true
+	}
+	if r.CoverHeightM > 0 && kinds[profile.KindSurface] {
+		add("cover_not_added", "Cover of %g m was not added where a surface raster holds it already.", r.CoverHeightM)
+	}
+	if kinds[profile.KindUnstated] {
+		add("raster_kind_unstated", "The rasters do not say whether their heights include roofs and trees; the public global models largely do.")
+	}
+	if len(kinds) > 1 {
+		add("raster_kinds_mixed", "Part of the path rests on bare earth and part on a surface with roofs and trees.")
+	}
+	if p.PixelM > 0 && p.SpacingM > 1.5*p.PixelM {
+		add("coarse_spacing", "Samples are %.3g m apart but pixels %.3g m: a ridge may lie unseen between samples.", p.SpacingM, p.PixelM)
+	}
+	if r.FrequencyGHz > obstacleUncertaintyGHz {
+		add("obstacle_height_uncertainty", "Above about 13 GHz the Fresnel zone is narrow: add the uncertainty of the obstacle heights (P.530-19 2.2.2).")
+	}
+	if len(p.Sources) > 0 && !kinds[profile.KindProfile] {
+		add("vertical_datum", "Heights are used as the rasters state them; sources on different vertical datums are not yet brought to one.")
+	}
+	return append(out, standing()...)
+}

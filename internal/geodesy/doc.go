@@ -1,0 +1,9 @@
+// Package geodesy measures on the WGS 84 ellipsoid: the geodesic between two
+// points, its length and azimuths, and positions along it. The work is done by
+// a kept library after C. F. F. Karney, Algorithms for geodesics, Journal of
+// Geodesy 87 (2013), which converges everywhere, poles, antimeridian and
+// antipodes included.
+//
+// Points are orb.Point: longitude, latitude, in degrees. Everything here is
+// safe for concurrent use.
+package geodesy

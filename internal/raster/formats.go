@@ -1,0 +1,46 @@
+package raster
+
+import (
+	"fmt"
+	"path/filepath"
+	"strings"
+)
+
+// format ties a file ending to the one driver that may open it.
+type format struct {
+	ending string
+	driver string
+}
+
+// formats is the allow-list. Nothing else is ever handed to GDAL, so a file
+// cannot choose a driver that fetches addresses or runs expressions. Longer
+// endings stand first.
+func formats() []format {
+	return []format{
+		{".hgt.zip", "SRTMHGT"},
+		{".hgt", "SRTMHGT"},
+		{".tiff", "GTiff"},
+		{".tif", "GTiff"},
+		{".dem", "USGSDEM"},
+		{".asc", "AAIGrid"},
+	}
+}
+
+// Recognised reports whether the file's ending names a format that is read
+// here: GeoTIFF (.tif, .tiff), SRTM (.hgt, .hgt.zip), USGS DEM (.dem) or Arc
+// ASCII grid (.asc).
+func Recognised(path string) bool {
+	_, err := driverFor(path)
+	return err == nil
+}
+
+func driverFor(path string) (string, error) {
+	name := strings.ToLower(filepath.Base(path))
+	for _, f := range formats() {
+		if strings.HasSuffix(name, f.ending) {
+			return f.driver, nil
+		}
+	}
+	return "", fmt.Errorf("%w: %q; GeoTIFF (.tif), SRTM (.hgt, .hgt.zip), USGS DEM (.dem) and Arc ASCII (.asc) are",
+		ErrFormat, filepath.Base(path))
+}

@@ -1,0 +1,138 @@
+package terrain
+
+import (
+	"context"
+	"math"
+)
+
+// cursor reads heights of one mosaic along one path. It keeps the chunk that
+// it read last at hand, so that most samples touch nothing but an array.
+type cursor struct {
+	ctx    context.Context
+	m      *mosaic
+	chunks *chunks
+
+	// The chunk at hand, in the mosaic's columns and rows (of the turn that
+	// the path is in), and the tile that it belongs to.
+	i0, j0, columns, rows int
+	heights               []float32
+	tile                  int32
+
+	found []int32 // scratch
+}
+
+// pixel states of a lookup.
+const (
+	absent = iota // no raster of the mosaic has this pixel
+	void          // one has, without a height
+	known
+)
+
+// height interpolates at (u, v), whole numbers being pixel centres. It returns
+// NaN where the mosaic has no height there, and the tile that the nearest
+// pixel belongs to.
+func (c *cursor) height(u, v float64) (float64, int32, error) {
+	i, j := int(math.Floor(u)), int(math.Floor(v))
+	a, b := i-c.i0, j-c.j0
+	if a >= 0 && b >= 0 && a+1 < c.columns && b+1 < c.rows {
+		at := b*c.columns + a
+		fx, fy := u-float64(i), v-float64(j)
+		upper, lower := c.heights[at:at+2:at+2], c.heights[at+c.columns:at+c.columns+2:at+c.columns+2]
+		top := float64(upper[0]) + fx*(float64(upper[1])-float64(upper[0]))
+		bottom := float64(lower[0]) + fx*(float64(lower[1])-float64(lower[0]))
+		if h := top + fy*(bottom-top); h == h {
+			return h, c.tile, nil
+		}
+	}
+	return c.corners(i, j, u-float64(i), v-float64(j))
+}
+
+// corners interpolates pixel by pixel: where the four lie in different chunks
+// or tiles, at edges, and near voids. A corner with a part in the height must
+// be known; one that no raster has drops out, so long as the pixel that the
+// point lies in exists.
+func (c *cursor) corners(i, j int, fx, fy float64) (float64, int32, error) {
+	nan := math.NaN()
+	home := [2]int{i + int(math.Round(fx)), j + int(math.Round(fy))}
+	sum, weight := 0.0, 0.0
+	homeTile := int32(-1)
+	for k := range 4 {
+		di, dj := k&1, k>>1
+		w := lean(fx, di) * lean(fy, dj)
+		atHome := home == [2]int{i + di, j + dj}
+		if w == 0 && !atHome {
+			continue
+		}
+		h, state, err := c.pixel(i+di, j+dj)
+		if err != nil {
+			return nan, -1, err
+		}
+		if state == void && w > 0 || state == absent && atHome {
+			return nan, -1, nil
+		}
+		if state == known {
+			sum += w * float64(h)
+			weight += w
+		}
+		if atHome {
+			homeTile = c.tile
+		}
+	}
+	if weight == 0 {
+		return nan, -1, nil
+	}
+	return sum / weight, homeTile, nil
+}
+
+// lean is the weight of the near (0) or far (1) pixel for a fraction.
+func lean(f float64, side int) float64 {
+	if side == 1 {
+		return f
+	}
+	return 1 - f
+}
+
+// pixel is the height of one pixel. On shared rows and columns the first tile
+// that knows it decides.
+func (c *cursor) pixel(i, j int) (float32, int, error) {
+	if h, ok := c.atHand(i, j); ok && h == h {
+		return h, known, nil
+	}
+	c.found = c.m.tilesAt(i, j, c.found[:0])
+	state := absent
+	for _, n := range c.found {
+		if err := c.fetch(n, i, j); err != nil {
+			return 0, absent, err
+		}
+		if h, _ := c.atHand(i, j); h == h {
+			return h, known, nil
+		}
+		state = void
+	}
+	return 0, state, nil
+}
+
+func (c *cursor) atHand(i, j int) (float32, bool) {
+	a, b := i-c.i0, j-c.j0
+	if a < 0 || b < 0 || a >= c.columns || b >= c.rows {
+		return 0, false
+	}
+	return c.heights[b*c.columns+a], true
+}
+
+// fetch takes the chunk of tile n that holds pixel (i, j) at hand.
+func (c *cursor) fetch(n int32, i, j int) error {
+	t := c.m.tiles[n]
+	x := i - t.i
+	if c.m.turn != 0 {
+		x -= c.m.turn * floorDiv(x, c.m.turn)
+	}
+	got, err := c.chunks.at(c.ctx, t.entry, x, j-t.j)
+	if err != nil {
+		return err
+	}
+	c.i0, c.j0 = i-x+got.x, t.j+got.y
+	c.columns, c.rows, c.heights = got.width, got.height, got.heights
+	c.tile = n
+	return nil
+}

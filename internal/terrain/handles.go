@@ -1,0 +1,82 @@
+package terrain
+
+import (
+	"context"
+	"sync"
+
+	"ridgehop/internal/raster"
+)
+
+// handles opens rasters when they are first read and keeps a bounded number of
+// them open. Each is used by one goroutine at a time.
+type handles struct {
+	library *raster.Library
+	places  chan struct{} // one token for each handle that may be in use
+
+	mu   sync.Mutex
+	idle []handle // least recently used first
+}
+
+type handle struct {
+	entry   *entry
+	dataset *raster.Dataset
+}
+
+func newHandles(library *raster.Library, most int) *handles {
+	return &handles{library: library, places: make(chan struct{}, most)}
+}
+
+// with runs use with an open handle of the raster, waiting while all allowed
+// handles are in use.
+func (h *handles) with(ctx context.Context, e *entry, use func(*raster.Dataset) error) error {
+	select {
+	case h.places <- struct{}{}:
+	case <-ctx.Done():
+		return ctx.Err()
+	}
+	defer func() { <-h.places }()
+	dataset := h.takeIdle(e)
+	if dataset == nil {
+		var err error
+		if dataset, err = h.library.Open(e.path); err != nil {
+			return err
+		}
+	}
+	err := use(dataset)
+	h.keepIdle(e, dataset)
+	return err
+}
+
+func (h *handles) takeIdle(e *entry) *raster.Dataset {
+	h.mu.Lock()
+	defer h.mu.Unlock()
+	for i := len(h.idle) - 1; i >= 0; i-- {
+		if h.idle[i].entry == e {
+			found := h.idle[i].dataset
+			h.idle = append(h.idle[:i], h.idle[i+1:]...)
+			return found
+		}
+	}
+	return nil
+}
+
+// keepIdle puts the handle away and closes the one that was used longest ago
+// when there are too many.
+func (h *handles) keepIdle(e *entry, dataset *raster.Dataset) {
+	h.mu.Lock()
+	defer h.mu.Unlock()
+	h.idle = append(h.idle, handle{e, dataset})
+	if len(h.idle) > cap(h.places) {
+		h.idle[0].dataset.Close()
+		h.idle = append(h.idle[:0], h.idle[1:]...)
+	}
+}
+
+func (h *handles) close() {
+	h.mu.Lock()
+	defer h.mu.Unlock()
+	for _, one := range h.idle {
+		one.dataset.Close()
+	}
+	h.idle = nil
+}
