@@ -3,6 +3,7 @@ package profile
 import (
 	"context"
 	"errors"
+	"fmt"
 	"math"
 )
 
@@ -11,7 +12,7 @@ type Terrain interface {
 	// Sample fills into with the terrain along path, evenly spaced from A to
 	// B, both included. It reuses into's slices. It never invents a height: a
 	// place without one is NaN. Errors: ErrTooManySamples, ErrUnknownRaster,
-	// those of ctx, or whatever keeps the rasters from being read. Safe for
+	// an *UnreadableError, or those of ctx. Safe for
 	// concurrent use with different into.
 	Sample(ctx context.Context, path Path, how Sampling, into *Profile) error
 }
@@ -32,6 +33,18 @@ var (
 	// ErrUnknownRaster means a raster name that is not loaded.
 	ErrUnknownRaster = errors.New("no such raster")
 )
+
+// UnreadableError means that a raster which was fit when it was loaded could
+// not be read now.
+type UnreadableError struct {
+	Raster string
+	Err    error
+}
+
+func (e *UnreadableError) Error() string { return fmt.Sprintf("raster %s: %v", e.Raster, e.Err) }
+
+// Unwrap gives the cause.
+func (e *UnreadableError) Unwrap() error { return e.Err }
 
 // Kind says what a raster's heights are the tops of.
 type Kind string

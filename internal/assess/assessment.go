@@ -44,3 +44,9 @@ func (a *Assessment) identify() error {
 	a.ID = "as_" + strings.ToLower(digest[:26]) // 130 bits
 	return nil
 }
+
+// Samples are the arrays behind the assessment, at the k-factor of its first
+// criterion.
+func (a *Assessment) Samples() profile.Samples {
+	return profile.NewSamples(&a.Link, &a.Profile, a.Link.Criteria[0].K)
+}

@@ -20,7 +20,7 @@ type InvalidError struct {
 func (e *InvalidError) Error() string {
 	texts := make([]string, len(e.Fields))
 	for i, f := range e.Fields {
-		texts[i] = f.Pointer + ": " + f.Detail
+		texts[i] = f.Pointer + " " + f.Detail
 	}
 	return strings.Join(texts, "; ")
 }

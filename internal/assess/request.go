@@ -4,17 +4,29 @@ import (
 	"ridgehop/profile"
 )
 
+// What the judge of paths defines and the callers of this package handle.
+type (
+	// Polarisation of the link.
+	Polarisation = profile.Polarisation
+	// CriteriaSet names a set of clearance criteria.
+	CriteriaSet = profile.CriteriaSet
+	// Raster describes one elevation raster.
+	Raster = profile.Raster
+	// UnreadableError means that a raster could not be read.
+	UnreadableError = profile.UnreadableError
+)
+
 // Request asks for the judgement of one link. The JSON names of the contract
 // are the API's; the tags here only serve the canonical form behind an id.
 type Request struct {
-	A            End                  `json:"a"`
-	B            End                  `json:"b"`
-	FrequencyGHz float64              `json:"frequency_ghz"`
-	Polarisation profile.Polarisation `json:"polarisation"` // empty is vertical
+	A            End          `json:"a"`
+	B            End          `json:"b"`
+	FrequencyGHz float64      `json:"frequency_ghz"`
+	Polarisation Polarisation `json:"polarisation"` // empty is vertical
 	// CriteriaSet names the criteria; empty is p530_temperate. It is ignored
 	// where Criteria lists them.
-	CriteriaSet profile.CriteriaSet `json:"criteria_set"`
-	Criteria    []Criterion         `json:"criteria,omitempty"`
+	CriteriaSet CriteriaSet `json:"criteria_set"`
+	Criteria    []Criterion `json:"criteria,omitempty"`
 	// SpacingM is the step along the path; 0 follows the finest pixel.
 	SpacingM float64 `json:"spacing_m"`
 	// Rasters limits the terrain to these rasters; empty is all.

@@ -7,6 +7,7 @@ import (
 	"github.com/maypok86/otter/v2"
 
 	"ridgehop/internal/raster"
+	"ridgehop/profile"
 )
 
 // chunk is a rectangle of decoded pixels of one raster. It never changes.
@@ -58,14 +59,14 @@ func newChunks(bytes uint64, h *handles) (*chunks, error) {
 
 // at returns the chunk of the raster that holds its pixel (x, y).
 func (c *chunks) at(ctx context.Context, e *entry, x, y int) (*chunk, error) {
-	width, height := chunkSize(e.Info)
+	width, height := chunkSize(e.info)
 	key := chunkKey{e, x / width, y / height}
 	if found, ok := c.cache.GetIfPresent(key); ok {
 		return found, nil
 	}
 	found, err := c.cache.Get(ctx, key, otter.LoaderFunc[chunkKey, *chunk](c.read))
 	if err != nil {
-		return nil, &UnreadableError{Raster: e.Name, Err: err}
+		return nil, &profile.UnreadableError{Raster: e.Name, Err: err}
 	}
 	return found, nil
 }
@@ -73,7 +74,7 @@ func (c *chunks) at(ctx context.Context, e *entry, x, y int) (*chunk, error) {
 // read decodes one chunk. Others may wait for it, so it does not stop when the
 // first to ask goes away.
 func (c *chunks) read(ctx context.Context, key chunkKey) (*chunk, error) {
-	info := key.entry.Info
+	info := key.entry.info
 	width, height := chunkSize(info)
 	out := &chunk{x: key.column * width, y: key.line * height}
 	out.width = min(width, info.Width-out.x)
@@ -87,14 +88,3 @@ func (c *chunks) read(ctx context.Context, key chunkKey) (*chunk, error) {
 	})
 	return out, err
 }
-
-// UnreadableError means that a raster which was fit when it was loaded could
-// not be read now.
-type UnreadableError struct {
-	Raster string
-	Err    error
-}
-
-func (e *UnreadableError) Error() string { return fmt.Sprintf("raster %s: %v", e.Raster, e.Err) }
-
-func (e *UnreadableError) Unwrap() error { return e.Err }

@@ -167,8 +167,8 @@ func (m *mosaic) underChord(u0, v0, u1, v1 float64) bool {
 func (t tile) touches(u0, v0, u1, v1 float64) bool {
 	near, far := 0.0, 1.0
 	for _, axis := range [2][4]float64{
-		{u0, u1 - u0, float64(t.i) - 0.5, float64(t.i+t.Info.Width) - 0.5},
-		{v0, v1 - v0, float64(t.j) - 0.5, float64(t.j+t.Info.Height) - 0.5},
+		{u0, u1 - u0, float64(t.i) - 0.5, float64(t.i+t.info.Width) - 0.5},
+		{v0, v1 - v0, float64(t.j) - 0.5, float64(t.j+t.info.Height) - 0.5},
 	} {
 		start, along, low, high := axis[0], axis[1], axis[2], axis[3]
 		if along == 0 {

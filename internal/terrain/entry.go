@@ -9,41 +9,36 @@ import (
 	"os"
 	"strings"
 	"sync"
-	"time"
-
-	"github.com/paulmach/orb"
 
 	"ridgehop/internal/raster"
 	"ridgehop/profile"
 )
 
-// Raster describes one file found in the folders, usable or not.
-type Raster struct {
-	// Name is the file's path below its folder, with slashes; it is unique.
-	Name string
-	Kind profile.Kind
-	// Problem says why the file is not used; empty if it is. The fields below
-	// are then meaningless.
-	Problem string
-	// Bound is the extent in WGS 84 longitude and latitude, outer pixel edges.
-	Bound orb.Bound
-	// PixelM is the finer side of a pixel in metres, at the raster's middle.
-	PixelM float64
-	Info   raster.Info
-	// Modified is when the file was last changed, Bytes its size.
-	Modified time.Time
-	Bytes    int64
-}
-
-// entry is a usable raster and where it lies.
+// entry is one file found in the folders, and where it lies.
 type entry struct {
-	Raster
+	profile.Raster
+	info    raster.Info
 	path    string
+	bytes   int64
 	version func() (string, error)
 }
 
-func newEntry(r Raster, path string) *entry {
-	return &entry{Raster: r, path: path, version: sync.OnceValues(func() (string, error) { return contentVersion(path) })}
+func newEntry(path, name string) *entry {
+	return &entry{
+		Raster:  profile.Raster{Name: name, Kind: kindOf(name)},
+		path:    path,
+		version: sync.OnceValues(func() (string, error) { return contentVersion(path) }),
+	}
+}
+
+// describe copies what the raster declares to where callers see it.
+func (e *entry) describe(info raster.Info) {
+	e.info = info
+	e.Width, e.Height = info.Width, info.Height
+	e.CRS, e.EPSG = info.CRS.Name, info.CRS.EPSG
+	e.Format, e.DataType = info.Driver, info.DataType
+	e.NoData, e.HasNoData = info.NoData, info.HasNoData
+	e.PixelIsPoint = info.PixelIsPoint
 }
 
 // unchanged is an error once the file is no longer the one that was loaded: its
@@ -53,7 +48,7 @@ func (e *entry) unchanged() error {
 	if err != nil {
 		return errors.New("the file is gone")
 	}
-	if stat.Size() != e.Bytes || !stat.ModTime().Equal(e.Modified) {
+	if stat.Size() != e.bytes || !stat.ModTime().Equal(e.Modified) {
 		return errors.New("the file has changed since it was loaded: restart to use it as it is now")
 	}
 	return nil

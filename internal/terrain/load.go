@@ -60,17 +60,17 @@ func (t *Terrain) scan(ctx context.Context, folder string, log *slog.Logger) ([]
 		if err != nil {
 			return err
 		}
-		found := t.inspect(path, filepath.ToSlash(name))
-		t.rasters = append(t.rasters, found)
-		if found.Problem != "" {
-			log.Warn("raster not used", "raster", found.Name, "reason", found.Problem)
+		e := newEntry(path, filepath.ToSlash(name))
+		t.entries = append(t.entries, e)
+		if err := t.inspect(e); err != nil {
+			e.Problem = strings.ReplaceAll(err.Error(), path, filepath.Base(path))
+			log.Warn("raster not used", "raster", e.Name, "reason", e.Problem)
 			return nil
 		}
-		e := newEntry(found, path)
-		if t.systems[found.Info.CRS.WKT] == nil {
-			t.systems[found.Info.CRS.WKT] = &projectors{library: t.library}
+		if t.systems[e.info.CRS.WKT] == nil {
+			t.systems[e.info.CRS.WKT] = &projectors{library: t.library}
 		}
-		t.byName[found.Name] = e
+		t.byName[e.Name] = e
 		usable = append(usable, e)
 		return nil
 	})
@@ -83,35 +83,29 @@ func (t *Terrain) scan(ctx context.Context, folder string, log *slog.Logger) ([]
 
 // inspect opens a file, checks it, and reads its last block, which shows a file
 // that was cut short.
-func (t *Terrain) inspect(path, name string) Raster {
-	r := Raster{Name: name, Kind: kindOf(name)}
-	if _, taken := t.byName[name]; taken {
-		r.Problem = "a raster of the same name was found in an earlier folder"
-		return r
+func (t *Terrain) inspect(e *entry) error {
+	if _, taken := t.byName[e.Name]; taken {
+		return errors.New("a raster of the same name was found in an earlier folder")
 	}
-	problem := func(err error) Raster {
-		r.Problem = problemText(err, path)
-		return r
-	}
-	stat, err := os.Stat(path)
+	stat, err := os.Stat(e.path)
 	if err != nil {
-		return problem(errors.New("cannot be read"))
+		return errors.New("cannot be read")
 	}
-	r.Modified, r.Bytes = stat.ModTime(), stat.Size()
-	dataset, err := t.library.Open(path)
+	e.Modified, e.bytes = stat.ModTime(), stat.Size()
+	dataset, err := t.library.Open(e.path)
 	if err != nil {
-		return problem(err)
+		return err
 	}
 	defer dataset.Close()
-	r.Info = dataset.Info()
-	if err := dataset.Read(r.Info.Width-1, r.Info.Height-1, 1, 1, make([]float32, 1)); err != nil {
-		return problem(err)
+	e.describe(dataset.Info())
+	if err := dataset.Read(e.Width-1, e.Height-1, 1, 1, make([]float32, 1)); err != nil {
+		return err
 	}
-	if r.Bound, err = t.extent(r.Info); err != nil {
-		return problem(err)
+	if e.Bound, err = t.extent(e.info); err != nil {
+		return err
 	}
-	r.PixelM = pixelMetres(r.Info.CRS, r.Info.Grid, r.Bound.Center().Lat())
-	return r
+	e.PixelM = pixelMetres(e.info.CRS, e.info.Grid, e.Bound.Center().Lat())
+	return nil
 }
 
 // extent is the box of longitudes and latitudes around a raster's outer edge.
@@ -151,9 +145,4 @@ func edge(left, bottom, right, top float64) (x, y []float64) {
 		y = append(y, bottom, bottom+f*(top-bottom), top, top-f*(top-bottom))
 	}
 	return x, y
-}
-
-// problemText keeps a folder's place on disk out of what callers see.
-func problemText(err error, path string) string {
-	return strings.ReplaceAll(err.Error(), path, filepath.Base(path))
 }

@@ -50,12 +50,12 @@ func floorDiv(a, b int) int {
 
 // contains reports whether pixel (i, j) of the mosaic belongs to the tile.
 func (t tile) contains(i, j int) bool {
-	return i >= t.i && j >= t.j && i < t.i+t.Info.Width && j < t.j+t.Info.Height
+	return i >= t.i && j >= t.j && i < t.i+t.info.Width && j < t.j+t.info.Height
 }
 
 func newMosaic(e *entry, own *projectors) *mosaic {
 	m := &mosaic{
-		crs: e.Info.CRS, kind: e.Kind, grid: e.Info.Grid, pixelM: e.PixelM, bound: e.Bound,
+		crs: e.info.CRS, kind: e.Kind, grid: e.info.Grid, pixelM: e.PixelM, bound: e.Bound,
 		index: map[cell][]int32{}, projectors: own,
 	}
 	if m.crs.Geographic {
@@ -74,8 +74,8 @@ const gridTolerance = 1e-3
 // accept adds the raster if it lies on the mosaic's grid and overlaps none of
 // its tiles by more than a shared row or column.
 func (m *mosaic) accept(e *entry) bool {
-	g := e.Info.Grid
-	sameSystem := m.kind == e.Kind && (m.crs.WKT == e.Info.CRS.WKT || m.crs.EPSG != 0 && m.crs.EPSG == e.Info.CRS.EPSG)
+	g := e.info.Grid
+	sameSystem := m.kind == e.Kind && (m.crs.WKT == e.info.CRS.WKT || m.crs.EPSG != 0 && m.crs.EPSG == e.info.CRS.EPSG)
 	if !sameSystem || !sameStep(m.grid.PixelX, g.PixelX) || !sameStep(m.grid.PixelY, g.PixelY) {
 		return false
 	}
@@ -85,7 +85,7 @@ func (m *mosaic) accept(e *entry) bool {
 		return false
 	}
 	column, row := m.wrapped(int(math.Round(i))), int(math.Round(j))
-	if m.overlaps(column, row, e.Info) {
+	if m.overlaps(column, row, e.info) {
 		return false
 	}
 	m.add(e, column, row)
@@ -107,8 +107,8 @@ func (m *mosaic) wrapped(i int) int {
 func (m *mosaic) overlaps(i, j int, info raster.Info) bool {
 	for n := range m.near(i, j, info) {
 		t := m.tiles[n]
-		width := min(i+info.Width, t.i+t.Info.Width) - max(i, t.i)
-		height := min(j+info.Height, t.j+t.Info.Height) - max(j, t.j)
+		width := min(i+info.Width, t.i+t.info.Width) - max(i, t.i)
+		height := min(j+info.Height, t.j+t.info.Height) - max(j, t.j)
 		if width > 1 && height > 1 {
 			return true
 		}
@@ -120,7 +120,7 @@ func (m *mosaic) add(e *entry, i, j int) {
 	n := int32(len(m.tiles)) // #nosec G115 -- a folder holds far fewer files
 	m.tiles = append(m.tiles, tile{entry: e, i: i, j: j})
 	m.bound = m.bound.Union(e.Bound)
-	for c := range cells(i, j, i+e.Info.Width-1, j+e.Info.Height-1) {
+	for c := range cells(i, j, i+e.info.Width-1, j+e.info.Height-1) {
 		m.index[c] = append(m.index[c], n)
 	}
 }

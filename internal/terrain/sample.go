@@ -134,7 +134,7 @@ func (s *sampler) name() error {
 	for _, e := range s.entries {
 		version, err := e.version()
 		if err != nil {
-			return &UnreadableError{Raster: e.Name, Err: err}
+			return &profile.UnreadableError{Raster: e.Name, Err: err}
 		}
 		s.into.Sources = append(s.into.Sources, profile.Source{
 			Name: e.Name, Version: version, Kind: e.Kind, DataDate: e.Modified.UTC().Format("2006-01-02"),

@@ -1,10 +1,12 @@
 package terrain
 
 import (
+	"context"
 	"slices"
 	"strings"
 
 	"ridgehop/internal/raster"
+	"ridgehop/profile"
 )
 
 // Options bound what a Terrain takes. Zero values mean the defaults.
@@ -18,7 +20,7 @@ type Options struct {
 // Terrain is a collection of rasters. Load makes one; Close frees it.
 type Terrain struct {
 	library *raster.Library
-	rasters []Raster // everything found, usable or not, by name
+	entries []*entry // everything found, usable or not
 	byName  map[string]*entry
 	mosaics []*mosaic
 	handles *handles
@@ -26,19 +28,29 @@ type Terrain struct {
 	systems map[string]*projectors // by the CRS's WKT
 }
 
-// Rasters lists every file found, by name: usable ones, and unusable ones with
-// the reason.
-func (t *Terrain) Rasters() []Raster { return slices.Clone(t.rasters) }
-
-// Version is the version of a usable raster, as profile.Source gives it. The
-// first call reads the whole file.
-func (t *Terrain) Version(name string) (string, error) {
-	e, ok := t.byName[name]
-	if !ok {
-		return "", nil
+// Rasters lists every file found: usable ones, and unusable ones with the
+// reason. The first call reads each usable file whole, for its version, and
+// stops when ctx ends.
+func (t *Terrain) Rasters(ctx context.Context) ([]profile.Raster, error) {
+	out := make([]profile.Raster, 0, len(t.entries))
+	for _, e := range t.entries {
+		if err := ctx.Err(); err != nil {
+			return nil, err
+		}
+		r := e.Raster
+		if r.Problem == "" {
+			var err error
+			if r.Version, err = e.version(); err != nil {
+				r.Problem = "cannot be read any more"
+			}
+		}
+		out = append(out, r)
 	}
-	return e.version()
+	return out, nil
 }
+
+// Usable counts the rasters that answers may rest on.
+func (t *Terrain) Usable() int { return len(t.byName) }
 
 // Close closes the open files. No Sample may be running.
 func (t *Terrain) Close() {
@@ -56,7 +68,7 @@ func (t *Terrain) lay(entries []*entry) []*mosaic {
 	var mosaics []*mosaic
 	for _, e := range sorted {
 		if !slices.ContainsFunc(mosaics, func(m *mosaic) bool { return m.accept(e) }) {
-			mosaics = append(mosaics, newMosaic(e, t.systems[e.Info.CRS.WKT]))
+			mosaics = append(mosaics, newMosaic(e, t.systems[e.info.CRS.WKT]))
 		}
 	}
 	return mosaics

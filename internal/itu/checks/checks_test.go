@@ -7,7 +7,6 @@ import (
 	"os"
 	"path/filepath"
 	"slices"
-	"sort"
 	"testing"
 )
 
@@ -53,7 +52,7 @@ func TestSharedChecks(t *testing.T) {
 	for _, path := range names {
 		summary = append(summary, runFile(t, path, operations))
 	}
-	sort.Strings(summary)
+	slices.Sort(summary)
 	for _, line := range summary {
 		t.Log(line)
 	}

@@ -2,6 +2,7 @@ package checks
 
 import (
 	"fmt"
+	"slices"
 
 	"ridgehop/internal/itu/p526"
 )
@@ -24,6 +25,9 @@ func diffractionOperations(profiles map[string]terrain) map[string]operation {
 		"spherical":   spherical,
 		"delta_bullington": func(in inputs) (outputs, error) {
 			return deltaBullington(in, profiles)
+		},
+		"cascaded": func(in inputs) (outputs, error) {
+			return cascadedCylinders(in, profiles)
 		},
 	}
 }
@@ -65,21 +69,37 @@ func spherical(in inputs) (outputs, error) {
 
 // surface adds the clutter to the points between the ends, as P.1812 does.
 func (p terrain) surface() []float64 {
-	surface := append([]float64(nil), p.GroundM...)
+	surface := slices.Clone(p.GroundM)
 	for i := 1; i < len(p.ClutterM)-1; i++ {
 		surface[i] += p.ClutterM[i]
 	}
 	return surface
 }
 
-func deltaBullington(in inputs, profiles map[string]terrain) (outputs, error) {
+func generalPath(in inputs, profiles map[string]terrain) (p526.GeneralPath, error) {
 	profile, ok := profiles[in.word("profile")]
 	if !ok {
-		return nil, fmt.Errorf("no profile %q", in.word("profile"))
+		return p526.GeneralPath{}, fmt.Errorf("no profile %q", in.word("profile"))
 	}
 	tx := profile.GroundM[0] + in.num("htg_m")
 	rx := profile.GroundM[len(profile.GroundM)-1] + in.num("hrg_m")
-	path, err := p526.NewGeneralPath(profile.DistanceKM, profile.surface(), profile.GroundM, tx, rx)
+	return p526.NewGeneralPath(profile.DistanceKM, profile.surface(), profile.GroundM, tx, rx)
+}
+
+func cascadedCylinders(in inputs, profiles map[string]terrain) (outputs, error) {
+	path, err := generalPath(in, profiles)
+	if err != nil {
+		return nil, err
+	}
+	loss := path.CascadedCylinders(in.num("ae_km"), in.num("f_ghz"))
+	return outputs{
+		"L": loss.LossDB, "sub_db": loss.SubPathDB, "spreading_db": loss.SpreadingDB,
+		"n_obstacles": float64(loss.Obstacles),
+	}, nil
+}
+
+func deltaBullington(in inputs, profiles map[string]terrain) (outputs, error) {
+	path, err := generalPath(in, profiles)
 	if err != nil {
 		return nil, err
 	}

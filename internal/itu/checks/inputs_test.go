@@ -58,7 +58,8 @@ func readProfiles(t *testing.T, folder string) map[string]terrain {
 func allOperations(profiles map[string]terrain) map[string]operation {
 	all := map[string]operation{}
 	for _, some := range []map[string]operation{
-		geometryOperations(), diffractionOperations(profiles),
+		geometryOperations(), diffractionOperations(profiles), lineOfSightOperations(),
+		mediumOperations(), antennaOperations(),
 	} {
 		maps.Copy(all, some)
 	}

@@ -54,7 +54,7 @@ func fresnelSeries(x float64) (c, s float64) {
 	u := math.Pi * x * x / 2
 	sums := [4]float64{}
 	power := x
-	for n := 0; n < 40; n++ {
+	for n := range 40 {
 		sums[n%4] += power / float64(2*n+1)
 		power *= u / float64(n+1)
 	}

@@ -124,16 +124,19 @@ func (g *GeneralPath) smoothSurface(groundM []float64, v1, v2 float64) (tx, rx f
 func (g *GeneralPath) flatObstacles(groundM []float64) (highest, fromTx, fromRx float64) {
 	distances := g.distances
 	heights := groundM[:len(distances)]
-	slope := (g.rxM - g.txM) / g.lengthKM
+	length, tx := g.lengthKM, g.txM
+	slope := (g.rxM - tx) / length
+	s := steepest{x: 1, y: 1}
 	for i := 1; i < len(distances)-1; i++ {
 		x := distances[i]
-		if h := heights[i] - g.txM - slope*x; h > 0 {
-			highest = max(highest, h)
-			fromTx = max(fromTx, h/x)
-			fromRx = max(fromRx, h/(g.lengthKM-x))
+		if h := heights[i] - tx - slope*x; h > 0 {
+			if h > highest {
+				highest = h
+			}
+			s.meet(h, x, length-x)
 		}
 	}
-	return highest, fromTx, fromRx
+	return highest, s.overX / s.x, s.overY / s.y
 }
 
 // Conditions are what the loss of a path depends on besides the profile.

@@ -22,19 +22,27 @@ const (
 	medianShift = 0.7938
 )
 
-// The relation of mean rain rate to temperature, and the largest probability of
-// rain in a month in percent.
+// The mean rain rate while it rains grows with the temperature above freezing; a month
+// rains at most wettestPercent of its time.
 const (
-	coldRateMMH        = 0.5874
-	ratePerDegree      = 0.0883
-	freezingK          = 273.15
-	wettestPercent     = 70.0
-	daysInYear         = 365.25
-	hoursInDay         = 24.0
-	heaviestSearchMMH  = 1e6
-	lightestSearchMMH  = 1e-12
-	bisections         = 120
-	daysInMeanFebruary = 28.25
+	coldRateMMH    = 0.5874
+	ratePerDegree  = 0.0883
+	freezingK      = 273.15
+	wettestPercent = 70.0
+)
+
+// The calendar: February is a mean one.
+const (
+	daysInYear = 365.25
+	hoursInDay = 24.0
+)
+
+// The search for the rain rate halves this interval until doubles have no more
+// digits to give.
+const (
+	lightestSearchMMH = 1e-12
+	heaviestSearchMMH = 1e6
+	bisections        = 60
 )
 
 // Month is the climate normal of one calendar month.
@@ -121,7 +129,7 @@ func (m Month) rain(days float64) (percent, meanMMH float64) {
 func daysIn(month int) float64 {
 	switch month {
 	case 1:
-		return daysInMeanFebruary
+		return 28.25
 	case 3, 5, 8, 10:
 		return 30
 	}

@@ -1,0 +1,146 @@
+package api
+
+import (
+	"bytes"
+	"encoding/json"
+	"math"
+
+	"ridgehop/internal/assess"
+)
+
+// Answer is an assessment as the contract says it. withSamples adds the arrays
+// behind it.
+func Answer(a *assess.Assessment, withSamples bool) Assessment {
+	j := &a.Judgement
+	out := Assessment{
+		Id: a.ID, Verdict: Verdict(j.Verdict),
+		Path: Path{
+			LengthM:     round(a.Link.Path.LengthM, 4),
+			AzimuthADeg: placed(a, a.Link.Path.AzimuthADeg), AzimuthBDeg: placed(a, a.Link.Path.AzimuthBDeg),
+			TiltADeg: figure(j.TiltADeg, 4), TiltBDeg: figure(j.TiltBDeg, 4),
+		},
+		Ends: Ends{
+			A: end(a.Request.A, a.GroundAM, a.Link.AntennaAM),
+			B: end(a.Request.B, a.GroundBM, a.Link.AntennaBM),
+		},
+		Reasons: []Note{}, Cautions: []Note{},
+		Clearance: []Clearance{}, Obstructions: []Obstruction{},
+		Raise:       Raise{AM: raise(j.Raise.AM), BM: raise(j.Raise.BM), BothM: raise(j.Raise.BothM), CapM: j.Raise.CapM},
+		Diffraction: Diffraction{Method: P526DeltaBullington, ByK: []DiffractionLoss{}},
+		Terrain:     terrainOf(a),
+		Links:       Links{Self: selfLink(a.ID), Svg: selfLink(a.ID) + "/profile.svg"},
+	}
+	for _, r := range j.Reasons {
+		out.Reasons = append(out.Reasons, Note{Code: string(r.Code), Detail: r.Detail()})
+	}
+	for _, c := range a.Cautions {
+		out.Cautions = append(out.Cautions, Note{Code: c.Code, Detail: c.Detail})
+	}
+	for _, c := range j.Clearance {
+		out.Clearance = append(out.Clearance, Clearance{
+			K: c.K, F1Fraction: c.F1Fraction, Isolated: c.Isolated, Met: c.Met, MinRatio: figure(c.MinRatio, 4),
+			AtM: figure(c.AtM, 3), ClearanceM: figure(c.ClearanceM, 3), F1M: figure(c.F1M, 3),
+		})
+	}
+	for _, o := range j.Obstructions {
+		out.Obstructions = append(out.Obstructions, Obstruction{
+			K: o.K, F1Fraction: o.F1Fraction, FromM: round(o.FromM, 3), ToM: round(o.ToM, 3),
+			PeakAtM: round(o.PeakAtM, 3), TopM: round(o.TopM, 3), ShortM: round(o.ShortM, 3),
+		})
+	}
+	for _, d := range j.Diffraction {
+		out.Diffraction.ByK = append(out.Diffraction.ByK, DiffractionLoss{K: d.K, LossDb: figure(d.LossDB, 3)})
+	}
+	if withSamples {
+		out.Samples = samplesOf(a)
+	}
+	return out
+}
+
+// Encode is the answer as JSON, the same bytes for the same assessment.
+func Encode(answer Assessment) ([]byte, error) {
+	var out bytes.Buffer
+	encoder := json.NewEncoder(&out)
+	encoder.SetEscapeHTML(false)
+	err := encoder.Encode(answer)
+	return out.Bytes(), err
+}
+
+func selfLink(id string) string { return "/v1/assessments/" + id }
+
+func end(e assess.End, groundM, antennaM float64) End {
+	out := End{Name: e.Name, GroundM: figure(groundM, 3), AntennaAmslM: figure(antennaM, 3)}
+	if e.Placed {
+		out.Lon, out.Lat = &e.Lon, &e.Lat
+	}
+	return out
+}
+
+func placed(a *assess.Assessment, azimuthDeg float64) *float64 {
+	if !a.Link.Path.Located {
+		return nil
+	}
+	return figure(azimuthDeg, 6)
+}
+
+func terrainOf(a *assess.Assessment) Terrain {
+	n := len(a.Profile.GroundM)
+	out := Terrain{
+		Rasters: []TerrainSource{}, SpacingM: round(a.Profile.SpacingM, 4),
+		Samples: int32(n), VoidShare: round(a.Judgement.VoidShare, 6),
+	}
+	for _, s := range a.Profile.Sources {
+		out.Rasters = append(out.Rasters, TerrainSource{
+			Name: s.Name, Version: s.Version, Kind: RasterKind(s.Kind), Share: round(float64(s.Samples)/float64(n), 6),
+		})
+	}
+	return out
+}
+
+func samplesOf(a *assess.Assessment) *Samples {
+	s := a.Samples()
+	return &Samples{
+		K: s.K, DistanceM: rounded(s.DistanceM), GroundM: figures(s.GroundM), CoverM: rounded(s.CoverM),
+		BulgeM: rounded(s.BulgeM), LineM: figures(s.LineM), F1M: rounded(s.F1M),
+	}
+}
+
+// round keeps so many decimals.
+func round(v float64, decimals int) float64 {
+	scale := math.Pow10(decimals)
+	return math.Round(v*scale) / scale
+}
+
+// figure is a rounded number, or null where it is not known.
+func figure(v float64, decimals int) *float64 {
+	if math.IsNaN(v) || math.IsInf(v, 0) {
+		return nil
+	}
+	v = round(v, decimals)
+	return &v
+}
+
+// raise rounds up to the millimetre, so that the raise as read is enough.
+func raise(v float64) *float64 {
+	if math.IsNaN(v) {
+		return nil
+	}
+	v = math.Ceil(v*1000-1e-6) / 1000
+	return &v
+}
+
+func rounded(values []float64) []float64 {
+	out := make([]float64, len(values))
+	for i, v := range values {
+		out[i] = round(v, 3)
+	}
+	return out
+}
+
+func figures(values []float64) []*float64 {
+	out := make([]*float64, len(values))
+	for i, v := range values {
+		out[i] = figure(v, 3)
+	}
+	return out
+}

@@ -1,0 +1,78 @@
+package api
+
+import (
+	"context"
+	"log/slog"
+	"net/http"
+	"time"
+
+	"github.com/labstack/echo/v4"
+	"github.com/labstack/echo/v4/middleware"
+
+	"ridgehop/internal/assess"
+	"ridgehop/internal/store"
+	"ridgehop/internal/telemetry"
+)
+
+// Assessor judges links.
+type Assessor interface {
+	// Assess judges one link. Its errors are those of assess.Service.
+	Assess(ctx context.Context, request assess.Request) (*assess.Assessment, error)
+}
+
+// Keeper keeps assessments.
+type Keeper interface {
+	// KeepAssessment keeps an assessment unless its id is kept already, and
+	// returns the answer that is kept; store.ErrUnavailable if it cannot.
+	KeepAssessment(ctx context.Context, a store.Assessment) ([]byte, error)
+	// Assessment reads one back; store.ErrNotFound if it is not there.
+	Assessment(ctx context.Context, id string) (store.Assessment, error)
+}
+
+// Lister lists the rasters.
+type Lister interface {
+	// Rasters lists every raster found, usable or not.
+	Rasters(ctx context.Context) ([]assess.Raster, error)
+}
+
+// Dependencies are what the handlers work with. All are needed, and all are
+// safe for concurrent use.
+type Dependencies struct {
+	Assessor Assessor
+	Keeper   Keeper
+	Lister   Lister
+	Health   *telemetry.Health
+	Metrics  *telemetry.Metrics
+	Log      *slog.Logger
+	// MostAtOnce bounds the requests under way; more are refused.
+	MostAtOnce int
+}
+
+// requestTime bounds the work on one request.
+const requestTime = 30 * time.Second
+
+// handlers implements the interface that the contract generates.
+type handlers struct {
+	Dependencies
+}
+
+// NewHandler builds the whole HTTP service.
+func NewHandler(contract *Contract, d Dependencies) (http.Handler, error) {
+	page, err := contract.page()
+	if err != nil {
+		return nil, err
+	}
+	e := echo.New()
+	e.HideBanner = true
+	e.IPExtractor = echo.ExtractIPDirect()
+	e.Binder = binder{contract}
+	e.HTTPErrorHandler = answerProblem(d.Log)
+	e.Use(identified, watched(d.Log, d.Metrics), middleware.Recover(), limited(d.MostAtOnce, d.Metrics), timed, hardened)
+	e.Use(middleware.BodyLimitWithConfig(middleware.BodyLimitConfig{Limit: bodyLimit}))
+	RegisterHandlers(e, NewStrictHandler(&handlers{d}, nil))
+	e.GET("/metrics", echo.WrapHandler(d.Metrics.Handler()))
+	e.GET("/openapi.yaml", func(c echo.Context) error { return c.Blob(http.StatusOK, "application/yaml", contractYAML) })
+	e.GET("/docs", func(c echo.Context) error { return c.HTMLBlob(http.StatusOK, page) })
+	e.GET("/", func(c echo.Context) error { return c.Redirect(http.StatusFound, "/docs") })
+	return e, nil
+}

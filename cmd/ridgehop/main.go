@@ -1,0 +1,90 @@
+// Command ridgehop judges radio links over terrain: on the command line, or as
+// a service over HTTP.
+package main
+
+import (
+	"context"
+	"errors"
+	"fmt"
+	"io"
+	"os"
+	"os/signal"
+	"syscall"
+
+	"github.com/alecthomas/kong"
+
+	"ridgehop/internal/config"
+)
+
+func main() {
+	ctx, stop := signal.NotifyContext(context.Background(), os.Interrupt, syscall.SIGTERM)
+	defer stop()
+	os.Exit(run(ctx, os.Args[1:], streams{os.Stdin, os.Stdout, os.Stderr}))
+}
+
+// streams are where the program reads and writes.
+type streams struct {
+	in       io.Reader
+	out, err io.Writer
+}
+
+// commands is the command line.
+type commands struct {
+	Serve   serveCommand   `cmd:"" help:"Serve the API, the drawings and the page of the contract over HTTP."`
+	Assess  assessCommand  `cmd:"" help:"Judge the link that a JSON file, or standard input, describes."`
+	Rasters rastersCommand `cmd:"" help:"List the elevation rasters of the folders: usable or not, and why."`
+	Version versionCommand `cmd:"" help:"Print the version of the program and of what it computes with."`
+}
+
+// Exit codes: bad input is the caller's to mend, a failure is ours.
+const (
+	exitOK     = 0
+	exitFailed = 1
+	exitInput  = 2
+)
+
+// inputError marks an error as bad input.
+type inputError struct{ error }
+
+func (e inputError) Unwrap() error { return e.error }
+
+// run executes one command line and returns the exit code. Whatever goes wrong
+// is one line on the error stream.
+func run(ctx context.Context, args []string, s streams) int {
+	var c commands
+	exited := -1
+	parser, err := kong.New(&c,
+		kong.Name("ridgehop"),
+		kong.Description("Will a radio link between two points work, before anyone climbs a roof?"),
+		kong.Writers(s.out, s.err),
+		kong.Exit(func(code int) { exited = code }),
+		kong.BindTo(ctx, (*context.Context)(nil)),
+		kong.Bind(s),
+	)
+	if err != nil {
+		fmt.Fprintln(s.err, "ridgehop:", err)
+		return exitFailed
+	}
+	parsed, err := parser.Parse(args)
+	if exited >= 0 { // --help was answered
+		return exited
+	}
+	if err != nil {
+		fmt.Fprintln(s.err, "ridgehop:", err)
+		return exitInput
+	}
+	err = parsed.Run()
+	var input inputError
+	switch {
+	case err == nil:
+		return exitOK
+	case errors.As(err, &input):
+		fmt.Fprintln(s.err, "ridgehop:", err)
+		return exitInput
+	}
+	fmt.Fprintln(s.err, "ridgehop:", err)
+	return exitFailed
+}
+
+// terrainFlags are the flags of every command that reads rasters.
+type terrainFlags = config.Terrain

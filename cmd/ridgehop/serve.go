@@ -1,0 +1,99 @@
+package main
+
+import (
+	"context"
+	"errors"
+	"fmt"
+	"net"
+	"net/http"
+	"time"
+
+	"ridgehop/api"
+	"ridgehop/internal/assess"
+	"ridgehop/internal/config"
+	"ridgehop/internal/store"
+	"ridgehop/internal/telemetry"
+	"ridgehop/internal/terrain"
+)
+
+// serveCommand runs the service until it is told to stop.
+type serveCommand struct {
+	terrainFlags   `embed:""`
+	config.Service `embed:""`
+}
+
+// Validate checks the flags of both groups.
+func (c *serveCommand) Validate() error {
+	return errors.Join(c.terrainFlags.Validate(), c.Service.Validate())
+}
+
+// shutdownTime is how long requests under way may take to finish.
+const shutdownTime = 10 * time.Second
+
+// Run serves.
+func (c *serveCommand) Run(ctx context.Context, s streams) error {
+	log := telemetry.NewLogger(s.err, c.LogLevel, c.LogJSON)
+	loaded, err := loadTerrain(ctx, c.terrainFlags, log)
+	if err != nil {
+		return err
+	}
+	defer loaded.Close()
+	kept, err := store.Open(ctx, c.Data)
+	if err != nil {
+		return fmt.Errorf("--data %s: %w", c.Data, err)
+	}
+	defer kept.Close()
+	contract, err := api.NewContract()
+	if err != nil {
+		return err
+	}
+	health := telemetry.NewHealth(storeCheck(kept), terrainCheck(loaded))
+	handler, err := api.NewHandler(contract, api.Dependencies{
+		Assessor: assess.NewService(loaded), Keeper: kept, Lister: loaded,
+		Health: health, Metrics: telemetry.NewMetrics(), Log: log, MostAtOnce: c.MostAtOnce,
+	})
+	if err != nil {
+		return err
+	}
+	listener, err := (&net.ListenConfig{}).Listen(ctx, "tcp", c.Listen)
+	if err != nil {
+		return inputError{fmt.Errorf("--listen %s: %w", c.Listen, err)}
+	}
+	log.Info("serving", "address", "http://"+listener.Addr().String(), "rasters", loaded.Usable(), "data", c.Data, "version", programVersion())
+	return serve(ctx, handler, listener, health)
+}
+
+// serve answers requests until ctx ends, then lets those under way finish.
+func serve(ctx context.Context, handler http.Handler, listener net.Listener, health *telemetry.Health) error {
+	server := &http.Server{
+		Handler:           handler,
+		ReadHeaderTimeout: 5 * time.Second,
+		ReadTimeout:       30 * time.Second,
+		WriteTimeout:      60 * time.Second,
+		IdleTimeout:       60 * time.Second,
+		MaxHeaderBytes:    16 << 10,
+	}
+	failed := make(chan error, 1)
+	go func() { failed <- server.Serve(listener) }()
+	select {
+	case err := <-failed:
+		return err
+	case <-ctx.Done():
+	}
+	health.Drain()
+	deadline, cancel := context.WithTimeout(context.WithoutCancel(ctx), shutdownTime)
+	defer cancel()
+	return server.Shutdown(deadline)
+}
+
+func storeCheck(kept *store.Store) telemetry.Check {
+	return telemetry.Check{Name: "store", Run: func(ctx context.Context) (string, error) {
+		return "answers", kept.Ping(ctx)
+	}}
+}
+
+func terrainCheck(loaded *terrain.Terrain) telemetry.Check {
+	return telemetry.Check{Name: "rasters", Run: func(context.Context) (string, error) {
+		return fmt.Sprintf("%d usable", loaded.Usable()), nil
+	}}
+}

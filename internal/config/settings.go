@@ -1,0 +1,54 @@
+package config
+
+import (
+	"fmt"
+	"log/slog"
+	"net"
+	"os"
+)
+
+// Terrain says where elevation comes from.
+type Terrain struct {
+	Rasters []string `help:"Folder of elevation rasters; may be given more than once." name:"rasters" placeholder:"DIR" env:"RIDGEHOP_RASTERS" sep:","`
+	CacheMB uint64   `help:"Memory for decoded heights, MiB." name:"cache-mb" default:"512" env:"RIDGEHOP_CACHE_MB"`
+	Open    int      `help:"Raster files held open at once." name:"open-rasters" default:"64" env:"RIDGEHOP_OPEN_RASTERS"`
+}
+
+// Validate checks the settings; the error names the flag.
+func (t Terrain) Validate() error {
+	for _, dir := range t.Rasters {
+		if stat, err := os.Stat(dir); err != nil || !stat.IsDir() {
+			return fmt.Errorf("--rasters %s: there is no such folder", dir)
+		}
+	}
+	if t.CacheMB < 16 || t.CacheMB > 1<<20 {
+		return fmt.Errorf("--cache-mb %d: it must be 16 to %d", t.CacheMB, 1<<20)
+	}
+	if t.Open < 1 || t.Open > 10000 {
+		return fmt.Errorf("--open-rasters %d: it must be 1 to 10000", t.Open)
+	}
+	return nil
+}
+
+// CacheBytes is CacheMB in bytes.
+func (t Terrain) CacheBytes() uint64 { return t.CacheMB << 20 }
+
+// Service is how the server runs.
+type Service struct {
+	Data       string     `help:"Directory that keeps assessments; made if missing." name:"data" default:"data" placeholder:"DIR" env:"RIDGEHOP_DATA"`
+	Listen     string     `help:"Address to listen on." name:"listen" default:"127.0.0.1:8080" env:"RIDGEHOP_LISTEN"`
+	MostAtOnce int        `help:"Requests under way at once; more are refused." name:"most-at-once" default:"64" env:"RIDGEHOP_MOST_AT_ONCE"`
+	LogJSON    bool       `help:"Log lines as JSON." name:"log-json" env:"RIDGEHOP_LOG_JSON"`
+	LogLevel   slog.Level `help:"Least level of log lines: debug, info, warn, error." name:"log-level" default:"info" env:"RIDGEHOP_LOG_LEVEL"`
+}
+
+// Validate checks the settings; the error names the flag.
+func (s Service) Validate() error {
+	if _, _, err := net.SplitHostPort(s.Listen); err != nil {
+		return fmt.Errorf("--listen %s: it must be a host and a port, like 127.0.0.1:8080", s.Listen)
+	}
+	if s.MostAtOnce < 1 || s.MostAtOnce > 100000 {
+		return fmt.Errorf("--most-at-once %d: it must be 1 to 100000", s.MostAtOnce)
+	}
+	return nil
+}

@@ -1,0 +1,108 @@
+package drawing
+
+import (
+	"strings"
+	"unicode"
+)
+
+// textWidth estimates how wide s is drawn, after the widest of the common sans
+// serif fonts: a text that fits by this estimate fits everywhere.
+func textWidth(s string, f face) float64 {
+	width := 0.0
+	for _, r := range s {
+		width += runeWidth(r)
+	}
+	if f.bold {
+		width *= 1.1
+	}
+	return width * f.size
+}
+
+// runeWidth is the width of a character in ems.
+func runeWidth(r rune) float64 {
+	switch {
+	case r >= 'a' && r <= 'z':
+		return letterWidth(r)
+	case r >= '0' && r <= '9', r == '+', r == '=':
+		return 0.64
+	case r == 'I' || r == 'J' || strings.ContainsRune(" .,:;'|!()[]-/\"", r):
+		return 0.37
+	case strings.ContainsRune("mwMW%@", r):
+		return 0.98
+	case unicode.IsUpper(r):
+		return 0.74
+	case attached(r):
+		return 0
+	case r >= 0x1100 && r < 0xfb00:
+		return 1.05 // East Asian, mostly
+	case r >= 0x1f000:
+		return 1.35 // pictures
+	}
+	return 0.66
+}
+
+func letterWidth(r rune) float64 {
+	switch r {
+	case 'i', 'j', 'l':
+		return 0.28
+	case 'f', 'r', 't':
+		return 0.41
+	case 'm', 'w':
+		return 0.98
+	}
+	return 0.62
+}
+
+// attached says that r is drawn on or joined to the character before it.
+func attached(r rune) bool {
+	return r >= 0x300 && (unicode.In(r, unicode.Mn, unicode.Me, unicode.Cf) || (r >= 0x1f3fb && r <= 0x1f3ff))
+}
+
+const (
+	ellipsis = "…"
+	joiner   = '\u200d' // holds two pictures together
+)
+
+// shorten cuts s to the room and marks the cut with an ellipsis. It cuts
+// between characters as they are seen.
+func shorten(s string, f face, room float64) string {
+	if textWidth(s, f) <= room {
+		return s
+	}
+	room -= textWidth(ellipsis, f)
+	cut, width, previous := 0, 0.0, rune(0)
+	for i, r := range s {
+		if !attached(r) && previous != joiner {
+			cut = i
+		}
+		width += textWidth(string(r), f)
+		if width > room {
+			break
+		}
+		previous = r
+	}
+	return strings.TrimRight(s[:cut], " ") + ellipsis
+}
+
+// wrap breaks s into lines no wider than room, at spaces.
+func wrap(s string, f face, room float64) []string {
+	var lines []string
+	line, width := "", 0.0
+	space := textWidth(" ", f)
+	for word := range strings.FieldsSeq(s) {
+		word = shorten(word, f, room)
+		wide := textWidth(word, f)
+		if line != "" && width+space+wide <= room {
+			line, width = line+" "+word, width+space+wide
+			continue
+		}
+		if line != "" {
+			lines = append(lines, line)
+		}
+		line, width = word, wide
+	}
+	if line != "" {
+		lines = append(lines, line)
+	}
+	return lines
+}
