@@ -4,6 +4,8 @@
 // Geodesy 87 (2013), which converges everywhere, poles, antimeridian and
 // antipodes included.
 //
+// It also knows where a compass points: the World Magnetic Model 2025.
+//
 // Points are orb.Point: longitude, latitude, in degrees. Everything here is
 // safe for concurrent use.
 package geodesy

@@ -24,10 +24,8 @@ type Line struct {
 // NewLine solves the inverse problem between a and b. Longitudes may be any
 // finite number of degrees, latitudes -90 to 90; anything else is ErrPoint.
 func NewLine(a, b orb.Point) (Line, error) {
-	for _, p := range []orb.Point{a, b} {
-		if !(math.Abs(p.Lat()) <= 90) || math.IsNaN(p.Lon()) || math.IsInf(p.Lon(), 0) {
-			return Line{}, fmt.Errorf("%w: longitude %g, latitude %g", ErrPoint, p.Lon(), p.Lat())
-		}
+	if err := errors.Join(checkPoint(a), checkPoint(b)); err != nil {
+		return Line{}, err
 	}
 	l := Line{a: a}
 	var arrival float64
@@ -35,6 +33,14 @@ func NewLine(a, b orb.Point) (Line, error) {
 	l.azimuthADeg = compass(l.azimuthADeg)
 	l.azimuthBDeg = compass(arrival + 180)
 	return l, nil
+}
+
+// checkPoint is ErrPoint for what is no place on earth.
+func checkPoint(p orb.Point) error {
+	if !(math.Abs(p.Lat()) <= 90) || math.IsNaN(p.Lon()) || math.IsInf(p.Lon(), 0) {
+		return fmt.Errorf("%w: longitude %g, latitude %g", ErrPoint, p.Lon(), p.Lat())
+	}
+	return nil
 }
 
 // LineFrom is the geodesic that leaves a at azimuthDeg and is lengthM metres
