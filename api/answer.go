@@ -51,6 +51,9 @@ func Answer(a *assess.Assessment, withSamples bool) Assessment {
 	for _, d := range j.Diffraction {
 		out.Diffraction.ByK = append(out.Diffraction.ByK, DiffractionLoss{K: d.K, LossDb: figure(d.LossDB, 3)})
 	}
+	if a.Radio != nil {
+		out.Radio = radioReport(a)
+	}
 	if withSamples {
 		out.Samples = samplesOf(a)
 	}
@@ -108,7 +111,7 @@ func samplesOf(a *assess.Assessment) *Samples {
 // round keeps so many decimals.
 func round(v float64, decimals int) float64 {
 	scale := math.Pow10(decimals)
-	return math.Round(v*scale) / scale
+	return math.Round(v*scale)/scale + 0 // no negative zero
 }
 
 // figure is a rounded number, or null where it is not known.

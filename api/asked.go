@@ -16,6 +16,9 @@ func (r AssessmentRequest) Asked() assess.Request {
 	for _, c := range or(r.Criteria) {
 		out.Criteria = append(out.Criteria, assess.Criterion{K: c.K, F1Fraction: c.F1Fraction})
 	}
+	if r.Radio != nil {
+		out.Radio = r.Radio.asked()
+	}
 	for _, p := range or(r.Profile) {
 		out.Profile = append(out.Profile, assess.Point{DistanceM: p.DistanceM, GroundM: p.GroundM, CoverM: or(p.CoverM)})
 	}

@@ -21,13 +21,18 @@ const maxBodyBytes = 4 << 20
 // error is a *ProblemError that names each field at fault.
 func (c *Contract) DecodeAssessmentRequest(body []byte) (AssessmentRequest, error) {
 	var request AssessmentRequest
-	if err := c.check("AssessmentRequest", body); err != nil {
-		return request, err
+	return request, c.decode("AssessmentRequest", body, &request)
+}
+
+// decode reads a body that a schema of the contract describes.
+func (c *Contract) decode(schema string, body []byte, into any) error {
+	if err := c.check(schema, body); err != nil {
+		return err
 	}
-	if err := json.Unmarshal(body, &request); err != nil {
-		return request, malformed.problem("%v", err)
+	if err := json.Unmarshal(body, into); err != nil {
+		return malformed.problem("%v", err)
 	}
-	return request, nil
+	return nil
 }
 
 // check holds a body against a schema of the contract.

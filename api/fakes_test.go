@@ -96,8 +96,14 @@ func (f failing) Assess(context.Context, assess.Request) (*assess.Assessment, er
 // service is a handler over fakes, with what a test wants otherwise.
 func service(t testing.TB, change func(*Dependencies)) http.Handler {
 	t.Helper()
+	antennas, errAntennas := assess.NewAntennaRegister(nil, nil)
+	radios, errRadios := assess.NewRadioRegister(nil, nil)
+	if err := errors.Join(errAntennas, errRadios); err != nil {
+		t.Fatal(err)
+	}
 	d := Dependencies{
-		Assessor: assess.NewService(hills{}), Keeper: &memory{kept: map[string]store.Assessment{}}, Lister: listed{},
+		Antennas: antennas, Radios: radios,
+		Assessor: assess.NewService(hills{}).WithEquipment(assess.Equipment{Antennas: antennas, Radios: radios}), Keeper: &memory{kept: map[string]store.Assessment{}}, Lister: listed{},
 		Health:  telemetry.NewHealth(telemetry.Check{Name: "store", Run: func(context.Context) (string, error) { return "answers", nil }}),
 		Metrics: telemetry.NewMetrics(), Log: slog.New(slog.DiscardHandler), MostAtOnce: 16,
 	}

@@ -9,6 +9,7 @@ import (
 	"log/slog"
 	"mime"
 	"net/http"
+	"reflect"
 	"strconv"
 	"time"
 
@@ -127,19 +128,22 @@ type binder struct {
 
 // Bind implements echo.Binder.
 func (b binder) Bind(into any, c echo.Context) error {
-	request, ok := into.(*CreateAssessmentJSONRequestBody)
-	if !ok {
+	schema := map[reflect.Type]string{
+		reflect.TypeFor[*CreateAssessmentJSONRequestBody](): "AssessmentRequest",
+		reflect.TypeFor[*CreateAntennaJSONRequestBody]():    "Antenna",
+		reflect.TypeFor[*CreateRadioJSONRequestBody]():      "Radio",
+	}[reflect.TypeOf(into)]
+	if schema == "" {
 		return errors.New("a body that the contract does not know")
 	}
-	kind, _, err := mime.ParseMediaType(c.Request().Header.Get(echo.HeaderContentType))
+	given := c.Request().Header.Get(echo.HeaderContentType)
+	kind, _, err := mime.ParseMediaType(given)
 	if err != nil || kind != echo.MIMEApplicationJSON {
-		return mediaType.problem("Content-Type is %s; send the request as application/json.",
-			strconv.Quote(c.Request().Header.Get(echo.HeaderContentType)))
+		return mediaType.problem("Content-Type is %s; send the request as application/json.", strconv.Quote(given))
 	}
 	body, err := io.ReadAll(c.Request().Body)
 	if err != nil {
 		return err
 	}
-	*request, err = b.contract.DecodeAssessmentRequest(body)
-	return err
+	return b.contract.decode(schema, body, into)
 }

@@ -27,6 +27,7 @@ var (
 	badRequest  = problemKind{"bad-request", "The request cannot be understood", http.StatusBadRequest, "A part of the request other than its body is not what the contract says."}
 	notFound    = problemKind{"not-found", "There is nothing here", http.StatusNotFound, "No resource has this address or id."}
 	notAllowed  = problemKind{"method-not-allowed", "This cannot be done here", http.StatusMethodNotAllowed, "The resource exists, but not for this method."}
+	conflict    = problemKind{"conflict", "This does not go together with what is there", http.StatusConflict, "A name is taken, or an entry is not one's own to take away."}
 	tooLarge    = problemKind{"too-large", "The body is too large", http.StatusRequestEntityTooLarge, "The detail names the limit."}
 	mediaType   = problemKind{"unsupported-media-type", "The body is of the wrong type", http.StatusUnsupportedMediaType, "Send JSON, as application/json."}
 	invalid     = problemKind{"invalid-request", "The request does not hold together", http.StatusUnprocessableEntity, "The errors name each field at fault and what would be right."}
@@ -39,7 +40,7 @@ var (
 
 // problemKinds lists them for the page of the contract.
 func problemKinds() []problemKind {
-	return []problemKind{malformed, badRequest, notFound, notAllowed, tooLarge, mediaType, invalid, internal, unreadable, unavailable, overloaded, tooSlow}
+	return []problemKind{malformed, badRequest, notFound, notAllowed, conflict, tooLarge, mediaType, invalid, internal, unreadable, unavailable, overloaded, tooSlow}
 }
 
 // ProblemError is a problem document as an error.
@@ -76,8 +77,12 @@ func problemOf(err error) *ProblemError {
 		return invalid.problem("%s", summary(request.Fields)).withErrors(fieldErrors(request.Fields))
 	case errors.As(err, &raster):
 		return unreadable.problem("%v", raster)
+	case errors.Is(err, assess.ErrNoEntry):
+		return notFound.problem("Nothing in the register has this name.")
 	case errors.Is(err, store.ErrNotFound):
 		return notFound.problem("No assessment has this id.")
+	case errors.Is(err, assess.ErrNameTaken), errors.Is(err, assess.ErrNotOwn):
+		return conflict.problem("%v.", err)
 	case errors.Is(err, store.ErrUnavailable):
 		return unavailable.problem("%v", err)
 	case errors.Is(err, context.DeadlineExceeded):

@@ -16,6 +16,117 @@ import (
 	"github.com/oapi-codegen/runtime"
 )
 
+// Defines values for AntennaClass.
+const (
+	Dish   AntennaClass = "dish"
+	Grid   AntennaClass = "grid"
+	Omni   AntennaClass = "omni"
+	Panel  AntennaClass = "panel"
+	Sector AntennaClass = "sector"
+	Yagi   AntennaClass = "yagi"
+)
+
+// Valid indicates whether the value is a known member of the AntennaClass enum.
+func (e AntennaClass) Valid() bool {
+	switch e {
+	case Dish:
+		return true
+	case Grid:
+		return true
+	case Omni:
+		return true
+	case Panel:
+		return true
+	case Sector:
+		return true
+	case Yagi:
+		return true
+	default:
+		return false
+	}
+}
+
+// Defines values for AntennaPolarisations.
+const (
+	AntennaPolarisationsHorizontal AntennaPolarisations = "horizontal"
+	AntennaPolarisationsSlant      AntennaPolarisations = "slant"
+	AntennaPolarisationsVertical   AntennaPolarisations = "vertical"
+)
+
+// Valid indicates whether the value is a known member of the AntennaPolarisations enum.
+func (e AntennaPolarisations) Valid() bool {
+	switch e {
+	case AntennaPolarisationsHorizontal:
+		return true
+	case AntennaPolarisationsSlant:
+		return true
+	case AntennaPolarisationsVertical:
+		return true
+	default:
+		return false
+	}
+}
+
+// Defines values for AntennaEntryOrigin.
+const (
+	AntennaEntryOriginGeneric  AntennaEntryOrigin = "generic"
+	AntennaEntryOriginOwn      AntennaEntryOrigin = "own"
+	AntennaEntryOriginSettings AntennaEntryOrigin = "settings"
+)
+
+// Valid indicates whether the value is a known member of the AntennaEntryOrigin enum.
+func (e AntennaEntryOrigin) Valid() bool {
+	switch e {
+	case AntennaEntryOriginGeneric:
+		return true
+	case AntennaEntryOriginOwn:
+		return true
+	case AntennaEntryOriginSettings:
+		return true
+	default:
+		return false
+	}
+}
+
+// Defines values for BudgetLineUnit.
+const (
+	Db  BudgetLineUnit = "db"
+	Dbi BudgetLineUnit = "dbi"
+	Dbm BudgetLineUnit = "dbm"
+)
+
+// Valid indicates whether the value is a known member of the BudgetLineUnit enum.
+func (e BudgetLineUnit) Valid() bool {
+	switch e {
+	case Db:
+		return true
+	case Dbi:
+		return true
+	case Dbm:
+		return true
+	default:
+		return false
+	}
+}
+
+// Defines values for ClimateRainEdition.
+const (
+	N17 ClimateRainEdition = 17
+	N19 ClimateRainEdition = 19
+)
+
+// Valid indicates whether the value is a known member of the ClimateRainEdition enum.
+func (e ClimateRainEdition) Valid() bool {
+	switch e {
+	case N17:
+		return true
+	case N19:
+		return true
+	default:
+		return false
+	}
+}
+
 // Defines values for CriteriaSet.
 const (
 	F160          CriteriaSet = "f1_60"
@@ -91,21 +202,108 @@ func (e HeightAbove) Valid() bool {
 	}
 }
 
+// Defines values for ModulationAvailabilityBound.
+const (
+	ModulationAvailabilityBoundAtLeast ModulationAvailabilityBound = "at_least"
+	ModulationAvailabilityBoundAtMost  ModulationAvailabilityBound = "at_most"
+	ModulationAvailabilityBoundExact   ModulationAvailabilityBound = "exact"
+)
+
+// Valid indicates whether the value is a known member of the ModulationAvailabilityBound enum.
+func (e ModulationAvailabilityBound) Valid() bool {
+	switch e {
+	case ModulationAvailabilityBoundAtLeast:
+		return true
+	case ModulationAvailabilityBoundAtMost:
+		return true
+	case ModulationAvailabilityBoundExact:
+		return true
+	default:
+		return false
+	}
+}
+
+// Defines values for OutageBound.
+const (
+	OutageBoundAtLeast OutageBound = "at_least"
+	OutageBoundAtMost  OutageBound = "at_most"
+	OutageBoundExact   OutageBound = "exact"
+)
+
+// Valid indicates whether the value is a known member of the OutageBound enum.
+func (e OutageBound) Valid() bool {
+	switch e {
+	case OutageBoundAtLeast:
+		return true
+	case OutageBoundAtMost:
+		return true
+	case OutageBoundExact:
+		return true
+	default:
+		return false
+	}
+}
+
+// Defines values for PatternSourceReference.
+const (
+	F1245       PatternSourceReference = "f1245"
+	F1336Omni   PatternSourceReference = "f1336_omni"
+	F1336Sector PatternSourceReference = "f1336_sector"
+	F699        PatternSourceReference = "f699"
+)
+
+// Valid indicates whether the value is a known member of the PatternSourceReference enum.
+func (e PatternSourceReference) Valid() bool {
+	switch e {
+	case F1245:
+		return true
+	case F1336Omni:
+		return true
+	case F1336Sector:
+		return true
+	case F699:
+		return true
+	default:
+		return false
+	}
+}
+
 // Defines values for Polarisation.
 const (
-	Horizontal Polarisation = "horizontal"
-	Slant      Polarisation = "slant"
-	Vertical   Polarisation = "vertical"
+	PolarisationHorizontal Polarisation = "horizontal"
+	PolarisationSlant      Polarisation = "slant"
+	PolarisationVertical   Polarisation = "vertical"
 )
 
 // Valid indicates whether the value is a known member of the Polarisation enum.
 func (e Polarisation) Valid() bool {
 	switch e {
-	case Horizontal:
+	case PolarisationHorizontal:
 		return true
-	case Slant:
+	case PolarisationSlant:
 		return true
-	case Vertical:
+	case PolarisationVertical:
+		return true
+	default:
+		return false
+	}
+}
+
+// Defines values for RadioEntryOrigin.
+const (
+	RadioEntryOriginGeneric  RadioEntryOrigin = "generic"
+	RadioEntryOriginOwn      RadioEntryOrigin = "own"
+	RadioEntryOriginSettings RadioEntryOrigin = "settings"
+)
+
+// Valid indicates whether the value is a known member of the RadioEntryOrigin enum.
+func (e RadioEntryOrigin) Valid() bool {
+	switch e {
+	case RadioEntryOriginGeneric:
+		return true
+	case RadioEntryOriginOwn:
+		return true
+	case RadioEntryOriginSettings:
 		return true
 	default:
 		return false
@@ -175,14 +373,82 @@ func (e GetAssessmentParamsInclude) Valid() bool {
 	}
 }
 
+// AimReport defines model for AimReport.
+type AimReport struct {
+	A EndAim `json:"a"`
+	B EndAim `json:"b"`
+}
+
+// Antenna defines model for Antenna.
+type Antenna struct {
+	// Name Unique in the register.
+	Name string `json:"name"`
+
+	// Class What kind it is.
+	Class AntennaClass `json:"class"`
+
+	// MinGhz Lowest frequency that it is made for.
+	MinGhz float64 `json:"min_ghz"`
+
+	// MaxGhz Highest frequency that it is made for.
+	MaxGhz float64 `json:"max_ghz"`
+
+	// GainDbi Gain on the axis.
+	GainDbi float64 `json:"gain_dbi"`
+
+	// AzimuthBeamwidthDeg Half-power beamwidth in azimuth; 360 for an omni.
+	AzimuthBeamwidthDeg float64 `json:"azimuth_beamwidth_deg"`
+
+	// ElevationBeamwidthDeg Half-power beamwidth in elevation.
+	ElevationBeamwidthDeg float64 `json:"elevation_beamwidth_deg"`
+
+	// Polarisations Those that it can be used in.
+	Polarisations []AntennaPolarisations `json:"polarisations"`
+
+	// CrossPolarDb Cross-polar discrimination on the axis; left out or 0, not stated.
+	CrossPolarDb *float64 `json:"cross_polar_db,omitempty"`
+
+	// DiameterM Diameter of a dish or grid.
+	DiameterM *float64 `json:"diameter_m,omitempty"`
+
+	// WindAreaM2 Area that it shows to the wind.
+	WindAreaM2 *float64 `json:"wind_area_m2,omitempty"`
+
+	// Pattern Where the gain off the axis comes from, a published pattern by name or a table.
+	Pattern PatternSource `json:"pattern"`
+}
+
+// AntennaClass What kind it is.
+type AntennaClass string
+
+// AntennaPolarisations defines model for Antenna.Polarisations.
+type AntennaPolarisations string
+
+// AntennaEntry defines model for AntennaEntry.
+type AntennaEntry struct {
+	// Origin Where it comes from. Only own ones can be taken away.
+	Origin  AntennaEntryOrigin `json:"origin"`
+	Antenna Antenna            `json:"antenna"`
+}
+
+// AntennaEntryOrigin Where it comes from. Only own ones can be taken away.
+type AntennaEntryOrigin string
+
+// AntennaList defines model for AntennaList.
+type AntennaList struct {
+	// Antennas By origin.
+	Antennas []AntennaEntry `json:"antennas"`
+}
+
 // Assessment defines model for Assessment.
 type Assessment struct {
 	// Id The assessment's id: a hash of the question, the rasters' versions and the engine's version.
 	Id string `json:"id"`
 
-	// Verdict `clear`: every criterion is met. `marginal`: a criterion is missed, but the line between the antennas is open at
-	// every k judged. `obstructed`: the line itself is cut at a k judged. `unknown`: missing data keeps it from being
-	// judged.
+	// Verdict Without a radio: `clear`: every criterion is met. `marginal`: a criterion is missed, but the line between the
+	// antennas is open at every k judged. `obstructed`: the line itself is cut at a k judged. With a radio: `clear`:
+	// every criterion is met and the radio meets its target. `marginal`: one of the two holds. `obstructed`: neither.
+	// `unknown`: missing data keeps it from being judged.
 	Verdict Verdict `json:"verdict"`
 
 	// Reasons Why the verdict is what it is.
@@ -200,9 +466,10 @@ type Assessment struct {
 	Obstructions []Obstruction `json:"obstructions"`
 
 	// Raise The least extra antenna height that meets every criterion. Null where none up to the cap does, or where missing data keeps it from being known.
-	Raise       Raise       `json:"raise"`
-	Diffraction Diffraction `json:"diffraction"`
-	Terrain     Terrain     `json:"terrain"`
+	Raise       Raise        `json:"raise"`
+	Diffraction Diffraction  `json:"diffraction"`
+	Terrain     Terrain      `json:"terrain"`
+	Radio       *RadioReport `json:"radio,omitempty"`
 
 	// Samples The arrays behind the answer, one entry a sample from A to B. Null is a place without a height.
 	Samples *Samples `json:"samples,omitempty"`
@@ -234,11 +501,99 @@ type AssessmentRequest struct {
 	// Profile The caller's own heights, from A at 0 to B, in place of rasters. The ends may then have no place.
 	Profile *[]ProfilePoint `json:"profile,omitempty"`
 
+	// Radio What stands at both ends, and what the link must carry.
+	Radio *RadioRequest `json:"radio,omitempty"`
+
 	// Rasters Names of the rasters to use; all that are loaded, if left out.
 	Rasters *[]string `json:"rasters,omitempty"`
 
 	// SpacingM Step between samples, metres. Left out, it follows the finest pixel on the path. At most 20,000 samples are taken.
 	SpacingM *float64 `json:"spacing_m,omitempty"`
+}
+
+// Availability Percentages of time, of the average worst month or the average year as their names say.
+type Availability struct {
+	// MultipathMethod How it was found; empty if unknown.
+	MultipathMethod string `json:"multipath_method"`
+
+	// OccurrencePercent Multipath occurrence factor p0, worst month.
+	OccurrencePercent *float64 `json:"occurrence_percent"`
+
+	// RainMethod How it was found; empty if unknown.
+	RainMethod string `json:"rain_method"`
+
+	// RainEdition Edition of P.530.
+	RainEdition int32  `json:"rain_edition"`
+	AToB        Outage `json:"a_to_b"`
+	BToA        Outage `json:"b_to_a"`
+	Both        Outage `json:"both"`
+
+	// Modulations Of both directions, at the worse margin.
+	Modulations []ModulationAvailability `json:"modulations"`
+}
+
+// Budget defines model for Budget.
+type Budget struct {
+	// Lines They add up to the received level.
+	Lines []BudgetLine `json:"lines"`
+
+	// ReceivedDbm Median received level.
+	ReceivedDbm *float64 `json:"received_dbm"`
+
+	// EirpDbm Equivalent isotropically radiated power on the axis.
+	EirpDbm *float64 `json:"eirp_dbm"`
+
+	// ConductedDbm Power that enters the antenna.
+	ConductedDbm *float64 `json:"conducted_dbm"`
+
+	// Margins To each modulation of the receiver.
+	Margins []Margin `json:"margins"`
+
+	// Best The modulation of most capacity that has the margin asked for; empty if none.
+	Best string `json:"best"`
+
+	// Target The modulation that the target asks for; empty if there is none.
+	Target string `json:"target"`
+
+	// TargetMarginDb Its margin, the fade margin.
+	TargetMarginDb *float64 `json:"target_margin_db"`
+	Overload       Overload `json:"overload"`
+}
+
+// BudgetLine defines model for BudgetLine.
+type BudgetLine struct {
+	// Code Stable, for programs.
+	Code string `json:"code"`
+
+	// Value As it is added: a loss is negative.
+	Value float64 `json:"value"`
+
+	// Unit Its unit.
+	Unit BudgetLineUnit `json:"unit"`
+
+	// Source Where it comes from.
+	Source string `json:"source"`
+}
+
+// BudgetLineUnit Its unit.
+type BudgetLineUnit string
+
+// Choice The least antennas and power that do, and what a narrower beam would spare. Both ends aimed at each other.
+type Choice struct {
+	// WithAvailability The options meet the target's availability too.
+	WithAvailability bool          `json:"with_availability"`
+	Least            *Option       `json:"least,omitempty"`
+	LeastAtA         *Option       `json:"least_at_a,omitempty"`
+	LeastAtB         *Option       `json:"least_at_b,omitempty"`
+	Narrow           *Option       `json:"narrow,omitempty"`
+	Spared           *SparedReport `json:"spared,omitempty"`
+
+	// ShortDb What the best candidate lacks at full power where none does.
+	ShortDb      *float64           `json:"short_db"`
+	Polarisation PolarisationAdvice `json:"polarisation"`
+
+	// Missing Why there is no option.
+	Missing []Note `json:"missing"`
 }
 
 // Clearance defines model for Clearance.
@@ -267,6 +622,45 @@ type Clearance struct {
 	// F1M First Fresnel radius there, metres.
 	F1M *float64 `json:"f1_m"`
 }
+
+// Climate What is known of the weather. Whatever is missing leaves its answer out; nothing is guessed.
+type Climate struct {
+	// Region Name of a region in the operator's settings; what is stated beside it goes before it.
+	Region *string `json:"region,omitempty"`
+
+	// LogK log10 of the geoclimatic factor K of P.530-19.
+	LogK *float64 `json:"log_k,omitempty"`
+
+	// Dn75 dN75 of P.530-19, N units.
+	Dn75 *float64 `json:"dn75,omitempty"`
+
+	// Dn1 dN1, the refractivity gradient not exceeded 1 % of the year, N units/km.
+	Dn1 *float64 `json:"dn1,omitempty"`
+
+	// RainRateMmh Rain rate exceeded 0.01 % of the year, mm/h.
+	RainRateMmh *float64 `json:"rain_rate_mmh,omitempty"`
+
+	// RainEdition Edition of P.530 for rain.
+	RainEdition *ClimateRainEdition `json:"rain_edition,omitempty"`
+
+	// DryOrCold The rain climate of P.841 is dry or cold rather than rainy.
+	DryOrCold *bool `json:"dry_or_cold,omitempty"`
+
+	// Monthly Monthly climate normals, January to December, from which P.837 gives the rain rate.
+	Monthly *[]Month `json:"monthly,omitempty"`
+
+	// TemperatureC Temperature of the air, degrees C; left out, 15.
+	TemperatureC *float64 `json:"temperature_c,omitempty"`
+
+	// PressureHpa Pressure of the dry air, hPa; left out, 1013.25.
+	PressureHpa *float64 `json:"pressure_hpa,omitempty"`
+
+	// VapourGm3 Water vapour density, g/m3; left out, 7.5.
+	VapourGm3 *float64 `json:"vapour_gm3,omitempty"`
+}
+
+// ClimateRainEdition Edition of P.530 for rain.
+type ClimateRainEdition int32
 
 // CriteriaSet A set of clearance criteria. `p530_temperate` and `p530_tropical` are ITU-R P.530-19 section 2.2: the whole first
 // Fresnel zone at k 4/3, and at the k-factor exceeded 99.9 % of the worst month a part of it by climate and kind of
@@ -319,6 +713,96 @@ type End struct {
 	AntennaAmslM *float64 `json:"antenna_amsl_m"`
 }
 
+// EndAim defines model for EndAim.
+type EndAim struct {
+	// AzimuthDeg To the far end, from true north.
+	AzimuthDeg *float64 `json:"azimuth_deg"`
+
+	// MagneticAzimuthDeg The same from magnetic north on the date stated (World Magnetic Model 2025; good to about half a degree).
+	MagneticAzimuthDeg *float64 `json:"magnetic_azimuth_deg"`
+
+	// DeclinationDeg Magnetic declination, east positive.
+	DeclinationDeg *float64 `json:"declination_deg"`
+
+	// TiltDeg Elevation of the far end, up positive.
+	TiltDeg *float64 `json:"tilt_deg"`
+
+	// AimAzimuthDeg Where the antenna points, from true north.
+	AimAzimuthDeg *float64 `json:"aim_azimuth_deg"`
+
+	// AimTiltDeg Where it points, up positive.
+	AimTiltDeg *float64 `json:"aim_tilt_deg"`
+
+	// OffAzimuthDeg The far end off the axis, clockwise.
+	OffAzimuthDeg *float64 `json:"off_azimuth_deg"`
+
+	// OffElevationDeg The far end off the axis, up.
+	OffElevationDeg *float64 `json:"off_elevation_deg"`
+
+	// Covered The far end lies inside the half-power beam in both planes.
+	Covered bool `json:"covered"`
+
+	// MissAzimuthDeg How far outside, azimuth.
+	MissAzimuthDeg *float64 `json:"miss_azimuth_deg"`
+
+	// MissElevationDeg How far outside, elevation.
+	MissElevationDeg *float64 `json:"miss_elevation_deg"`
+
+	// LossDb Gain towards the far end less that on the axis.
+	LossDb *float64 `json:"loss_db"`
+
+	// BeamWidthM Width of the half-power beam at the far end; null if it spans half the sky.
+	BeamWidthM *float64 `json:"beam_width_m"`
+
+	// BeamHeightM Its height there.
+	BeamHeightM *float64 `json:"beam_height_m"`
+
+	// HalfPowerAzimuthDeg The error that costs 3 dB, azimuth.
+	HalfPowerAzimuthDeg *float64 `json:"half_power_azimuth_deg"`
+
+	// HalfPowerElevationDeg The error that costs 3 dB, elevation.
+	HalfPowerElevationDeg *float64 `json:"half_power_elevation_deg"`
+
+	// OneDegreeAzimuthDb What the first degree costs, azimuth.
+	OneDegreeAzimuthDb *float64 `json:"one_degree_azimuth_db"`
+
+	// OneDegreeElevationDb What the first degree costs, elevation.
+	OneDegreeElevationDb *float64 `json:"one_degree_elevation_db"`
+
+	// Sway1dbDeg How far the mast may lean or twist for 1 dB.
+	Sway1dbDeg *float64 `json:"sway_1db_deg"`
+
+	// Sway3dbDeg How far for 3 dB.
+	Sway3dbDeg *float64 `json:"sway_3db_deg"`
+}
+
+// EndOption defines model for EndOption.
+type EndOption struct {
+	// Antenna Its name.
+	Antenna string `json:"antenna"`
+
+	// Class Its class.
+	Class string `json:"class"`
+
+	// GainDbi Its gain.
+	GainDbi float64 `json:"gain_dbi"`
+
+	// PowerDbm Transmit power.
+	PowerDbm float64 `json:"power_dbm"`
+
+	// AttenuatorDb Between radio and antenna.
+	AttenuatorDb float64 `json:"attenuator_db"`
+
+	// EirpDbm Radiated.
+	EirpDbm float64 `json:"eirp_dbm"`
+
+	// ReceivedDbm Level received at this end.
+	ReceivedDbm *float64 `json:"received_dbm"`
+
+	// MarginDb Above the threshold of the target's modulation.
+	MarginDb *float64 `json:"margin_db"`
+}
+
 // EndRequest defines model for EndRequest.
 type EndRequest struct {
 	// AntennaHeightM Height of the antenna's centre above what `height_above` says, metres.
@@ -341,6 +825,30 @@ type EndRequest struct {
 type Ends struct {
 	A End `json:"a"`
 	B End `json:"b"`
+}
+
+// Exposure Informative, no statement about safety or law.
+type Exposure struct {
+	// EirpDbm On the axis.
+	EirpDbm *float64 `json:"eirp_dbm"`
+
+	// PublicWM2 Reference level of the power density for the public.
+	PublicWM2 *float64 `json:"public_w_m2"`
+
+	// DistanceM Where the main beam has fallen to it, metres from the antenna.
+	DistanceM *float64 `json:"distance_m"`
+
+	// Source Where the level comes from.
+	Source string `json:"source"`
+}
+
+// ExposureReport defines model for ExposureReport.
+type ExposureReport struct {
+	// A Informative, no statement about safety or law.
+	A Exposure `json:"a"`
+
+	// B Informative, no statement about safety or law.
+	B Exposure `json:"b"`
 }
 
 // FieldError defines model for FieldError.
@@ -374,6 +882,24 @@ type HealthCheck struct {
 	Detail *string `json:"detail,omitempty"`
 }
 
+// Heard defines model for Heard.
+type Heard struct {
+	FromA HeardEnd `json:"from_a"`
+	FromB HeardEnd `json:"from_b"`
+}
+
+// HeardEnd defines model for HeardEnd.
+type HeardEnd struct {
+	// InBeam It lies inside the half-power beam.
+	InBeam bool `json:"in_beam"`
+
+	// GainDbi Gain towards it.
+	GainDbi *float64 `json:"gain_dbi"`
+
+	// LevelDbm Level at its receiver, free space.
+	LevelDbm *float64 `json:"level_dbm"`
+}
+
 // HeightAbove What the antenna height is measured from. `roof` is the top of the surface at that point.
 type HeightAbove string
 
@@ -384,6 +910,102 @@ type Links struct {
 
 	// Svg Its drawing.
 	Svg string `json:"svg"`
+}
+
+// Margin defines model for Margin.
+type Margin struct {
+	// Modulation Its name.
+	Modulation string `json:"modulation"`
+
+	// CapacityMbps Mbit/s.
+	CapacityMbps float64 `json:"capacity_mbps"`
+
+	// ThresholdDbm Lowest usable level.
+	ThresholdDbm float64 `json:"threshold_dbm"`
+
+	// LevelDbm What arrives in it.
+	LevelDbm *float64 `json:"level_dbm"`
+
+	// MarginDb Level above threshold.
+	MarginDb *float64 `json:"margin_db"`
+
+	// Usable The margin is 0 or more.
+	Usable bool `json:"usable"`
+}
+
+// Modulation defines model for Modulation.
+type Modulation struct {
+	// Name What it is called.
+	Name string `json:"name"`
+
+	// ThresholdDbm Lowest usable received level.
+	ThresholdDbm float64 `json:"threshold_dbm"`
+
+	// CapacityMbps Mbit/s.
+	CapacityMbps float64 `json:"capacity_mbps"`
+
+	// BandwidthMhz Occupied bandwidth.
+	BandwidthMhz float64 `json:"bandwidth_mhz"`
+
+	// MaxPowerDbm The most power in it; left out or 0, the radio's own.
+	MaxPowerDbm *float64 `json:"max_power_dbm,omitempty"`
+}
+
+// ModulationAvailability defines model for ModulationAvailability.
+type ModulationAvailability struct {
+	// Modulation Its name.
+	Modulation string `json:"modulation"`
+
+	// MarginDb The worse of both directions.
+	MarginDb *float64 `json:"margin_db"`
+
+	// AvailabilityAnnualPercent Of the year.
+	AvailabilityAnnualPercent *float64 `json:"availability_annual_percent"`
+
+	// Bound How the rain and total figures stand to the truth.
+	Bound ModulationAvailabilityBound `json:"bound"`
+}
+
+// ModulationAvailabilityBound How the rain and total figures stand to the truth.
+type ModulationAvailabilityBound string
+
+// Month defines model for Month.
+type Month struct {
+	// RainMm Mean total of the month, mm.
+	RainMm float64 `json:"rain_mm"`
+
+	// TemperatureC Mean temperature of the month, degrees C.
+	TemperatureC float64 `json:"temperature_c"`
+}
+
+// NeighbourReport defines model for NeighbourReport.
+type NeighbourReport struct {
+	// Name As given.
+	Name   string `json:"name"`
+	Given  Heard  `json:"given"`
+	Least  *Heard `json:"least,omitempty"`
+	Narrow *Heard `json:"narrow,omitempty"`
+}
+
+// NeighbourRequest defines model for NeighbourRequest.
+type NeighbourRequest struct {
+	// Name What people call it.
+	Name *string `json:"name,omitempty"`
+
+	// Lon Longitude, WGS 84 degrees.
+	Lon float64 `json:"lon"`
+
+	// Lat Latitude, WGS 84 degrees.
+	Lat float64 `json:"lat"`
+
+	// AntennaAmslM Height of its antenna, metres above mean sea level.
+	AntennaAmslM float64 `json:"antenna_amsl_m"`
+
+	// GainDbi Gain of its antenna towards the link; left out, 0.
+	GainDbi *float64 `json:"gain_dbi,omitempty"`
+
+	// Polarisation Polarisation of the link.
+	Polarisation *Polarisation `json:"polarisation,omitempty"`
 }
 
 // Note defines model for Note.
@@ -419,6 +1041,69 @@ type Obstruction struct {
 	ShortM float64 `json:"short_m"`
 }
 
+// Option defines model for Option.
+type Option struct {
+	A EndOption `json:"a"`
+	B EndOption `json:"b"`
+}
+
+// Outage defines model for Outage.
+type Outage struct {
+	// Known The total is known.
+	Known bool `json:"known"`
+
+	// MarginDb Fade margin.
+	MarginDb *float64 `json:"margin_db"`
+
+	// MultipathWorstMonthPercent Lost to multipath, worst month.
+	MultipathWorstMonthPercent *float64 `json:"multipath_worst_month_percent"`
+
+	// MultipathAnnualPercent Lost to multipath, year.
+	MultipathAnnualPercent *float64 `json:"multipath_annual_percent"`
+
+	// RainWorstMonthPercent Lost to rain, worst month.
+	RainWorstMonthPercent *float64 `json:"rain_worst_month_percent"`
+
+	// RainAnnualPercent Lost to rain, year.
+	RainAnnualPercent *float64 `json:"rain_annual_percent"`
+
+	// Bound How the rain and total figures stand to the truth.
+	Bound OutageBound `json:"bound"`
+
+	// TotalWorstMonthPercent Sum, worst month; an upper bound.
+	TotalWorstMonthPercent *float64 `json:"total_worst_month_percent"`
+
+	// TotalAnnualPercent Sum, year.
+	TotalAnnualPercent *float64 `json:"total_annual_percent"`
+
+	// AvailabilityWorstMonthPercent What remains, worst month.
+	AvailabilityWorstMonthPercent *float64 `json:"availability_worst_month_percent"`
+
+	// AvailabilityAnnualPercent What remains, year.
+	AvailabilityAnnualPercent *float64 `json:"availability_annual_percent"`
+
+	// MinutesAnnual Lost, minutes of the year.
+	MinutesAnnual *float64 `json:"minutes_annual"`
+}
+
+// OutageBound How the rain and total figures stand to the truth.
+type OutageBound string
+
+// Overload defines model for Overload.
+type Overload struct {
+	// MaxInputDbm What the receiver takes.
+	MaxInputDbm float64 `json:"max_input_dbm"`
+
+	// ExcessDb Unfaded level above that; positive is an overload.
+	ExcessDb *float64 `json:"excess_db"`
+
+	// AttenuationDb What an attenuator must take away.
+	AttenuationDb *float64 `json:"attenuation_db"`
+
+	// EnhancementDb By how much multipath lifts the level for 0.01 % of the worst month (P.530-19 2.3.3).
+	EnhancementDb *float64 `json:"enhancement_db"`
+}
+
 // Path defines model for Path.
 type Path struct {
 	// LengthM Path length on WGS 84, metres.
@@ -437,8 +1122,53 @@ type Path struct {
 	TiltBDeg *float64 `json:"tilt_b_deg"`
 }
 
+// PatternPoint defines model for PatternPoint.
+type PatternPoint struct {
+	// AngleDeg Off the axis, degrees.
+	AngleDeg float64 `json:"angle_deg"`
+
+	// GainDb Gain relative to the axis.
+	GainDb float64 `json:"gain_db"`
+}
+
+// PatternSource Where the gain off the axis comes from, a published pattern by name or a table.
+type PatternSource struct {
+	// Reference A published reference pattern (ITU-R F.699-8, F.1245-3, F.1336-5).
+	Reference *PatternSourceReference `json:"reference,omitempty"`
+
+	// Azimuth A table in azimuth, -180 to 180 degrees.
+	Azimuth *[]PatternPoint `json:"azimuth,omitempty"`
+
+	// Elevation A table in elevation, -90 to 90 degrees.
+	Elevation *[]PatternPoint `json:"elevation,omitempty"`
+}
+
+// PatternSourceReference A published reference pattern (ITU-R F.699-8, F.1245-3, F.1336-5).
+type PatternSourceReference string
+
 // Polarisation Polarisation of the link.
 type Polarisation string
+
+// PolarisationAdvice defines model for PolarisationAdvice.
+type PolarisationAdvice struct {
+	// RainVerticalDb Rain attenuation exceeded 0.01 % of the year, vertical.
+	RainVerticalDb *float64 `json:"rain_vertical_db"`
+
+	// RainHorizontalDb The same, horizontal.
+	RainHorizontalDb *float64 `json:"rain_horizontal_db"`
+
+	// VerticalNeighbours Neighbours in the beam that use vertical.
+	VerticalNeighbours int32 `json:"vertical_neighbours"`
+
+	// HorizontalNeighbours Neighbours in the beam that use horizontal.
+	HorizontalNeighbours int32 `json:"horizontal_neighbours"`
+
+	// Advice vertical, horizontal or both; empty if it does not matter.
+	Advice string `json:"advice"`
+
+	// Detail Why.
+	Detail string `json:"detail"`
+}
 
 // Problem An RFC 9457 problem document.
 type Problem struct {
@@ -474,6 +1204,107 @@ type ProfilePoint struct {
 
 	// GroundM Terrain height above mean sea level, metres.
 	GroundM float64 `json:"ground_m"`
+}
+
+// Radio defines model for Radio.
+type Radio struct {
+	// Name Unique in the register.
+	Name string `json:"name"`
+
+	// MinGhz Lowest frequency that it tunes.
+	MinGhz float64 `json:"min_ghz"`
+
+	// MaxGhz Highest frequency that it tunes.
+	MaxGhz float64 `json:"max_ghz"`
+
+	// MinPowerDbm Least transmit power.
+	MinPowerDbm float64 `json:"min_power_dbm"`
+
+	// MaxPowerDbm Most transmit power.
+	MaxPowerDbm float64 `json:"max_power_dbm"`
+
+	// PowerStepDb Step in which it is set.
+	PowerStepDb float64 `json:"power_step_db"`
+
+	// MaxInputDbm Highest level that the receiver takes without overload.
+	MaxInputDbm float64 `json:"max_input_dbm"`
+
+	// LossDb Lost inside it, on each of transmit and receive.
+	LossDb *float64 `json:"loss_db,omitempty"`
+
+	// Modulations Its working points, most robust first.
+	Modulations []Modulation `json:"modulations"`
+}
+
+// RadioEntry defines model for RadioEntry.
+type RadioEntry struct {
+	// Origin Where it comes from. Only own ones can be taken away.
+	Origin RadioEntryOrigin `json:"origin"`
+	Radio  Radio            `json:"radio"`
+}
+
+// RadioEntryOrigin Where it comes from. Only own ones can be taken away.
+type RadioEntryOrigin string
+
+// RadioList defines model for RadioList.
+type RadioList struct {
+	// Radios By origin.
+	Radios []RadioEntry `json:"radios"`
+}
+
+// RadioReport defines model for RadioReport.
+type RadioReport struct {
+	// Meets Both directions meet the target, without overload and with the far end in both beams.
+	Meets bool `json:"meets"`
+
+	// Reasons Why not.
+	Reasons []Note `json:"reasons"`
+	AToB    Budget `json:"a_to_b"`
+	BToA    Budget `json:"b_to_a"`
+
+	// Availability Percentages of time, of the average worst month or the average year as their names say.
+	Availability Availability `json:"availability"`
+	Aim          AimReport    `json:"aim"`
+
+	// Choice The least antennas and power that do, and what a narrower beam would spare. Both ends aimed at each other.
+	Choice *Choice `json:"choice,omitempty"`
+
+	// Neighbours What each neighbour hears.
+	Neighbours []NeighbourReport `json:"neighbours"`
+	Exposure   ExposureReport    `json:"exposure"`
+
+	// Warnings About the limits that the operator entered. They decide nothing.
+	Warnings []Note `json:"warnings"`
+
+	// Missing What could not be answered, and why.
+	Missing []Note `json:"missing"`
+
+	// ClimateSources Where the figures of the climate come from that the request did not state.
+	ClimateSources []Text `json:"climate_sources"`
+}
+
+// RadioRequest What stands at both ends, and what the link must carry.
+type RadioRequest struct {
+	// A One end, a radio and an antenna, by name or described here, and how they are set up.
+	A TerminalRequest `json:"a"`
+
+	// B One end, a radio and an antenna, by name or described here, and how they are set up.
+	B TerminalRequest `json:"b"`
+
+	// Target What must be met in both directions.
+	Target *Target `json:"target,omitempty"`
+
+	// Climate What is known of the weather. Whatever is missing leaves its answer out; nothing is guessed.
+	Climate *Climate `json:"climate,omitempty"`
+
+	// Date The day for which magnetic azimuths are wanted, 2025 to 2029.
+	Date *string `json:"date,omitempty"`
+
+	// Choose Look for the least antennas and power that do.
+	Choose *bool `json:"choose,omitempty"`
+
+	// Neighbours Other sites that may hear the link.
+	Neighbours *[]NeighbourRequest `json:"neighbours,omitempty"`
 }
 
 // Raise The least extra antenna height that meets every criterion. Null where none up to the cap does, or where missing data keeps it from being known.
@@ -574,6 +1405,65 @@ type Samples struct {
 	F1M []float64 `json:"f1_m"`
 }
 
+// Spared defines model for Spared.
+type Spared struct {
+	// MadeDb Less noise made outside the wider beam, in the mean.
+	MadeDb *float64 `json:"made_db"`
+
+	// HeardDb Less noise heard.
+	HeardDb *float64 `json:"heard_db"`
+}
+
+// SparedReport defines model for SparedReport.
+type SparedReport struct {
+	A Spared `json:"a"`
+	B Spared `json:"b"`
+}
+
+// Target What must be met in both directions.
+type Target struct {
+	// CapacityMbps Capacity that must be carried, Mbit/s; left out, that of the most robust modulation.
+	CapacityMbps *float64 `json:"capacity_mbps,omitempty"`
+
+	// MarginDb Margin above its threshold; left out, 0.
+	MarginDb *float64 `json:"margin_db,omitempty"`
+
+	// AvailabilityPercent Share of the year, both directions, percent; left out, none is asked for.
+	AvailabilityPercent *float64 `json:"availability_percent,omitempty"`
+}
+
+// TerminalRequest One end, a radio and an antenna, by name or described here, and how they are set up.
+type TerminalRequest struct {
+	// Radio Name of a radio in the register.
+	Radio      *string `json:"radio,omitempty"`
+	RadioModel *Radio  `json:"radio_model,omitempty"`
+
+	// Antenna Name of an antenna in the register.
+	Antenna      *string  `json:"antenna,omitempty"`
+	AntennaModel *Antenna `json:"antenna_model,omitempty"`
+
+	// Polarisation Polarisation of the link.
+	Polarisation *Polarisation `json:"polarisation,omitempty"`
+
+	// AzimuthDeg Where the antenna points, degrees clockwise from true north. Left out, at the far end.
+	AzimuthDeg *float64 `json:"azimuth_deg,omitempty"`
+
+	// TiltDeg Its elevation, degrees, up positive. Left out, at the far end.
+	TiltDeg *float64 `json:"tilt_deg,omitempty"`
+
+	// PowerDbm Transmit power. Left out, the most that the radio has.
+	PowerDbm *float64 `json:"power_dbm,omitempty"`
+
+	// FeederLossDb Lost between radio and antenna.
+	FeederLossDb *float64 `json:"feeder_loss_db,omitempty"`
+
+	// OtherLossDb Lost otherwise at this end.
+	OtherLossDb *float64 `json:"other_loss_db,omitempty"`
+
+	// AttenuatorDb An attenuator between radio and antenna; it counts both ways.
+	AttenuatorDb *float64 `json:"attenuator_db,omitempty"`
+}
+
 // Terrain defines model for Terrain.
 type Terrain struct {
 	// Rasters What the heights came from.
@@ -604,9 +1494,13 @@ type TerrainSource struct {
 	Share float64 `json:"share"`
 }
 
-// Verdict `clear`: every criterion is met. `marginal`: a criterion is missed, but the line between the antennas is open at
-// every k judged. `obstructed`: the line itself is cut at a k judged. `unknown`: missing data keeps it from being
-// judged.
+// Text A line of text.
+type Text = string
+
+// Verdict Without a radio: `clear`: every criterion is met. `marginal`: a criterion is missed, but the line between the
+// antennas is open at every k judged. `obstructed`: the line itself is cut at a k judged. With a radio: `clear`:
+// every criterion is met and the radio meets its target. `marginal`: one of the two holds. `obstructed`: neither.
+// `unknown`: missing data keeps it from being judged.
 type Verdict string
 
 // AssessmentId defines model for AssessmentId.
@@ -614,6 +1508,9 @@ type AssessmentId = string
 
 // IfNoneMatch defines model for IfNoneMatch.
 type IfNoneMatch = string
+
+// RegisterName defines model for RegisterName.
+type RegisterName = string
 
 // GetAssessmentParams defines parameters for GetAssessment.
 type GetAssessmentParams struct {
@@ -633,8 +1530,14 @@ type GetAssessmentSVGParams struct {
 	IfNoneMatch *IfNoneMatch `json:"If-None-Match,omitempty"`
 }
 
+// CreateAntennaJSONRequestBody defines body for CreateAntenna for application/json ContentType.
+type CreateAntennaJSONRequestBody = Antenna
+
 // CreateAssessmentJSONRequestBody defines body for CreateAssessment for application/json ContentType.
 type CreateAssessmentJSONRequestBody = AssessmentRequest
+
+// CreateRadioJSONRequestBody defines body for CreateRadio for application/json ContentType.
+type CreateRadioJSONRequestBody = Radio
 
 // ServerInterface represents all server handlers.
 type ServerInterface interface {
@@ -644,6 +1547,18 @@ type ServerInterface interface {
 	// GetReady Requests can be answered
 	// (GET /readyz)
 	GetReady(ctx echo.Context) error
+	// ListAntennas The register of antennas
+	// (GET /v1/antennas)
+	ListAntennas(ctx echo.Context) error
+	// CreateAntenna Add an antenna of one's own
+	// (POST /v1/antennas)
+	CreateAntenna(ctx echo.Context) error
+	// DeleteAntenna Take an antenna of one's own away
+	// (DELETE /v1/antennas/{name})
+	DeleteAntenna(ctx echo.Context, name RegisterName) error
+	// GetAntenna Read an antenna
+	// (GET /v1/antennas/{name})
+	GetAntenna(ctx echo.Context, name RegisterName) error
 	// CreateAssessment Judge a link
 	// (POST /v1/assessments)
 	CreateAssessment(ctx echo.Context) error
@@ -653,6 +1568,18 @@ type ServerInterface interface {
 	// GetAssessmentSVG The profile drawing
 	// (GET /v1/assessments/{id}/profile.svg)
 	GetAssessmentSVG(ctx echo.Context, id AssessmentId, params GetAssessmentSVGParams) error
+	// ListRadios The register of radios
+	// (GET /v1/radios)
+	ListRadios(ctx echo.Context) error
+	// CreateRadio Add a radio of one's own
+	// (POST /v1/radios)
+	CreateRadio(ctx echo.Context) error
+	// DeleteRadio Take a radio of one's own away
+	// (DELETE /v1/radios/{name})
+	DeleteRadio(ctx echo.Context, name RegisterName) error
+	// GetRadio Read a radio
+	// (GET /v1/radios/{name})
+	GetRadio(ctx echo.Context, name RegisterName) error
 	// ListRasters What elevation data is loaded
 	// (GET /v1/rasters)
 	ListRasters(ctx echo.Context) error
@@ -678,6 +1605,56 @@ func (w *ServerInterfaceWrapper) GetReady(ctx echo.Context) error {
 
 	// Invoke the callback with all the unmarshaled arguments
 	err = w.Handler.GetReady(ctx)
+	return err
+}
+
+// ListAntennas converts echo context to params.
+func (w *ServerInterfaceWrapper) ListAntennas(ctx echo.Context) error {
+	var err error
+
+	// Invoke the callback with all the unmarshaled arguments
+	err = w.Handler.ListAntennas(ctx)
+	return err
+}
+
+// CreateAntenna converts echo context to params.
+func (w *ServerInterfaceWrapper) CreateAntenna(ctx echo.Context) error {
+	var err error
+
+	// Invoke the callback with all the unmarshaled arguments
+	err = w.Handler.CreateAntenna(ctx)
+	return err
+}
+
+// DeleteAntenna converts echo context to params.
+func (w *ServerInterfaceWrapper) DeleteAntenna(ctx echo.Context) error {
+	var err error
+	// ------------- Path parameter "name" -------------
+	var name RegisterName
+
+	err = runtime.BindStyledParameterWithOptions("simple", "name", ctx.Param("name"), &name, runtime.BindStyledParameterOptions{ParamLocation: runtime.ParamLocationPath, Explode: false, Required: true, Type: "string", Format: "", ValueIsUnescaped: ctx.Request().URL.RawPath == ""})
+	if err != nil {
+		return echo.NewHTTPError(http.StatusBadRequest, fmt.Sprintf("Invalid format for parameter name: %s", err))
+	}
+
+	// Invoke the callback with all the unmarshaled arguments
+	err = w.Handler.DeleteAntenna(ctx, name)
+	return err
+}
+
+// GetAntenna converts echo context to params.
+func (w *ServerInterfaceWrapper) GetAntenna(ctx echo.Context) error {
+	var err error
+	// ------------- Path parameter "name" -------------
+	var name RegisterName
+
+	err = runtime.BindStyledParameterWithOptions("simple", "name", ctx.Param("name"), &name, runtime.BindStyledParameterOptions{ParamLocation: runtime.ParamLocationPath, Explode: false, Required: true, Type: "string", Format: "", ValueIsUnescaped: ctx.Request().URL.RawPath == ""})
+	if err != nil {
+		return echo.NewHTTPError(http.StatusBadRequest, fmt.Sprintf("Invalid format for parameter name: %s", err))
+	}
+
+	// Invoke the callback with all the unmarshaled arguments
+	err = w.Handler.GetAntenna(ctx, name)
 	return err
 }
 
@@ -768,6 +1745,56 @@ func (w *ServerInterfaceWrapper) GetAssessmentSVG(ctx echo.Context) error {
 	return err
 }
 
+// ListRadios converts echo context to params.
+func (w *ServerInterfaceWrapper) ListRadios(ctx echo.Context) error {
+	var err error
+
+	// Invoke the callback with all the unmarshaled arguments
+	err = w.Handler.ListRadios(ctx)
+	return err
+}
+
+// CreateRadio converts echo context to params.
+func (w *ServerInterfaceWrapper) CreateRadio(ctx echo.Context) error {
+	var err error
+
+	// Invoke the callback with all the unmarshaled arguments
+	err = w.Handler.CreateRadio(ctx)
+	return err
+}
+
+// DeleteRadio converts echo context to params.
+func (w *ServerInterfaceWrapper) DeleteRadio(ctx echo.Context) error {
+	var err error
+	// ------------- Path parameter "name" -------------
+	var name RegisterName
+
+	err = runtime.BindStyledParameterWithOptions("simple", "name", ctx.Param("name"), &name, runtime.BindStyledParameterOptions{ParamLocation: runtime.ParamLocationPath, Explode: false, Required: true, Type: "string", Format: "", ValueIsUnescaped: ctx.Request().URL.RawPath == ""})
+	if err != nil {
+		return echo.NewHTTPError(http.StatusBadRequest, fmt.Sprintf("Invalid format for parameter name: %s", err))
+	}
+
+	// Invoke the callback with all the unmarshaled arguments
+	err = w.Handler.DeleteRadio(ctx, name)
+	return err
+}
+
+// GetRadio converts echo context to params.
+func (w *ServerInterfaceWrapper) GetRadio(ctx echo.Context) error {
+	var err error
+	// ------------- Path parameter "name" -------------
+	var name RegisterName
+
+	err = runtime.BindStyledParameterWithOptions("simple", "name", ctx.Param("name"), &name, runtime.BindStyledParameterOptions{ParamLocation: runtime.ParamLocationPath, Explode: false, Required: true, Type: "string", Format: "", ValueIsUnescaped: ctx.Request().URL.RawPath == ""})
+	if err != nil {
+		return echo.NewHTTPError(http.StatusBadRequest, fmt.Sprintf("Invalid format for parameter name: %s", err))
+	}
+
+	// Invoke the callback with all the unmarshaled arguments
+	err = w.Handler.GetRadio(ctx, name)
+	return err
+}
+
 // ListRasters converts echo context to params.
 func (w *ServerInterfaceWrapper) ListRasters(ctx echo.Context) error {
 	var err error
@@ -828,6 +1855,14 @@ func RegisterHandlersWithOptions(router EchoRouter, si ServerInterface, options 
 	router.GET(options.BaseURL+"/v1/assessments/:id", wrapper.GetAssessment, options.OperationMiddlewares["getAssessment"]...)
 	router.GET(options.BaseURL+"/v1/assessments/:id/profile.svg", wrapper.GetAssessmentSVG, options.OperationMiddlewares["getAssessmentSVG"]...)
 	router.GET(options.BaseURL+"/v1/rasters", wrapper.ListRasters, options.OperationMiddlewares["listRasters"]...)
+	router.GET(options.BaseURL+"/v1/antennas", wrapper.ListAntennas, options.OperationMiddlewares["listAntennas"]...)
+	router.POST(options.BaseURL+"/v1/antennas", wrapper.CreateAntenna, options.OperationMiddlewares["createAntenna"]...)
+	router.DELETE(options.BaseURL+"/v1/antennas/:name", wrapper.DeleteAntenna, options.OperationMiddlewares["deleteAntenna"]...)
+	router.GET(options.BaseURL+"/v1/antennas/:name", wrapper.GetAntenna, options.OperationMiddlewares["getAntenna"]...)
+	router.GET(options.BaseURL+"/v1/radios", wrapper.ListRadios, options.OperationMiddlewares["listRadios"]...)
+	router.POST(options.BaseURL+"/v1/radios", wrapper.CreateRadio, options.OperationMiddlewares["createRadio"]...)
+	router.DELETE(options.BaseURL+"/v1/radios/:name", wrapper.DeleteRadio, options.OperationMiddlewares["deleteRadio"]...)
+	router.GET(options.BaseURL+"/v1/radios/:name", wrapper.GetRadio, options.OperationMiddlewares["getRadio"]...)
 	router.GET(options.BaseURL+"/livez", wrapper.GetLive, options.OperationMiddlewares["getLive"]...)
 	router.GET(options.BaseURL+"/readyz", wrapper.GetReady, options.OperationMiddlewares["getReady"]...)
 
@@ -919,6 +1954,301 @@ func (response GetReady503JSONResponse) VisitGetReadyResponse(w http.ResponseWri
 	}
 	w.Header().Set("Content-Type", "application/json")
 	w.WriteHeader(503)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ListAntennasRequestObject struct {
+}
+
+type ListAntennasResponseObject interface {
+	VisitListAntennasResponse(w http.ResponseWriter) error
+}
+
+type ListAntennas200JSONResponse AntennaList
+
+func (response ListAntennas200JSONResponse) VisitListAntennasResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/json")
+	w.WriteHeader(200)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ListAntennas500ApplicationProblemPlusJSONResponse struct {
+	ProblemApplicationProblemPlusJSONResponse
+}
+
+func (response ListAntennas500ApplicationProblemPlusJSONResponse) VisitListAntennasResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(500)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type CreateAntennaRequestObject struct {
+	Body *CreateAntennaJSONRequestBody
+}
+
+type CreateAntennaResponseObject interface {
+	VisitCreateAntennaResponse(w http.ResponseWriter) error
+}
+
+type CreateAntenna201ResponseHeaders struct {
+	Location *string
+}
+
+type CreateAntenna201JSONResponse struct {
+	Body    AntennaEntry
+	Headers CreateAntenna201ResponseHeaders
+}
+
+func (response CreateAntenna201JSONResponse) VisitCreateAntennaResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response.Body); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/json")
+	if response.Headers.Location != nil {
+		w.Header().Set("Location", fmt.Sprint(*response.Headers.Location))
+	}
+	w.WriteHeader(201)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type CreateAntenna400ApplicationProblemPlusJSONResponse struct {
+	ProblemApplicationProblemPlusJSONResponse
+}
+
+func (response CreateAntenna400ApplicationProblemPlusJSONResponse) VisitCreateAntennaResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(400)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type CreateAntenna409ApplicationProblemPlusJSONResponse Problem
+
+func (response CreateAntenna409ApplicationProblemPlusJSONResponse) VisitCreateAntennaResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(409)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type CreateAntenna413ApplicationProblemPlusJSONResponse Problem
+
+func (response CreateAntenna413ApplicationProblemPlusJSONResponse) VisitCreateAntennaResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(413)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type CreateAntenna415ApplicationProblemPlusJSONResponse Problem
+
+func (response CreateAntenna415ApplicationProblemPlusJSONResponse) VisitCreateAntennaResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(415)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type CreateAntenna422ApplicationProblemPlusJSONResponse Problem
+
+func (response CreateAntenna422ApplicationProblemPlusJSONResponse) VisitCreateAntennaResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(422)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type CreateAntenna500ApplicationProblemPlusJSONResponse Problem
+
+func (response CreateAntenna500ApplicationProblemPlusJSONResponse) VisitCreateAntennaResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(500)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type CreateAntenna503ApplicationProblemPlusJSONResponse Problem
+
+func (response CreateAntenna503ApplicationProblemPlusJSONResponse) VisitCreateAntennaResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(503)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type DeleteAntennaRequestObject struct {
+	Name RegisterName `json:"name"`
+}
+
+type DeleteAntennaResponseObject interface {
+	VisitDeleteAntennaResponse(w http.ResponseWriter) error
+}
+
+type DeleteAntenna204Response struct {
+}
+
+func (response DeleteAntenna204Response) VisitDeleteAntennaResponse(w http.ResponseWriter) error {
+	w.WriteHeader(204)
+	return nil
+}
+
+type DeleteAntenna404ApplicationProblemPlusJSONResponse struct {
+	ProblemApplicationProblemPlusJSONResponse
+}
+
+func (response DeleteAntenna404ApplicationProblemPlusJSONResponse) VisitDeleteAntennaResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(404)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type DeleteAntenna409ApplicationProblemPlusJSONResponse Problem
+
+func (response DeleteAntenna409ApplicationProblemPlusJSONResponse) VisitDeleteAntennaResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(409)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type DeleteAntenna500ApplicationProblemPlusJSONResponse Problem
+
+func (response DeleteAntenna500ApplicationProblemPlusJSONResponse) VisitDeleteAntennaResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(500)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type DeleteAntenna503ApplicationProblemPlusJSONResponse Problem
+
+func (response DeleteAntenna503ApplicationProblemPlusJSONResponse) VisitDeleteAntennaResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(503)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type GetAntennaRequestObject struct {
+	Name RegisterName `json:"name"`
+}
+
+type GetAntennaResponseObject interface {
+	VisitGetAntennaResponse(w http.ResponseWriter) error
+}
+
+type GetAntenna200JSONResponse AntennaEntry
+
+func (response GetAntenna200JSONResponse) VisitGetAntennaResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/json")
+	w.WriteHeader(200)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type GetAntenna404ApplicationProblemPlusJSONResponse struct {
+	ProblemApplicationProblemPlusJSONResponse
+}
+
+func (response GetAntenna404ApplicationProblemPlusJSONResponse) VisitGetAntennaResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(404)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type GetAntenna500ApplicationProblemPlusJSONResponse Problem
+
+func (response GetAntenna500ApplicationProblemPlusJSONResponse) VisitGetAntennaResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(500)
 	_, err := buf.WriteTo(w)
 	return err
 }
@@ -1205,6 +2535,301 @@ func (response GetAssessmentSVG500ApplicationProblemPlusJSONResponse) VisitGetAs
 	return err
 }
 
+type ListRadiosRequestObject struct {
+}
+
+type ListRadiosResponseObject interface {
+	VisitListRadiosResponse(w http.ResponseWriter) error
+}
+
+type ListRadios200JSONResponse RadioList
+
+func (response ListRadios200JSONResponse) VisitListRadiosResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/json")
+	w.WriteHeader(200)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ListRadios500ApplicationProblemPlusJSONResponse struct {
+	ProblemApplicationProblemPlusJSONResponse
+}
+
+func (response ListRadios500ApplicationProblemPlusJSONResponse) VisitListRadiosResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(500)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type CreateRadioRequestObject struct {
+	Body *CreateRadioJSONRequestBody
+}
+
+type CreateRadioResponseObject interface {
+	VisitCreateRadioResponse(w http.ResponseWriter) error
+}
+
+type CreateRadio201ResponseHeaders struct {
+	Location *string
+}
+
+type CreateRadio201JSONResponse struct {
+	Body    RadioEntry
+	Headers CreateRadio201ResponseHeaders
+}
+
+func (response CreateRadio201JSONResponse) VisitCreateRadioResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response.Body); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/json")
+	if response.Headers.Location != nil {
+		w.Header().Set("Location", fmt.Sprint(*response.Headers.Location))
+	}
+	w.WriteHeader(201)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type CreateRadio400ApplicationProblemPlusJSONResponse struct {
+	ProblemApplicationProblemPlusJSONResponse
+}
+
+func (response CreateRadio400ApplicationProblemPlusJSONResponse) VisitCreateRadioResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(400)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type CreateRadio409ApplicationProblemPlusJSONResponse Problem
+
+func (response CreateRadio409ApplicationProblemPlusJSONResponse) VisitCreateRadioResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(409)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type CreateRadio413ApplicationProblemPlusJSONResponse Problem
+
+func (response CreateRadio413ApplicationProblemPlusJSONResponse) VisitCreateRadioResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(413)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type CreateRadio415ApplicationProblemPlusJSONResponse Problem
+
+func (response CreateRadio415ApplicationProblemPlusJSONResponse) VisitCreateRadioResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(415)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type CreateRadio422ApplicationProblemPlusJSONResponse Problem
+
+func (response CreateRadio422ApplicationProblemPlusJSONResponse) VisitCreateRadioResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(422)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type CreateRadio500ApplicationProblemPlusJSONResponse Problem
+
+func (response CreateRadio500ApplicationProblemPlusJSONResponse) VisitCreateRadioResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(500)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type CreateRadio503ApplicationProblemPlusJSONResponse Problem
+
+func (response CreateRadio503ApplicationProblemPlusJSONResponse) VisitCreateRadioResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(503)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type DeleteRadioRequestObject struct {
+	Name RegisterName `json:"name"`
+}
+
+type DeleteRadioResponseObject interface {
+	VisitDeleteRadioResponse(w http.ResponseWriter) error
+}
+
+type DeleteRadio204Response struct {
+}
+
+func (response DeleteRadio204Response) VisitDeleteRadioResponse(w http.ResponseWriter) error {
+	w.WriteHeader(204)
+	return nil
+}
+
+type DeleteRadio404ApplicationProblemPlusJSONResponse struct {
+	ProblemApplicationProblemPlusJSONResponse
+}
+
+func (response DeleteRadio404ApplicationProblemPlusJSONResponse) VisitDeleteRadioResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(404)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type DeleteRadio409ApplicationProblemPlusJSONResponse Problem
+
+func (response DeleteRadio409ApplicationProblemPlusJSONResponse) VisitDeleteRadioResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(409)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type DeleteRadio500ApplicationProblemPlusJSONResponse Problem
+
+func (response DeleteRadio500ApplicationProblemPlusJSONResponse) VisitDeleteRadioResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(500)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type DeleteRadio503ApplicationProblemPlusJSONResponse Problem
+
+func (response DeleteRadio503ApplicationProblemPlusJSONResponse) VisitDeleteRadioResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(503)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type GetRadioRequestObject struct {
+	Name RegisterName `json:"name"`
+}
+
+type GetRadioResponseObject interface {
+	VisitGetRadioResponse(w http.ResponseWriter) error
+}
+
+type GetRadio200JSONResponse RadioEntry
+
+func (response GetRadio200JSONResponse) VisitGetRadioResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/json")
+	w.WriteHeader(200)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type GetRadio404ApplicationProblemPlusJSONResponse struct {
+	ProblemApplicationProblemPlusJSONResponse
+}
+
+func (response GetRadio404ApplicationProblemPlusJSONResponse) VisitGetRadioResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(404)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type GetRadio500ApplicationProblemPlusJSONResponse Problem
+
+func (response GetRadio500ApplicationProblemPlusJSONResponse) VisitGetRadioResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(500)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
 type ListRastersRequestObject struct {
 }
 
@@ -1250,6 +2875,18 @@ type StrictServerInterface interface {
 	// GetReady Requests can be answered
 	// (GET /readyz)
 	GetReady(ctx context.Context, request GetReadyRequestObject) (GetReadyResponseObject, error)
+	// ListAntennas The register of antennas
+	// (GET /v1/antennas)
+	ListAntennas(ctx context.Context, request ListAntennasRequestObject) (ListAntennasResponseObject, error)
+	// CreateAntenna Add an antenna of one's own
+	// (POST /v1/antennas)
+	CreateAntenna(ctx context.Context, request CreateAntennaRequestObject) (CreateAntennaResponseObject, error)
+	// DeleteAntenna Take an antenna of one's own away
+	// (DELETE /v1/antennas/{name})
+	DeleteAntenna(ctx context.Context, request DeleteAntennaRequestObject) (DeleteAntennaResponseObject, error)
+	// GetAntenna Read an antenna
+	// (GET /v1/antennas/{name})
+	GetAntenna(ctx context.Context, request GetAntennaRequestObject) (GetAntennaResponseObject, error)
 	// CreateAssessment Judge a link
 	// (POST /v1/assessments)
 	CreateAssessment(ctx context.Context, request CreateAssessmentRequestObject) (CreateAssessmentResponseObject, error)
@@ -1259,6 +2896,18 @@ type StrictServerInterface interface {
 	// GetAssessmentSVG The profile drawing
 	// (GET /v1/assessments/{id}/profile.svg)
 	GetAssessmentSVG(ctx context.Context, request GetAssessmentSVGRequestObject) (GetAssessmentSVGResponseObject, error)
+	// ListRadios The register of radios
+	// (GET /v1/radios)
+	ListRadios(ctx context.Context, request ListRadiosRequestObject) (ListRadiosResponseObject, error)
+	// CreateRadio Add a radio of one's own
+	// (POST /v1/radios)
+	CreateRadio(ctx context.Context, request CreateRadioRequestObject) (CreateRadioResponseObject, error)
+	// DeleteRadio Take a radio of one's own away
+	// (DELETE /v1/radios/{name})
+	DeleteRadio(ctx context.Context, request DeleteRadioRequestObject) (DeleteRadioResponseObject, error)
+	// GetRadio Read a radio
+	// (GET /v1/radios/{name})
+	GetRadio(ctx context.Context, request GetRadioRequestObject) (GetRadioResponseObject, error)
 	// ListRasters What elevation data is loaded
 	// (GET /v1/rasters)
 	ListRasters(ctx context.Context, request ListRastersRequestObject) (ListRastersResponseObject, error)
@@ -1316,6 +2965,125 @@ func (sh *strictHandler) GetReady(ctx echo.Context) error {
 		return err
 	} else if validResponse, ok := response.(GetReadyResponseObject); ok {
 		return validResponse.VisitGetReadyResponse(ctx.Response())
+	} else if response != nil {
+		return fmt.Errorf("unexpected response type: %T", response)
+	}
+	return nil
+}
+
+// ListAntennas operation middleware
+func (sh *strictHandler) ListAntennas(ctx echo.Context) error {
+	var request ListAntennasRequestObject
+
+	handler := func(ctx echo.Context, request interface{}) (interface{}, error) {
+		return sh.ssi.ListAntennas(ctx.Request().Context(), request.(ListAntennasRequestObject))
+	}
+	for _, middleware := range sh.middlewares {
+		handler = middleware(handler, "ListAntennas")
+	}
+
+	response, err := handler(ctx, request)
+
+	if err != nil {
+		return err
+	} else if validResponse, ok := response.(ListAntennasResponseObject); ok {
+		return validResponse.VisitListAntennasResponse(ctx.Response())
+	} else if response != nil {
+		return fmt.Errorf("unexpected response type: %T", response)
+	}
+	return nil
+}
+
+// CreateAntenna operation middleware
+func (sh *strictHandler) CreateAntenna(ctx echo.Context) error {
+	var request CreateAntennaRequestObject
+
+	var body CreateAntennaJSONRequestBody
+	var err error
+	if binder, ok := ctx.Echo().Binder.(*echo.DefaultBinder); ok {
+		// A request validator built on kin-openapi's openapi3filter with
+		// KeepValidatedValue leaves the value it validated on the body. Bind
+		// that value, matching member names exactly, so the handler receives
+		// what was validated instead of a second, case-insensitive decode.
+		// Otherwise bind only the request body, so that path and query
+		// parameters are not also bound into the body struct.
+		if vb, ok := ctx.Request().Body.(interface{ ValidatedValue() any }); !ok || runtime.BindJSONValue(vb.ValidatedValue(), &body) != nil {
+			err = binder.BindBody(ctx, &body)
+		}
+	} else {
+		// A custom binder is installed on the Echo instance; defer to it
+		// entirely, since echo.Binder does not expose body-only binding and
+		// the binder may do more than decode (for example call ctx.Validate).
+		err = ctx.Bind(&body)
+	}
+	if err != nil {
+		return err
+	}
+	request.Body = &body
+
+	handler := func(ctx echo.Context, request interface{}) (interface{}, error) {
+		return sh.ssi.CreateAntenna(ctx.Request().Context(), request.(CreateAntennaRequestObject))
+	}
+	for _, middleware := range sh.middlewares {
+		handler = middleware(handler, "CreateAntenna")
+	}
+
+	response, err := handler(ctx, request)
+
+	if err != nil {
+		return err
+	} else if validResponse, ok := response.(CreateAntennaResponseObject); ok {
+		return validResponse.VisitCreateAntennaResponse(ctx.Response())
+	} else if response != nil {
+		return fmt.Errorf("unexpected response type: %T", response)
+	}
+	return nil
+}
+
+// DeleteAntenna operation middleware
+func (sh *strictHandler) DeleteAntenna(ctx echo.Context, name RegisterName) error {
+	var request DeleteAntennaRequestObject
+
+	request.Name = name
+
+	handler := func(ctx echo.Context, request interface{}) (interface{}, error) {
+		return sh.ssi.DeleteAntenna(ctx.Request().Context(), request.(DeleteAntennaRequestObject))
+	}
+	for _, middleware := range sh.middlewares {
+		handler = middleware(handler, "DeleteAntenna")
+	}
+
+	response, err := handler(ctx, request)
+
+	if err != nil {
+		return err
+	} else if validResponse, ok := response.(DeleteAntennaResponseObject); ok {
+		return validResponse.VisitDeleteAntennaResponse(ctx.Response())
+	} else if response != nil {
+		return fmt.Errorf("unexpected response type: %T", response)
+	}
+	return nil
+}
+
+// GetAntenna operation middleware
+func (sh *strictHandler) GetAntenna(ctx echo.Context, name RegisterName) error {
+	var request GetAntennaRequestObject
+
+	request.Name = name
+
+	handler := func(ctx echo.Context, request interface{}) (interface{}, error) {
+		return sh.ssi.GetAntenna(ctx.Request().Context(), request.(GetAntennaRequestObject))
+	}
+	for _, middleware := range sh.middlewares {
+		handler = middleware(handler, "GetAntenna")
+	}
+
+	response, err := handler(ctx, request)
+
+	if err != nil {
+		return err
+	} else if validResponse, ok := response.(GetAntennaResponseObject); ok {
+		return validResponse.VisitGetAntennaResponse(ctx.Response())
 	} else if response != nil {
 		return fmt.Errorf("unexpected response type: %T", response)
 	}
@@ -1414,6 +3182,125 @@ func (sh *strictHandler) GetAssessmentSVG(ctx echo.Context, id AssessmentId, par
 		return err
 	} else if validResponse, ok := response.(GetAssessmentSVGResponseObject); ok {
 		return validResponse.VisitGetAssessmentSVGResponse(ctx.Response())
+	} else if response != nil {
+		return fmt.Errorf("unexpected response type: %T", response)
+	}
+	return nil
+}
+
+// ListRadios operation middleware
+func (sh *strictHandler) ListRadios(ctx echo.Context) error {
+	var request ListRadiosRequestObject
+
+	handler := func(ctx echo.Context, request interface{}) (interface{}, error) {
+		return sh.ssi.ListRadios(ctx.Request().Context(), request.(ListRadiosRequestObject))
+	}
+	for _, middleware := range sh.middlewares {
+		handler = middleware(handler, "ListRadios")
+	}
+
+	response, err := handler(ctx, request)
+
+	if err != nil {
+		return err
+	} else if validResponse, ok := response.(ListRadiosResponseObject); ok {
+		return validResponse.VisitListRadiosResponse(ctx.Response())
+	} else if response != nil {
+		return fmt.Errorf("unexpected response type: %T", response)
+	}
+	return nil
+}
+
+// CreateRadio operation middleware
+func (sh *strictHandler) CreateRadio(ctx echo.Context) error {
+	var request CreateRadioRequestObject
+
+	var body CreateRadioJSONRequestBody
+	var err error
+	if binder, ok := ctx.Echo().Binder.(*echo.DefaultBinder); ok {
+		// A request validator built on kin-openapi's openapi3filter with
+		// KeepValidatedValue leaves the value it validated on the body. Bind
+		// that value, matching member names exactly, so the handler receives
+		// what was validated instead of a second, case-insensitive decode.
+		// Otherwise bind only the request body, so that path and query
+		// parameters are not also bound into the body struct.
+		if vb, ok := ctx.Request().Body.(interface{ ValidatedValue() any }); !ok || runtime.BindJSONValue(vb.ValidatedValue(), &body) != nil {
+			err = binder.BindBody(ctx, &body)
+		}
+	} else {
+		// A custom binder is installed on the Echo instance; defer to it
+		// entirely, since echo.Binder does not expose body-only binding and
+		// the binder may do more than decode (for example call ctx.Validate).
+		err = ctx.Bind(&body)
+	}
+	if err != nil {
+		return err
+	}
+	request.Body = &body
+
+	handler := func(ctx echo.Context, request interface{}) (interface{}, error) {
+		return sh.ssi.CreateRadio(ctx.Request().Context(), request.(CreateRadioRequestObject))
+	}
+	for _, middleware := range sh.middlewares {
+		handler = middleware(handler, "CreateRadio")
+	}
+
+	response, err := handler(ctx, request)
+
+	if err != nil {
+		return err
+	} else if validResponse, ok := response.(CreateRadioResponseObject); ok {
+		return validResponse.VisitCreateRadioResponse(ctx.Response())
+	} else if response != nil {
+		return fmt.Errorf("unexpected response type: %T", response)
+	}
+	return nil
+}
+
+// DeleteRadio operation middleware
+func (sh *strictHandler) DeleteRadio(ctx echo.Context, name RegisterName) error {
+	var request DeleteRadioRequestObject
+
+	request.Name = name
+
+	handler := func(ctx echo.Context, request interface{}) (interface{}, error) {
+		return sh.ssi.DeleteRadio(ctx.Request().Context(), request.(DeleteRadioRequestObject))
+	}
+	for _, middleware := range sh.middlewares {
+		handler = middleware(handler, "DeleteRadio")
+	}
+
+	response, err := handler(ctx, request)
+
+	if err != nil {
+		return err
+	} else if validResponse, ok := response.(DeleteRadioResponseObject); ok {
+		return validResponse.VisitDeleteRadioResponse(ctx.Response())
+	} else if response != nil {
+		return fmt.Errorf("unexpected response type: %T", response)
+	}
+	return nil
+}
+
+// GetRadio operation middleware
+func (sh *strictHandler) GetRadio(ctx echo.Context, name RegisterName) error {
+	var request GetRadioRequestObject
+
+	request.Name = name
+
+	handler := func(ctx echo.Context, request interface{}) (interface{}, error) {
+		return sh.ssi.GetRadio(ctx.Request().Context(), request.(GetRadioRequestObject))
+	}
+	for _, middleware := range sh.middlewares {
+		handler = middleware(handler, "GetRadio")
+	}
+
+	response, err := handler(ctx, request)
+
+	if err != nil {
+		return err
+	} else if validResponse, ok := response.(GetRadioResponseObject); ok {
+		return validResponse.VisitGetRadioResponse(ctx.Response())
 	} else if response != nil {
 		return fmt.Errorf("unexpected response type: %T", response)
 	}

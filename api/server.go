@@ -41,6 +41,8 @@ type Dependencies struct {
 	Assessor Assessor
 	Keeper   Keeper
 	Lister   Lister
+	Antennas Register[assess.Antenna]
+	Radios   Register[assess.Radio]
 	Health   *telemetry.Health
 	Metrics  *telemetry.Metrics
 	Log      *slog.Logger

@@ -92,8 +92,15 @@ func (link *Link) check(p *Profile) error {
 		return fmt.Errorf("%w: %d criteria; 1 to %d are judged", ErrLink, len(link.Criteria), maxCriteria)
 	case !(link.Path.LengthM >= MinLengthM && link.Path.LengthM <= MaxLengthM):
 		return fmt.Errorf("%w: path of %g m", ErrLink, link.Path.LengthM)
+	case p.DistanceM[0] != 0 || p.DistanceM[n-1] != link.Path.LengthM:
+		return fmt.Errorf("%w: samples from %g to %g m on a path of %g m", ErrLink, p.DistanceM[0], p.DistanceM[n-1], link.Path.LengthM)
 	case !(link.FrequencyGHz > 0):
 		return fmt.Errorf("%w: frequency of %g GHz", ErrLink, link.FrequencyGHz)
+	}
+	for _, c := range link.Criteria {
+		if !(c.K > 0 && c.F1Fraction >= 0) {
+			return fmt.Errorf("%w: criterion of %g F1 at k %g", ErrLink, c.F1Fraction, c.K)
+		}
 	}
 	return nil
 }

@@ -76,5 +76,10 @@ func (s CriteriaSet) Criteria(lengthM float64) ([]Criterion, error) {
 // path is common practice, no source. The span, not the number of humps,
 // decides, so that a higher antenna can never turn isolated into extended.
 func isolatedSpanM(lengthM float64) float64 {
-	return max(250, lengthM/20)
+	return max(250, lengthM/20) + distanceToleranceM
 }
+
+// distanceToleranceM absorbs floating-point rounding where samples lie exactly
+// a limit apart, as evenly spaced ones often do: without it the path could be
+// judged otherwise from its other end.
+const distanceToleranceM = 1e-6

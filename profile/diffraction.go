@@ -63,6 +63,22 @@ func (g *geometry) diffraction(link *Link, ws *Workspace, out []Diffraction) ([]
 	return out, nil
 }
 
+// MedianDiffractionDB is the diffraction loss of the link over the profile at
+// the median k, whatever its criteria; NaN over a void. The error is ErrLink.
+func MedianDiffractionDB(link *Link, p *Profile, ws *Workspace) (float64, error) {
+	if p.Voids() > 0 {
+		return math.NaN(), nil
+	}
+	g := newGeometry(link, p)
+	median := *link
+	median.Criteria = []Criterion{Flat(MedianK, 0)}
+	loss, err := g.diffraction(&median, ws, nil)
+	if err != nil {
+		return math.NaN(), fmt.Errorf("%w: %w", ErrLink, err)
+	}
+	return loss[0].LossDB, nil
+}
+
 func repeated(earlier []Criterion, k float64) bool {
 	for _, c := range earlier {
 		if c.K == k {

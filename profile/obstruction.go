@@ -31,7 +31,7 @@ func (g *geometry) obstructions(c Clearance, out []Obstruction) []Obstruction {
 			continue
 		}
 		d := g.p.DistanceM[i]
-		if !open || d-out[len(out)-1].ToM > groupGapM {
+		if !open || d-out[len(out)-1].ToM > groupGapM+distanceToleranceM {
 			out = append(out, Obstruction{K: c.K, F1Fraction: c.F1Fraction, FromM: d})
 			open, worst = true, math.Inf(1)
 		}

@@ -1,6 +1,10 @@
 package profile
 
-import "github.com/paulmach/orb"
+import (
+	"math"
+
+	"github.com/paulmach/orb"
+)
 
 // Path is the geodesic between the two ends of a link.
 type Path struct {
@@ -14,6 +18,13 @@ type Path struct {
 	// AzimuthADeg and AzimuthBDeg point from each end to the other: degrees
 	// clockwise from true north, 0 <= azimuth < 360. Meaningful if Located.
 	AzimuthADeg, AzimuthBDeg float64
+}
+
+// Middle is about half way between the ends, for figures that change slowly
+// over the earth, like those of the climate.
+func (p Path) Middle() orb.Point {
+	half := math.Remainder(p.B.Lon()-p.A.Lon(), 360) / 2
+	return orb.Point{math.Remainder(p.A.Lon()+half, 360), (p.A.Lat() + p.B.Lat()) / 2}
 }
 
 // Limits of one path.

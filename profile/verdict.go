@@ -44,10 +44,16 @@ type Reason struct {
 	FromM     float64   // first void sample
 	ToM       float64   // last void sample
 	End       string    // "a" or "b"
+	// Sentence is the detail of a reason that another room gives; empty for
+	// the codes above.
+	Sentence string
 }
 
 // Detail is the reason as a sentence.
 func (r Reason) Detail() string {
+	if r.Sentence != "" {
+		return r.Sentence
+	}
 	c := r.Clearance
 	switch r.Code {
 	case ReasonCriterionMet:

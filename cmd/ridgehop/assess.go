@@ -13,16 +13,18 @@ import (
 
 	"ridgehop/api"
 	"ridgehop/internal/assess"
+	"ridgehop/internal/config"
 	"ridgehop/internal/drawing"
 	"ridgehop/internal/telemetry"
 )
 
 // assessCommand judges one link: the same JSON in and out as the API.
 type assessCommand struct {
-	terrainFlags `embed:""`
-	File         string `arg:"" optional:"" default:"-" help:"The request, as JSON; - is standard input."`
-	SVG          string `help:"Write the profile drawing to this file." name:"svg" placeholder:"FILE"`
-	Samples      bool   `help:"Add the arrays behind the answer."`
+	terrainFlags     `embed:""`
+	config.Equipment `embed:""`
+	File             string `arg:"" optional:"" default:"-" help:"The request, as JSON; - is standard input."`
+	SVG              string `help:"Write the profile drawing to this file." name:"svg" placeholder:"FILE"`
+	Samples          bool   `help:"Add the arrays behind the answer."`
 }
 
 // mostInput bounds what is read as a request.
@@ -42,12 +44,16 @@ func (c *assessCommand) Run(ctx context.Context, s streams) error {
 	if err != nil {
 		return requestError(err)
 	}
+	equipment, err := equip(c.Equipment, nil)
+	if err != nil {
+		return err
+	}
 	loaded, err := loadTerrain(ctx, c.terrainFlags, telemetry.NewLogger(s.err, slog.LevelWarn, false))
 	if err != nil {
 		return err
 	}
 	defer loaded.Close()
-	judged, err := assess.NewService(loaded).Assess(ctx, request.Asked())
+	judged, err := assess.NewService(loaded).WithEquipment(equipment).Assess(ctx, request.Asked())
 	if err != nil {
 		return requestError(err)
 	}
@@ -68,8 +74,7 @@ func (c *assessCommand) read(s streams) ([]byte, error) {
 	in := s.in
 	if c.File != "-" {
 		f, err := os.Open(c.File)
-		var where *fs.PathError
-		if errors.As(err, &where) {
+		if where, ok := errors.AsType[*fs.PathError](err); ok {
 			return nil, inputError{fmt.Errorf("%s: %w", c.File, where.Err)}
 		}
 		if err != nil {

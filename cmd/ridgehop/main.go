@@ -9,6 +9,7 @@ import (
 	"io"
 	"os"
 	"os/signal"
+	"strings"
 	"syscall"
 
 	"github.com/alecthomas/kong"
@@ -62,16 +63,14 @@ func run(ctx context.Context, args []string, s streams) int {
 		kong.Bind(s),
 	)
 	if err != nil {
-		fmt.Fprintln(s.err, "ridgehop:", err)
-		return exitFailed
+		return s.report(err, exitFailed)
 	}
 	parsed, err := parser.Parse(args)
 	if exited >= 0 { // --help was answered
 		return exited
 	}
 	if err != nil {
-		fmt.Fprintln(s.err, "ridgehop:", err)
-		return exitInput
+		return s.report(err, exitInput)
 	}
 	err = parsed.Run()
 	var input inputError
@@ -79,11 +78,16 @@ func run(ctx context.Context, args []string, s streams) int {
 	case err == nil:
 		return exitOK
 	case errors.As(err, &input):
-		fmt.Fprintln(s.err, "ridgehop:", err)
-		return exitInput
+		return s.report(err, exitInput)
 	}
-	fmt.Fprintln(s.err, "ridgehop:", err)
-	return exitFailed
+	return s.report(err, exitFailed)
+}
+
+// report says what went wrong in one line and returns the exit code.
+func (s streams) report(err error, code int) int {
+	// A closed error stream leaves nobody to tell.
+	_, _ = fmt.Fprintln(s.err, "ridgehop:", strings.ReplaceAll(err.Error(), "\n", "; "))
+	return code
 }
 
 // terrainFlags are the flags of every command that reads rasters.

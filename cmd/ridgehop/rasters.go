@@ -1,6 +1,7 @@
 package main
 
 import (
+	"bytes"
 	"context"
 	"encoding/json"
 	"fmt"
@@ -37,15 +38,17 @@ func (c *rastersCommand) Run(ctx context.Context, s streams) error {
 }
 
 func printRasters(s streams, rasters []assess.Raster) error {
-	table := tabwriter.NewWriter(s.out, 0, 4, 2, ' ', 0)
-	fmt.Fprintln(table, "RASTER\tKIND\tPIXEL\tWEST SOUTH EAST NORTH\tCRS\tVERSION")
+	var page bytes.Buffer
+	table := tabwriter.NewWriter(&page, 0, 4, 2, ' ', 0)
+	line := func(format string, args ...any) { _, _ = fmt.Fprintf(table, format, args...) } // a buffer takes all
+	line("RASTER\tKIND\tPIXEL\tWEST SOUTH EAST NORTH\tCRS\tVERSION\n")
 	usable := 0
 	for _, r := range rasters {
 		if r.Problem != "" {
 			continue
 		}
 		usable++
-		fmt.Fprintf(table, "%s\t%s\t%.3g m\t%.4f %.4f %.4f %.4f\t%s\t%s\n", r.Name, r.Kind, r.PixelM,
+		line("%s\t%s\t%.3g m\t%.4f %.4f %.4f %.4f\t%s\t%s\n", r.Name, r.Kind, r.PixelM,
 			r.Bound.Min[0], r.Bound.Min[1], r.Bound.Max[0], r.Bound.Max[1], r.CRS, r.Version)
 	}
 	if err := table.Flush(); err != nil {
@@ -53,9 +56,10 @@ func printRasters(s streams, rasters []assess.Raster) error {
 	}
 	for _, r := range rasters {
 		if r.Problem != "" {
-			fmt.Fprintf(s.out, "not used: %s: %s\n", r.Name, r.Problem)
+			fmt.Fprintf(&page, "not used: %s: %s\n", r.Name, r.Problem)
 		}
 	}
-	_, err := fmt.Fprintf(s.out, "%d usable, %d not\n", usable, len(rasters)-usable)
+	fmt.Fprintf(&page, "%d usable, %d not\n", usable, len(rasters)-usable)
+	_, err := page.WriteTo(s.out)
 	return err
 }

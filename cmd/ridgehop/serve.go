@@ -18,8 +18,9 @@ import (
 
 // serveCommand runs the service until it is told to stop.
 type serveCommand struct {
-	terrainFlags   `embed:""`
-	config.Service `embed:""`
+	terrainFlags     `embed:""`
+	config.Equipment `embed:""`
+	config.Service   `embed:""`
 }
 
 // Validate checks the flags of both groups.
@@ -42,14 +43,19 @@ func (c *serveCommand) Run(ctx context.Context, s streams) error {
 	if err != nil {
 		return fmt.Errorf("--data %s: %w", c.Data, err)
 	}
-	defer kept.Close()
+	defer func() { _ = kept.Close() }()
+	equipment, err := equip(c.Equipment, shelf{kept})
+	if err != nil {
+		return err
+	}
 	contract, err := api.NewContract()
 	if err != nil {
 		return err
 	}
 	health := telemetry.NewHealth(storeCheck(kept), terrainCheck(loaded))
 	handler, err := api.NewHandler(contract, api.Dependencies{
-		Assessor: assess.NewService(loaded), Keeper: kept, Lister: loaded,
+		Assessor: assess.NewService(loaded).WithEquipment(equipment), Keeper: kept, Lister: loaded,
+		Antennas: equipment.Antennas, Radios: equipment.Radios,
 		Health: health, Metrics: telemetry.NewMetrics(), Log: log, MostAtOnce: c.MostAtOnce,
 	})
 	if err != nil {

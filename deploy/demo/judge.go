@@ -1,12 +1,13 @@
 package main
 
 import (
+	"bytes"
 	"context"
 	"fmt"
 	"io"
-	"net/http"
 	"os"
 	"path/filepath"
+	"strings"
 	"text/tabwriter"
 
 	"ridgehop/internal/island"
@@ -21,39 +22,41 @@ func judgeAll(ctx context.Context, c *client, folder string, out io.Writer) erro
 	if err := os.MkdirAll(folder, 0o755); err != nil {
 		return err
 	}
-	fmt.Fprintf(out, "\n%s (invented), three links over 1\" terrain:\n\n", island.Name)
-	table := tabwriter.NewWriter(out, 0, 4, 2, ' ', 0)
-	fmt.Fprintln(table, "LINK\tVERDICT\tLENGTH\tLEAST CLEARANCE\tTO MEET EVERY CRITERION")
-	places := island.Places()
-	var files []string
-	var last answer
-	for _, link := range island.Links() {
-		a, b := places[link.A], places[link.B]
-		got, err := c.judge(ctx, request(link, a, b))
-		if err != nil {
-			return err
-		}
-		fmt.Fprintf(table, "%s to %s\t%s\t%.2f km\t%s\t%s\n", a.Name, b.Name, got.Verdict, got.Path.LengthM/1000, least(got), toRaise(got))
-		picture, err := c.do(ctx, http.MethodGet, got.Links.SVG, nil)
-		if err != nil {
-			return err
-		}
-		file := filepath.Join(folder, link.Shows+".svg")
-		if err := os.WriteFile(file, picture, 0o644); err != nil {
-			return err
-		}
-		files, last = append(files, file), got
-	}
-	if err := table.Flush(); err != nil {
+	page, last, err := judgePage(ctx, c, folder)
+	if err != nil {
 		return err
 	}
-	fmt.Fprintln(out, "\nDrawings:")
-	for _, file := range files {
-		fmt.Fprintln(out, "  "+file)
+	fmt.Fprintf(page, "\nThe last one in full:     curl -s %s%s\n", c.address, last.Links.Self)
+	fmt.Fprintf(page, "The contract as a page:   %s/docs\n", c.address)
+	_, err = page.WriteTo(out)
+	return err
+}
+
+// judgePage is the table with the names of the drawings, and the last answer.
+func judgePage(ctx context.Context, c *client, folder string) (*bytes.Buffer, answer, error) {
+	page, files := &bytes.Buffer{}, &bytes.Buffer{}
+	fmt.Fprintf(page, "\n%s (invented), three links over 1\" terrain:\n\n", island.Name)
+	table := tabwriter.NewWriter(page, 0, 4, 2, ' ', 0)
+	line := func(format string, args ...any) { _, _ = fmt.Fprintf(table, format, args...) } // a buffer takes all
+	line("LINK\tVERDICT\tLENGTH\tLEAST CLEARANCE\tTO MEET EVERY CRITERION\n")
+	places := island.Places()
+	var got answer
+	for _, link := range island.Links() {
+		a, b := places[link.A], places[link.B]
+		var err error
+		if got, err = c.judge(ctx, request(link, a, b)); err != nil {
+			return nil, got, err
+		}
+		line("%s to %s\t%s\t%.2f km\t%s\t%s\n", a.Name, b.Name, got.Verdict, got.Path.LengthM/1000, least(got), toRaise(got))
+		file := filepath.Join(folder, link.Shows+".svg")
+		if err := c.saveDrawing(ctx, got, file); err != nil {
+			return nil, got, err
+		}
+		fmt.Fprintf(files, "  %s\n", file)
 	}
-	fmt.Fprintf(out, "\nThe last one in full:     curl -s %s%s\n", c.address, last.Links.Self)
-	fmt.Fprintf(out, "The contract as a page:   %s/docs\n", c.address)
-	return nil
+	err := table.Flush()
+	fmt.Fprintf(page, "\nDrawings:\n%s", files)
+	return page, got, err
 }
 
 func request(link island.Link, a, b island.Place) map[string]any {
@@ -89,14 +92,14 @@ func toRaise(a answer) string {
 	case *both > anyMast:
 		return "beyond any mast: choose another path"
 	}
-	text := fmt.Sprintf("raise both ends %.1f m", *both)
+	ways := []string{fmt.Sprintf("raise both ends %.1f m", *both)}
 	for _, one := range []struct {
 		end string
 		m   *float64
 	}{{"A", a.Raise.AM}, {"B", a.Raise.BM}} {
 		if one.m != nil && *one.m <= anyMast {
-			text += fmt.Sprintf(", or %s alone %.1f m", one.end, *one.m)
+			ways = append(ways, fmt.Sprintf("%s alone %.1f m", one.end, *one.m))
 		}
 	}
-	return text
+	return strings.Join(ways, ", or ")
 }

@@ -1,6 +1,7 @@
 package assess
 
 import (
+	"bytes"
 	"crypto/sha256"
 	"encoding/base32"
 	"encoding/json"
@@ -13,7 +14,7 @@ import (
 // EngineVersion names the way in which answers are computed. It changes
 // whenever the same question over the same rasters may be answered otherwise,
 // and with it every id.
-const EngineVersion = "1"
+const EngineVersion = "2"
 
 // Assessment is one link judged, with all that an answer or a drawing needs.
 // It never changes.
@@ -26,21 +27,25 @@ type Assessment struct {
 	GroundAM, GroundBM float64
 	Profile            profile.Profile
 	Judgement          profile.Assessment
-	Cautions           []Caution
+	// Radio is the radio half; nil where none was asked for, or no path was
+	// there to send over.
+	Radio    *RadioAnswer
+	Cautions []Caution
 }
 
 // identify computes the id: a hash of the canonical request, the versions of
 // the rasters that it rests on, and the engine's version.
 func (a *Assessment) identify() error {
-	h := sha256.New()
-	if err := json.NewEncoder(h).Encode(a.Request); err != nil {
+	var asked bytes.Buffer
+	if err := json.NewEncoder(&asked).Encode(a.Request); err != nil {
 		return fmt.Errorf("canonical request: %w", err)
 	}
 	for _, s := range a.Profile.Sources {
-		fmt.Fprintf(h, "%s %s\n", s.Name, s.Version)
+		fmt.Fprintf(&asked, "%s %s\n", s.Name, s.Version)
 	}
-	fmt.Fprintf(h, "engine %s\n", a.Engine)
-	digest := base32.StdEncoding.WithPadding(base32.NoPadding).EncodeToString(h.Sum(nil))
+	fmt.Fprintf(&asked, "engine %s\n", a.Engine)
+	sum := sha256.Sum256(asked.Bytes())
+	digest := base32.StdEncoding.WithPadding(base32.NoPadding).EncodeToString(sum[:])
 	a.ID = "as_" + strings.ToLower(digest[:26]) // 130 bits
 	return nil
 }

@@ -13,8 +13,9 @@ import (
 const broughtStepM = 30.0
 
 // broughtProfile fills into with the caller's points, stretched to lengthM,
-// and points between them.
-func broughtProfile(points []Point, lengthM, spacingM float64, into *profile.Profile) error {
+// and points between them. Between the ends every sample counts coverM of cover
+// at least.
+func broughtProfile(points []Point, lengthM, spacingM, coverM float64, into *profile.Profile) error {
 	step := broughtStepM
 	if spacingM > 0 {
 		step = spacingM
@@ -37,6 +38,9 @@ func broughtProfile(points []Point, lengthM, spacingM float64, into *profile.Pro
 		at = between(points[i], points[i+1], stretch, step, into, at)
 	}
 	put(into, at, lengthM, points[last].GroundM, points[last].CoverM)
+	for i := 1; i < at; i++ {
+		into.CoverM[i] = max(into.CoverM[i], coverM)
+	}
 	into.Sources = append(into.Sources, profile.Source{Name: "profile", Version: "as given", Kind: profile.KindProfile, Samples: count})
 	return nil
 }

@@ -26,7 +26,26 @@ func standing() []Caution {
 // says that the uncertainty of obstacle heights counts.
 const obstacleUncertaintyGHz = 13.0
 
-// cautions are those that this link needs, the particular ones first.
+// cautions are those that this link needs, the particular ones first. What
+// the radio half says takes the place of the general sentence of its code.
+func (a *Assessment) cautions() []Caution {
+	out := a.Request.cautions(&a.Profile)
+	said := map[string]bool{}
+	if a.Radio != nil {
+		for _, c := range a.Radio.Report.Cautions {
+			out = append(out, Caution{c.Code, c.Detail})
+			said[c.Code] = true
+		}
+	}
+	for _, c := range standing() {
+		if !said[c.Code] {
+			out = append(out, c)
+		}
+	}
+	return out
+}
+
+// cautions are those that the request and its terrain give rise to.
 func (r Request) cautions(p *profile.Profile) []Caution {
 	var out []Caution
 	add := func(code, format string, args ...any) {
@@ -54,5 +73,5 @@ func (r Request) cautions(p *profile.Profile) []Caution {
 	if len(p.Sources) > 0 && !kinds[profile.KindProfile] {
 		add("vertical_datum", "Heights are used as the rasters state them; sources on different vertical datums are not yet brought to one.")
 	}
-	return append(out, standing()...)
+	return out
 }

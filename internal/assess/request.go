@@ -36,6 +36,8 @@ type Request struct {
 	CoverHeightM float64 `json:"cover_height_m"`
 	// Profile brings the caller's own heights instead of rasters.
 	Profile []Point `json:"profile,omitempty"`
+	// Radio asks whether the link carries traffic; nil judges the path alone.
+	Radio *RadioRequest `json:"radio,omitempty"`
 }
 
 // End is one end of the link.

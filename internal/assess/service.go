@@ -6,18 +6,29 @@ import (
 	"math"
 	"sync"
 
+	"ridgehop/internal/radio"
 	"ridgehop/profile"
 )
 
 // Service judges links over one terrain. It is safe for concurrent use.
 type Service struct {
 	terrain    profile.Terrain
+	equipment  Equipment
+	tools      *radio.Tools
 	workspaces sync.Pool
 }
 
 // NewService makes a Service over the terrain.
 func NewService(terrain profile.Terrain) *Service {
-	return &Service{terrain: terrain, workspaces: sync.Pool{New: func() any { return new(profile.Workspace) }}}
+	return &Service{terrain: terrain, tools: radio.NewTools(), workspaces: sync.Pool{New: func() any { return new(profile.Workspace) }}}
+}
+
+// WithEquipment is the service with what the radio half of its requests may
+// refer to.
+func (s *Service) WithEquipment(e Equipment) *Service {
+	out := NewService(s.terrain)
+	out.equipment = e
+	return out
 }
 
 // Assess judges the link that the request describes. The error is an
@@ -30,7 +41,7 @@ func (s *Service) Assess(ctx context.Context, request Request) (*Assessment, err
 	if err := s.judge(ctx, request, a, ws); err != nil {
 		return nil, err
 	}
-	a.Cautions = a.Request.cautions(&a.Profile)
+	a.Cautions = a.cautions()
 	return a, a.identify()
 }
 
@@ -48,15 +59,17 @@ func (s *Service) judge(ctx context.Context, request Request, a *Assessment, ws 
 	if err := a.place(path); err != nil {
 		return err
 	}
-	a.Judgement, err = profile.Assess(&a.Link, &a.Profile, ws)
-	return err
+	if a.Judgement, err = profile.Assess(&a.Link, &a.Profile, ws); err != nil || a.Request.Radio == nil {
+		return err
+	}
+	return s.judgeRadio(ctx, a, ws)
 }
 
 // sample fills the profile from the caller's points or from the terrain.
 func (s *Service) sample(ctx context.Context, path profile.Path, a *Assessment) error {
 	r := &a.Request
 	if len(r.Profile) > 0 {
-		return broughtProfile(r.Profile, path.LengthM, r.SpacingM, &a.Profile)
+		return broughtProfile(r.Profile, path.LengthM, r.SpacingM, r.CoverHeightM, &a.Profile)
 	}
 	err := s.terrain.Sample(ctx, path, profile.Sampling{SpacingM: r.SpacingM, Rasters: r.Rasters}, &a.Profile)
 	switch {

@@ -54,10 +54,9 @@ func (r Request) validate(f *findings) {
 	r.A.validate(f, "/a", len(r.Profile) > 0)
 	r.B.validate(f, "/b", len(r.Profile) > 0)
 	f.within("/frequency_ghz", r.FrequencyGHz, MinFrequencyGHz, MaxFrequencyGHz, " GHz")
-	switch r.Polarisation {
-	case profile.Vertical, profile.Horizontal, profile.Slant:
-	default:
-		f.add("/polarisation", "is %q; it must be vertical, horizontal or slant", r.Polarisation)
+	checkPolarisation(f, "/polarisation", r.Polarisation)
+	if r.Radio != nil {
+		r.Radio.validate(f)
 	}
 	r.validateCriteria(f)
 	if r.SpacingM != 0 {
@@ -75,12 +74,7 @@ func (e End) validate(f *findings, pointer string, brought bool) {
 	case !brought:
 		f.add(pointer+"/lon", "is missing: give lon and lat, or bring a profile")
 	}
-	if n := len([]rune(e.Name)); n > MaxNameRunes {
-		f.add(pointer+"/name", "has %d characters; at most %d are kept", n, MaxNameRunes)
-	}
-	if strings.ContainsFunc(e.Name, func(r rune) bool { return r < ' ' || r == 0x7f || r == 0xfffd || r == 0xfffe || r == 0xffff }) {
-		f.add(pointer+"/name", "holds control characters; plain text is kept")
-	}
+	checkName(f, pointer+"/name", e.Name)
 	height := pointer + "/antenna_height_m"
 	switch e.HeightAbove {
 	case AboveGround, AboveRoof:
@@ -89,6 +83,25 @@ func (e End) validate(f *findings, pointer string, brought bool) {
 		f.within(height, e.AntennaHeightM, minGroundM, MaxSeaLevelM, " m above sea level")
 	default:
 		f.add(pointer+"/height_above", "is %q; it must be ground, roof or sea_level", e.HeightAbove)
+	}
+}
+
+// checkName wants a name that a drawing can show.
+func checkName(f *findings, pointer, name string) {
+	if n := len([]rune(name)); n > MaxNameRunes {
+		f.add(pointer, "has %d characters; at most %d are kept", n, MaxNameRunes)
+	}
+	if strings.ContainsFunc(name, func(r rune) bool { return r < ' ' || r == 0x7f || r == 0xfffd || r == 0xfffe || r == 0xffff }) {
+		f.add(pointer, "holds control characters; plain text is kept")
+	}
+}
+
+// checkPolarisation wants a polarisation, or none.
+func checkPolarisation(f *findings, pointer string, p Polarisation) {
+	switch p {
+	case "", profile.Vertical, profile.Horizontal, profile.Slant:
+	default:
+		f.add(pointer, "is %q; it must be vertical, horizontal or slant", p)
 	}
 }
 

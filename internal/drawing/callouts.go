@@ -25,8 +25,7 @@ type callout struct {
 // callouts marks the worst obstructions, or else the tightest place, each in a
 // box in the row at top with a leader to the place, and all the obstructed
 // stretches along the bottom.
-func (s *sheet) callouts(top float64) {
-	chosen := s.chooseCallouts()
+func (s *sheet) callouts(chosen []callout, top float64) {
 	for i := range chosen {
 		chosen[i].centre = s.view.x(chosen[i].atM)
 	}
@@ -45,7 +44,7 @@ func (s *sheet) chooseCallouts() []callout {
 	for _, o := range grouped(s.a.Judgement.Obstructions) {
 		all = append(all, newCallout(callout{
 			atM: o.PeakAtM, topM: o.TopM, k: o.K, severity: o.ShortM, alarming: true,
-			first: distance(o.PeakAtM) + ", " + kFactor(o.K), then: atLeastM(o.ShortM) + " short",
+			first: s.placeAt(o.PeakAtM, o.K), then: atLeastM(o.ShortM) + " short",
 		}))
 	}
 	slices.SortStableFunc(all, func(p, q callout) int { return cmp.Compare(q.severity, p.severity) })
@@ -61,8 +60,16 @@ func (s *sheet) chooseCallouts() []callout {
 	i := s.sampleAt(c.AtM)
 	return []callout{newCallout(callout{
 		atM: c.AtM, topM: s.view.top[i] - s.view.bulge(c.AtM), k: c.K,
-		first: "tightest: " + distance(c.AtM), then: atMostM(c.ClearanceM) + " free",
+		first: "tightest: " + s.placeAt(c.AtM, c.K), then: atMostM(c.ClearanceM) + ", " + ratio(c.MinRatio) + " free",
 	})}
+}
+
+// placeAt names a distance, and the k-factor unless it is the one drawn.
+func (s *sheet) placeAt(d, k float64) string {
+	if k == s.view.drawn.K {
+		return distance(d)
+	}
+	return distance(d) + ", " + kFactor(k)
 }
 
 func newCallout(f callout) callout {
@@ -91,11 +98,9 @@ func fitting(callouts []callout, room float64) []callout {
 // grouped keeps, of obstructions that overlap because several criteria meet
 // them, the one that misses most.
 func grouped(all []profile.Obstruction) []profile.Obstruction {
-	sorted := slices.Clone(all)
-	slices.SortStableFunc(sorted, func(p, q profile.Obstruction) int { return cmp.Compare(p.FromM, q.FromM) })
 	var out []profile.Obstruction
 	end := math.Inf(-1)
-	for _, o := range sorted {
+	for _, o := range byBeginning(all) {
 		if o.FromM > end {
 			out, end = append(out, o), o.ToM
 			continue
@@ -106,6 +111,11 @@ func grouped(all []profile.Obstruction) []profile.Obstruction {
 		}
 	}
 	return out
+}
+
+// byBeginning sorts obstructions along the path.
+func byBeginning(all []profile.Obstruction) []profile.Obstruction {
+	return slices.SortedStableFunc(slices.Values(all), func(p, q profile.Obstruction) int { return cmp.Compare(p.FromM, q.FromM) })
 }
 
 // sampleAt is the sample at a distance that is one of the profile's.

@@ -2,6 +2,7 @@ package drawing
 
 import (
 	"math"
+	"strings"
 
 	"ridgehop/internal/assess"
 	"ridgehop/profile"
@@ -17,27 +18,47 @@ type row struct {
 // where it points.
 func (s *sheet) cards() {
 	const width, gap = 448.0, 24.0
-	s.heading("The two ends", "")
-	top := s.y + 8
-	bottom := top
+	s.y += blockGap - 2
+	s.line(marginLeft, s.y, marginRight, s.y, `stroke="`+ink+`" stroke-width="2"`)
+	top := s.y + 14
+	bottom, lines := top, 1
+	for _, e := range s.bothEnds() {
+		lines = max(lines, len(cardName(e, width)))
+	}
 	for i, e := range s.bothEnds() {
 		s.group("End "+e.letter, func() {
-			bottom = max(bottom, s.card(marginLeft+float64(i)*(width+gap), top, width, e))
+			bottom = max(bottom, s.card(marginLeft+float64(i)*(width+gap), top, width, e, lines))
 		})
 	}
 	s.line(marginLeft+width+gap/2, top+8, marginLeft+width+gap/2, bottom, `stroke="`+faint+`" stroke-width="1.5"`)
 	s.y = bottom
 }
 
-// card draws one end and returns the y of its bottom.
-func (s *sheet) card(x, y, width float64, e end) float64 {
-	const leading = 38.0
-	nameFace := face{size: 28, bold: true}
-	s.badge(x+20, y+26, 20, e.letter)
-	s.name(x+52, y+36, nameFace, endName(e.request, e.letter), width-52)
-	y += 74
-	s.text(x, y, face{size: 25}, coordinates(e.request))
-	y += 8
+const cardNameSize = 26.0
+
+// cardName is the end's name in one line or two.
+func cardName(e end, width float64) []string {
+	f := face{size: cardNameSize, bold: true}
+	lines := wrap(endName(e.request, e.letter), f, width-52)
+	if len(lines) > 2 {
+		lines = []string{lines[0], shorten(strings.Join(lines[1:], " "), f, width-52)}
+	}
+	return lines
+}
+
+// card draws one end, its name in so many lines, and returns the y of its
+// bottom.
+func (s *sheet) card(x, y, width float64, e end, lines int) float64 {
+	const leading = 36.0
+	s.badge(x+20, y+22, 20, e.letter)
+	s.raw("<g><title>")
+	s.escaped(endName(e.request, e.letter))
+	s.raw("</title>\n")
+	s.lines(x+52, y+31, 31, face{size: cardNameSize, bold: true}, cardName(e, width))
+	s.raw("</g>\n")
+	y += 38 + 31*float64(lines)
+	s.text(x, y, face{size: 26}, coordinates(e.request))
+	y += 6
 	for _, r := range s.rows(e) {
 		y += leading
 		f := face{size: 26, anchor: atEnd, bold: r.strong}
@@ -65,15 +86,18 @@ func (s *sheet) rows(e end) []row {
 	if path.Located {
 		aim = azimuth(direction)
 	}
-	rows := make([]row, 0, 6)
+	rows := make([]row, 0, 7)
 	if e.request.HeightAbove == assess.AboveRoof {
 		rows = append(rows, row{"antenna above roof", metres(e.request.AntennaHeightM), true})
 	}
 	if e.request.HeightAbove != assess.AboveRoof || s.kindAt(e.sample) == profile.KindProfile {
-		rows = append(rows, row{"antenna above ground", metres(e.amslM - e.groundM), e.request.HeightAbove != assess.AboveRoof})
+		rows = append(rows, row{"antenna above ground", metres(e.aboveGroundM()), e.request.HeightAbove != assess.AboveRoof})
+	}
+	rows = append(rows, row{"azimuth from true north", aim, true})
+	if magnetic := s.magneticAzimuth(e.letter); !math.IsNaN(magnetic) {
+		rows = append(rows, row{"azimuth, magnetic", azimuth(magnetic), true})
 	}
 	return append(rows,
-		row{"azimuth from true north", aim, true},
 		row{"tilt", tilt(elevation), true},
 		row{"antenna above sea level", metres(e.amslM), false},
 		row{s.groundLabel(e), metres(e.groundM), false})

@@ -6,6 +6,7 @@ import (
 	"testing"
 
 	"ridgehop/internal/assess"
+	"ridgehop/internal/radio"
 	"ridgehop/profile"
 )
 
@@ -66,6 +67,7 @@ type drawingCase struct {
 	name    string
 	terrain hills
 	request assess.Request
+	change  func(*assess.Assessment) // nil for none
 }
 
 func (c drawingCase) assessment(t testing.TB) *assess.Assessment {
@@ -74,53 +76,110 @@ func (c drawingCase) assessment(t testing.TB) *assess.Assessment {
 	if err != nil {
 		t.Fatalf("%s: %v", c.name, err)
 	}
+	if c.change != nil {
+		c.change(a)
+	}
 	return a
 }
 
-// cases are the goldens.
-func cases() []drawingCase {
-	tenKM := assess.Request{
-		A: placed("Kirk Hill farm, water tank", -4.61234, 57.10321, 22), B: placed("School, north gable", -4.48012, 57.15987, 18),
+// tenKM is a request over rolling hills.
+func tenKM(change func(*assess.Request)) assess.Request {
+	r := assess.Request{
+		A:            placed("Kirk Hill farm, water tank", -4.61234, 57.10321, 22),
+		B:            placed("School, north gable", -4.48012, 57.15987, 18),
 		FrequencyGHz: 5.8,
 	}
-	with := func(r assess.Request, change func(*assess.Request)) assess.Request {
+	if change != nil {
 		change(&r)
-		return r
 	}
+	return r
+}
+
+// rollingBut is bare rolling ground with something on top, NaN for a void.
+func rollingBut(more func(share float64) float64) hills {
+	return hills{30, func(share float64) float64 { return rolling(share) + more(share) }, oneRaster(profile.KindGround)}
+}
+
+func nothingMore(float64) float64 { return 0 }
+
+// cases are the goldens.
+func cases() []drawingCase {
 	return []drawingCase{
-		{"clear", hills{30, rolling, oneRaster(profile.KindGround)}, tenKM},
-		{"marginal", hills{30, func(s float64) float64 { return rolling(s) + ridge(s, 0.42, 0.03, 128) },
-			oneRaster(profile.KindSurface)}, with(tenKM, func(r *assess.Request) { r.CriteriaSet = profile.F160; r.A.HeightAbove = assess.AboveRoof })},
-		{"obstructed", hills{30, func(s float64) float64 {
-			return rolling(s) + ridge(s, 0.31, 0.04, 165) + ridge(s, 0.52, 0.01, 150) + ridge(s, 0.7, 0.02, 110) + ridge(s, 0.79, 0.012, 90) + ridge(s, 0.85, 0.006, 60)
-		}, oneRaster(profile.KindGround)}, with(tenKM, func(r *assess.Request) { r.CoverHeightM = 12 })},
-		{"out_of_reach", hills{90, func(s float64) float64 { return rolling(s) + ridge(s, 0.5, 0.1, 900) }, oneRaster(profile.KindUnstated)},
-			with(tenKM, func(r *assess.Request) { r.FrequencyGHz = 23; r.Polarisation = profile.Horizontal })},
-		{"unknown_void", hills{30, func(s float64) float64 {
-			if (s > 0.38 && s < 0.5) || (s > 0.61 && s < 0.614) {
-				return math.NaN()
-			}
-			return rolling(s)
-		}, oneRaster(profile.KindGround)}, tenKM},
-		{"unknown_end", hills{30, func(s float64) float64 {
-			if s > 0.9 {
-				return math.NaN()
-			}
-			return rolling(s)
-		}, oneRaster(profile.KindGround)}, tenKM},
-		{"brought", hills{}, broughtRequest()},
-		{"long", hills{9.2, func(s float64) float64 {
-			return 420 + 260*math.Sin(5*s+0.4) + 60*math.Sin(41*s) + 25*math.Sin(203*s) + 9*math.Sin(1311*s)
-		}, append(oneRaster(profile.KindUnstated), profile.Source{Name: "mainland_bare_earth_2m.tif", Version: "b81e00c29fa4", Kind: profile.KindGround})},
-			with(tenKM, func(r *assess.Request) {
-				r.A, r.B = placed("Ben Laoghal, upper shelter", -4.4, 58.4, 40), placed("Càrn Mòr", -2.1, 57.4, 30)
-				r.FrequencyGHz = 0.45
-			})},
-		{"hostile", hills{30, rolling, oneRaster(profile.KindGround)}, with(tenKM, func(r *assess.Request) {
-			r.A.Name = `"><script>alert('x')</script> & <b onclick="x()">roof</b> ` + "🗼👨‍👩‍👧"
+		{name: "clear", terrain: rollingBut(nothingMore), request: tenKM(func(r *assess.Request) { r.B.AntennaHeightM = 26 })},
+		{
+			name:    "marginal",
+			terrain: rollingBut(func(s float64) float64 { return ridge(s, 0.42, 0.03, 176) }),
+			request: tenKM(func(r *assess.Request) { r.CriteriaSet = profile.F160 }),
+		},
+		{
+			name: "obstructed",
+			terrain: rollingBut(func(s float64) float64 {
+				return ridge(s, 0.31, 0.04, 165) + ridge(s, 0.52, 0.01, 150) + ridge(s, 0.7, 0.02, 110) +
+					ridge(s, 0.79, 0.012, 90) + ridge(s, 0.85, 0.006, 60)
+			}),
+			request: tenKM(func(r *assess.Request) { r.CoverHeightM = 12 }),
+		},
+		{
+			name:    "out_of_reach",
+			terrain: hills{90, func(s float64) float64 { return rolling(s) + ridge(s, 0.5, 0.1, 900) }, oneRaster(profile.KindUnstated)},
+			request: tenKM(func(r *assess.Request) { r.FrequencyGHz, r.Polarisation = 23, profile.Horizontal }),
+		},
+		{
+			name:    "unknown_void",
+			terrain: rollingBut(func(s float64) float64 { return void((s > 0.38 && s < 0.5) || (s > 0.61 && s < 0.614)) }),
+			request: tenKM(nil),
+		},
+		{
+			name:    "unknown_end",
+			terrain: rollingBut(func(s float64) float64 { return void(s > 0.9) }),
+			request: tenKM(nil),
+		},
+		{name: "brought", request: broughtRequest()},
+		{name: "long", terrain: longHills(), request: tenKM(func(r *assess.Request) {
+			r.A, r.B = placed("Ben Laoghal, upper shelter", -4.4, 58.4, 40), placed("Càrn Mòr", -2.1, 57.4, 30)
+			r.FrequencyGHz = 0.45
+		})},
+		{name: "hostile", terrain: rollingBut(nothingMore), request: tenKM(func(r *assess.Request) {
+			r.A.Name = `🗼👨‍👩‍👧 "><script>alert('x')</script> & <b onclick="x()">roof</b> `
 			r.B.Name = "برج الإرسال الشمالي على سطح المدرسة القديمة بجانب خزان المياه"
 		})},
+		{
+			name:    "radio",
+			terrain: hills{30, rolling, oneRaster(profile.KindSurface)},
+			request: tenKM(func(r *assess.Request) { r.A.HeightAbove = assess.AboveRoof }),
+			change:  withRadio,
+		},
 	}
+}
+
+func void(is bool) float64 {
+	if is {
+		return math.NaN()
+	}
+	return 0
+}
+
+func longHills() hills {
+	return hills{9.2, func(s float64) float64 {
+		return 420 + 260*math.Sin(5*s+0.4) + 60*math.Sin(41*s) + 25*math.Sin(203*s) + 9*math.Sin(1311*s)
+	}, append(oneRaster(profile.KindUnstated),
+		profile.Source{Name: "mainland_bare_earth_2m.tif", Version: "b81e00c29fa4", Kind: profile.KindGround})}
+}
+
+// withRadio puts a radio half of round figures on an assessment.
+func withRadio(a *assess.Assessment) {
+	a.Request.Radio = &assess.RadioRequest{
+		A: assess.TerminalRequest{
+			Radio: &assess.Radio{Name: "Access point, 5 GHz"}, Antenna: &assess.Antenna{Name: "Dish, 0.6 m"}, Polarisation: "vertical"},
+		B:      assess.TerminalRequest{Radio: &assess.Radio{Name: "Client, 5 GHz"}, Polarisation: "vertical"},
+		Target: assess.Target{CapacityMbps: 50, MarginDB: 10, AvailabilityPercent: 99.99},
+	}
+	a.Radio = &assess.RadioAnswer{Report: radio.Report{
+		Reasons: []radio.Statement{{Code: "margin_short", Detail: "From B to A the fade margin is 7.4 dB; 10.0 dB are asked for."}},
+		AToB:    radio.Budget{ReceivedDBM: -58.25, EIRPDBM: 36, Target: "16-QAM 3/4", TargetMarginDB: 13.75},
+		BToA:    radio.Budget{ReceivedDBM: math.NaN(), EIRPDBM: 29.5, TargetMarginDB: 7.4},
+		Aim:     radio.Aim{A: radio.EndAim{MagneticAzimuthDeg: 53.04}, B: radio.EndAim{MagneticAzimuthDeg: math.NaN()}},
+	}}
 }
 
 func broughtRequest() assess.Request {

@@ -9,10 +9,10 @@ import (
 // Columns of the criteria: where each begins.
 const (
 	columnK        = marginLeft
-	columnRequired = 150.0
-	columnLeast    = 390.0
-	columnWhere    = 645.0
-	columnResult   = 822.0
+	columnRequired = 128.0
+	columnLeast    = 364.0
+	columnWhere    = 634.0
+	columnResult   = 814.0
 )
 
 // criteria draws a line for each criterion.
@@ -38,8 +38,8 @@ func (s *sheet) criteria() {
 }
 
 func (s *sheet) criterion(c profile.Clearance) {
-	f := face{size: 23}
-	s.text(columnK, s.y, f, kFactor(c.K)[len("k "):])
+	f := face{size: 22}
+	s.text(columnK, s.y, f, kFigure(c.K))
 	required, found, where := fraction(c.F1Fraction), ratio(c.MinRatio), unknownWord
 	if !math.IsNaN(c.MinRatio) {
 		required += " = " + metres(c.F1Fraction*c.F1M)
@@ -54,7 +54,7 @@ func (s *sheet) criterion(c profile.Clearance) {
 
 // result is the outcome in a word; a missed criterion stands in a dark box.
 func (s *sheet) result(c profile.Clearance) {
-	f := face{size: 23, bold: true}
+	f := face{size: 22, bold: true}
 	word := resultWord(c)
 	if word == "missed" {
 		s.rect(columnResult-10, s.y-24, marginRight-columnResult+10, 32, `fill="`+alarm+`"`)
@@ -67,7 +67,7 @@ func resultWord(c profile.Clearance) string {
 	switch {
 	case c.Met:
 		return "met"
-	case c.MinRatio < c.F1Fraction:
+	case missed(c):
 		return "missed"
 	}
 	return "not judged"
@@ -87,7 +87,7 @@ func (s *sheet) criteriaNotes() {
 
 // diffraction is the loss at each k, where the path is not free of it.
 func (s *sheet) diffraction() string {
-	words := ""
+	words, some := "", false
 	for _, d := range s.a.Judgement.Diffraction {
 		if math.IsNaN(d.LossDB) {
 			return "Diffraction loss is not known over missing data."
@@ -95,10 +95,14 @@ func (s *sheet) diffraction() string {
 		if words != "" {
 			words += ", "
 		}
-		words += fixed(d.LossDB, 1) + " dB at " + kFactor(d.K)
+		some = some || d.LossDB >= 0.05
+		words += fixed(d.LossDB, 1) + nbsp + "dB at " + kFactor(d.K)
 	}
-	if words == "" {
+	switch {
+	case words == "":
 		return ""
+	case !some:
+		return "No diffraction loss (ITU-R P.526, delta-Bullington)."
 	}
 	return "Diffraction loss " + words + " (ITU-R P.526, delta-Bullington)."
 }

@@ -65,9 +65,9 @@ func raiseSentence(a *assess.Assessment) string {
 	case raiseUnknown:
 		return "What to raise is not known."
 	case raiseOutOfReach:
-		return "Every raise that would do is over 200 m: choose another path."
+		return outOfReach(r)
 	case raiseByFigures:
 	}
-	return "To meet every criterion raise A alone by " + raiseWords(r.AM) + ", or B alone by " + raiseWords(r.BM) +
-		", or both by " + raiseWords(r.BothM) + " each."
+	return "To meet every criterion raise A alone by " + raiseWords(r.AM, reach(r)) + ", or B alone by " + raiseWords(r.BM, reach(r)) +
+		", or both by " + raiseWords(r.BothM, reach(r)) + " each."
 }

@@ -3,6 +3,7 @@ package drawing
 import (
 	"strings"
 	"unicode"
+	"unicode/utf8"
 )
 
 // textWidth estimates how wide s is drawn, after the widest of the common sans
@@ -25,8 +26,8 @@ func runeWidth(r rune) float64 {
 		return letterWidth(r)
 	case r >= '0' && r <= '9', r == '+', r == '=':
 		return 0.64
-	case r == 'I' || r == 'J' || strings.ContainsRune(" .,:;'|!()[]-/\"", r):
-		return 0.37
+	case r == 'I' || r == 'J' || strings.ContainsRune(" \u00a0.,:;'|!()[]-/\"", r):
+		return 0.36
 	case strings.ContainsRune("mwMW%@", r):
 		return 0.98
 	case unicode.IsUpper(r):
@@ -61,6 +62,8 @@ func attached(r rune) bool {
 const (
 	ellipsis = "…"
 	joiner   = '\u200d' // holds two pictures together
+	// rightMark keeps the ellipsis of a right-to-left name at its end, the left.
+	rightMark = "\u200f"
 )
 
 // shorten cuts s to the room and marks the cut with an ellipsis. It cuts
@@ -81,7 +84,16 @@ func shorten(s string, f face, room float64) string {
 		}
 		previous = r
 	}
-	return strings.TrimRight(s[:cut], " ") + ellipsis
+	kept := strings.TrimRight(s[:cut], " ")
+	if last, _ := utf8.DecodeLastRuneInString(kept); rightToLeft(last) {
+		return kept + ellipsis + rightMark
+	}
+	return kept + ellipsis
+}
+
+// rightToLeft says that r belongs to a script written from right to left.
+func rightToLeft(r rune) bool {
+	return (r >= 0x590 && r <= 0x8ff) || (r >= 0xfb1d && r <= 0xfdff) || (r >= 0xfe70 && r <= 0xfefc)
 }
 
 // wrap breaks s into lines no wider than room, at spaces.
@@ -89,7 +101,10 @@ func wrap(s string, f face, room float64) []string {
 	var lines []string
 	line, width := "", 0.0
 	space := textWidth(" ", f)
-	for word := range strings.FieldsSeq(s) {
+	for word := range strings.SplitSeq(s, " ") {
+		if word == "" {
+			continue
+		}
 		word = shorten(word, f, room)
 		wide := textWidth(word, f)
 		if line != "" && width+space+wide <= room {

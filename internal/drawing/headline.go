@@ -8,28 +8,49 @@ import (
 	"ridgehop/profile"
 )
 
-// headline is the verdict in a plain sentence or two.
+// headline is the verdict in a plain sentence or two: the path's half, then
+// the radio's.
 func headline(a *assess.Assessment) string {
-	j := &a.Judgement
-	worst := tightest(j.Clearance)
-	switch j.Verdict {
-	case profile.Clear:
-		return "Every criterion is met. The tightest place, " + place(worst.AtM) + ", keeps " + ratio(worst.MinRatio) +
-			" free; " + fraction(worst.F1Fraction) + " is required."
-	case profile.Marginal:
-		if shortM(worst) > 0 {
-			return "The line is open, but " + atLeastM(shortM(worst)) + " short of " + fraction(worst.F1Fraction) + ", " +
-				place(worst.AtM) + " (" + kFactor(worst.K) + "). The radio's margin decides."
-		}
-	case profile.Obstructed:
-		if worst = deepest(j.Clearance); worst.ClearanceM < 0 {
-			return "Ground or cover stands " + atLeastM(-worst.ClearanceM) + " above the line, " + place(worst.AtM) +
-				" (" + kFactor(worst.K) + ")." + voidRemark(a)
-		}
-	case profile.Unknown:
+	if a.Judgement.Verdict == profile.Unknown {
 		return "Cannot be judged: " + unknownCause(a)
 	}
-	return reasons(a)
+	words := pathWords(a.Judgement.Clearance)
+	if words == "" {
+		return reasons(a)
+	}
+	return words + voidRemark(a) + radioRemark(a)
+}
+
+// pathWords says how the line and what must be kept free under it fare; empty
+// if nothing is known of it.
+func pathWords(all []profile.Clearance) string {
+	worst := tightest(all)
+	switch c := cut(all); {
+	case c.ClearanceM < 0:
+		return "Ground or cover stands " + atLeastM(-c.ClearanceM) + " above the line, " + place(c.AtM) + " (" + kFactor(c.K) + ")."
+	case missed(worst):
+		return "Open, but " + atLeastM(shortM(worst)) + " short of " + fraction(worst.F1Fraction) + ", " + place(worst.AtM) +
+			" (" + kFactor(worst.K) + ")."
+	case math.IsNaN(worst.MinRatio):
+		return ""
+	}
+	return "All criteria met. Tightest " + place(worst.AtM) + ": " + ratio(worst.MinRatio) + " free, " +
+		fraction(worst.F1Fraction) + " required (" + kFactor(worst.K) + ")."
+}
+
+// radioRemark says what the radio makes of it, or that it has the last word.
+func radioRemark(a *assess.Assessment) string {
+	switch {
+	case a.Radio == nil && a.Judgement.Verdict == profile.Marginal:
+		return " The radio's margin decides."
+	case a.Radio == nil:
+		return ""
+	case !a.Radio.Report.Meets:
+		return " The radio misses its target."
+	case missed(tightest(a.Judgement.Clearance)):
+		return " The radio meets its target all the same."
+	}
+	return " The radio meets its target."
 }
 
 // unknownCause says what keeps the path from being judged, and what is known
@@ -44,7 +65,7 @@ func unknownCause(a *assess.Assessment) string {
 		return "no ground height at end A."
 	case noB:
 		return "no ground height at end B."
-	case shortM(worst) > 0:
+	case missed(worst):
 		return strings.TrimSpace(voidRemark(a)) + " What is known is " + atLeastM(shortM(worst)) + " short of " +
 			fraction(worst.F1Fraction) + "."
 	case a.Judgement.VoidShare > 0:
@@ -71,6 +92,9 @@ func reasons(a *assess.Assessment) string {
 	return strings.Join(details, " ")
 }
 
+// missed says that what is known misses the requirement.
+func missed(c profile.Clearance) bool { return !c.Met && c.MinRatio < c.F1Fraction }
+
 // shortM is how much clearance is missing at the least of c; NaN if nothing
 // is known.
 func shortM(c profile.Clearance) float64 { return c.F1Fraction*c.F1M - c.ClearanceM }
@@ -81,8 +105,12 @@ func tightest(all []profile.Clearance) profile.Clearance {
 	return least(all, func(c profile.Clearance) float64 { return c.MinRatio - c.F1Fraction })
 }
 
-// deepest is the clearance where most stands above the line.
-func deepest(all []profile.Clearance) profile.Clearance {
+// cut is the clearance that the drawing shows if the line is cut there, or
+// else the one where most stands above the line.
+func cut(all []profile.Clearance) profile.Clearance {
+	if drawn := all[drawnIndex(all)]; drawn.ClearanceM < 0 {
+		return drawn
+	}
 	return least(all, func(c profile.Clearance) float64 { return c.ClearanceM })
 }
 

@@ -17,7 +17,11 @@ func (s *sheet) callout(f callout, top float64) {
 // leader joins a box to its place, where a ring marks it.
 func (s *sheet) leader(f callout, boxBottom float64) {
 	v := &s.view
-	x, y := v.x(f.atM), v.y(f.topM+v.bulgeAt(f.atM, f.k))
+	k := v.drawn.K
+	if f.k == v.second.K {
+		k = f.k // its ground is drawn too
+	}
+	x, y := v.x(f.atM), v.y(f.topM+v.bulgeAt(f.atM, k))
 	colour := ink
 	if f.alarming {
 		colour = alarm
@@ -32,7 +36,7 @@ func (s *sheet) stretches() {
 	v := &s.view
 	const least = 5.0
 	var spans []span
-	for _, o := range grouped(s.a.Judgement.Obstructions) {
+	for _, o := range byBeginning(s.a.Judgement.Obstructions) {
 		from, to := v.x(o.FromM), v.x(o.ToM)
 		if lack := least - (to - from); lack > 0 {
 			from, to = from-lack/2, to+lack/2
@@ -45,9 +49,9 @@ func (s *sheet) stretches() {
 }
 
 // moreCallouts says how many obstructions are not named.
-func (s *sheet) moreCallouts() string {
+func (s *sheet) moreCallouts(chosen []callout) string {
 	named, all := 0, len(grouped(s.a.Judgement.Obstructions))
-	for _, f := range s.chooseCallouts() {
+	for _, f := range chosen {
 		if f.alarming {
 			named++
 		}

@@ -22,10 +22,11 @@ func (s *sheet) bothEnds() [2]end {
 	}
 }
 
-// aboveGround is the height above ground of the antenna of end 0 or 1; NaN if
-// not known.
-func (s *sheet) aboveGround(which int) float64 {
-	e := s.bothEnds()[which]
+// aboveGroundM is the height of the antenna above ground; NaN if not known.
+func (e end) aboveGroundM() float64 {
+	if e.request.HeightAbove == assess.AboveGround {
+		return e.request.AntennaHeightM
+	}
 	return e.amslM - e.groundM
 }
 
@@ -43,10 +44,9 @@ func (s *sheet) masts(top float64) {
 			foot = v.y(e.amslM)
 			s.mast(x, e)
 		}
-		s.line(x, top+22, x, foot, `stroke="`+quiet+`" stroke-width="1.5" stroke-dasharray="1 5" stroke-linecap="round"`)
-		s.badge(x, top+16, 20, e.letter)
-		s.text(x+aside, top+12, face{size: 22, bold: true, anchor: anchor}, aboveWords(e))
-		s.text(x+aside, top+40, face{size: 22, fill: quiet, anchor: anchor}, amslWords(e.amslM))
+		s.line(x, top+38, x, foot, `stroke="`+quiet+`" stroke-width="1.5" stroke-dasharray="1 5" stroke-linecap="round"`)
+		s.badge(x, top+18, 20, e.letter)
+		s.text(x+aside, top+26, face{size: 23, bold: true, anchor: anchor}, aboveWords(e))
 	}
 }
 
@@ -69,15 +69,8 @@ func aboveWords(e end) string {
 	switch {
 	case e.request.HeightAbove == assess.AboveRoof:
 		return metres(e.request.AntennaHeightM) + " above roof"
-	case math.IsNaN(e.groundM):
-		return "no ground height"
+	case math.IsNaN(e.aboveGroundM()):
+		return metres(e.amslM) + " above sea level"
 	}
-	return metres(e.amslM-e.groundM) + " above ground"
-}
-
-func amslWords(amslM float64) string {
-	if math.IsNaN(amslM) {
-		return "height above sea not known"
-	}
-	return metres(amslM) + " above sea level"
+	return metres(e.aboveGroundM()) + " above ground"
 }

@@ -4,31 +4,37 @@ import "math"
 
 // The panel's measures.
 const (
-	plotLeft     = 128.0
-	plotRight    = 942.0
-	plotHeight   = 340.0
-	labelsTall   = 76.0 // the row of the masts' labels
-	calloutsTall = 84.0 // the row of the callouts and their leaders' room
+	plotLeft     = 134.0
+	plotRight    = 940.0
+	plotHeight   = 306.0
+	labelsTall   = 54.0 // the row of the masts' labels
+	calloutsTall = 80.0 // the row of the callouts and their leaders' room
 )
 
 // panel draws the profile, the strip of clearances under it, and the legend.
 func (s *sheet) panel() {
-	top := s.y + 26
-	s.view.plot = box{plotLeft, plotRight, top + labelsTall + calloutsTall, top + labelsTall + calloutsTall + plotHeight}
+	top := s.y + 22
+	s.view.plot = box{left: plotLeft, right: plotRight}
+	chosen := s.chooseCallouts()
+	s.view.plot.top = top + labelsTall
+	if len(chosen) > 0 {
+		s.view.plot.top += calloutsTall
+	}
+	s.view.plot.bottom = s.view.plot.top + plotHeight
 	s.group("Profile of the path", func() {
 		s.grid()
 		s.zoneFill()
 		s.terrain()
 		s.intrusion()
 		s.secondTerrain()
-		s.zoneOutline()
 		s.voids()
+		s.zoneOutline()
 		s.masts(top)
-		s.callouts(top + labelsTall)
+		s.callouts(chosen, top+labelsTall)
 		s.distanceAxis()
 	})
-	s.y = s.view.plot.bottom + 38
-	if more := s.moreCallouts(); more != "" {
+	s.y = s.view.plot.bottom + 34
+	if more := s.moreCallouts(chosen); more != "" {
 		s.y += 30
 		s.text(plotLeft-14, s.y, face{size: 20, bold: true, fill: alarm}, more)
 	}
@@ -40,18 +46,31 @@ func (s *sheet) panel() {
 // with their values at the left.
 func (s *sheet) grid() {
 	v := &s.view
-	step := roundStep((v.high - v.low) / 5)
+	step := roundStep((v.high - v.low) / 7)
 	decimals := decimalsFor(step)
 	var curves [][]point
-	for _, height := range ticks(v.low-v.bulge(v.lengthM/2), v.high, step) {
+	for _, height := range v.levels(step) {
 		curves = append(curves, v.level(height)...)
 		if height >= v.low {
-			s.text(plotLeft-22, v.y(height)+7, face{size: 20, fill: quiet, anchor: atEnd}, fixed(height, decimals))
+			s.text(plotLeft-20, v.y(height)+7, face{size: 20, fill: quiet, anchor: atEnd}, fixed(height, decimals))
 		}
 	}
 	s.path(`fill="none" stroke="`+faint+`" stroke-width="1"`, false, curves...)
-	s.text(marginLeft, v.plot.top-16, face{size: 20, fill: quiet}, "m above")
-	s.text(marginLeft, v.plot.top+6, face{size: 20, fill: quiet}, "sea level")
+	s.upright(marginLeft+14, (v.plot.top+v.plot.bottom)/2, face{size: 20, fill: quiet, anchor: atMiddle}, "metres above sea level")
+}
+
+// levels are the heights that get a line. Those below the plot at its ends
+// rise into it; those that would leave it at the top are left out if enough
+// stay.
+func (v *view) levels(step float64) []float64 {
+	bulge, low, high := v.bulge(v.lengthM/2), v.low, v.high
+	if len(ticks(low, high-bulge, step)) >= 3 {
+		high -= bulge
+	}
+	if bulge < high-low {
+		low -= bulge
+	}
+	return ticks(low, high, step)
 }
 
 // level is the part of one height's curve inside the plot.
@@ -100,12 +119,12 @@ func (s *sheet) distanceAxis() {
 	free := v.plot.right + 18 - textWidth(last, lastFace) - 14
 	for _, t := range ticks(0, v.lengthM/unit, step) {
 		x := v.x(min(t*unit, v.lengthM))
-		s.line(x, bottom, x, bottom+8, `stroke="`+ink+`" stroke-width="2"`)
 		label := fixed(t, decimals)
 		if t == 0 {
 			label = "0 " + name
 		}
 		if x+textWidth(label, f)/2 < free {
+			s.line(x, bottom, x, bottom+8, `stroke="`+ink+`" stroke-width="2"`)
 			s.text(x, bottom+31, f, label)
 		}
 	}

@@ -37,7 +37,7 @@ func (p *pen) escaped(s string) {
 
 // number writes tenths of a unit. A number that is none ends the drawing: half
 // a drawing could be taken for a whole one.
-func (p *pen) number(v float64) { p.tenths(p.toTenths(v)) }
+func (p *pen) number(v float64) { p.body = appendTenths(p.body, p.toTenths(v)) }
 
 func (p *pen) toTenths(v float64) int {
 	if math.IsNaN(v) || math.Abs(v) > 1e7 {
@@ -49,15 +49,16 @@ func (p *pen) toTenths(v float64) int {
 	return int(math.Round(v * 10))
 }
 
-func (p *pen) tenths(t int) {
+func appendTenths(b []byte, t int) []byte {
 	if t < 0 {
-		p.body = append(p.body, '-')
+		b = append(b, '-')
 		t = -t
 	}
-	p.body = strconv.AppendInt(p.body, int64(t/10), 10)
+	b = strconv.AppendInt(b, int64(t/10), 10)
 	if t%10 != 0 {
-		p.body = append(p.body, '.', byte('0'+t%10))
+		b = append(b, '.', byte('0'+t%10))
 	}
+	return b
 }
 
 func (p *pen) attribute(name string, v float64) {
@@ -111,21 +112,23 @@ func (p *pen) path(look string, closed bool, lines ...[]point) {
 // that rounding does not add up: half the size of absolute places.
 func (p *pen) through(line []point) {
 	var x, y int
+	b := p.body
 	for i, at := range line {
 		nextX, nextY := p.toTenths(at.x), p.toTenths(at.y)
 		switch i {
 		case 0:
-			p.raw("M")
+			b = append(b, 'M')
 		case 1:
-			p.raw("l")
+			b = append(b, 'l')
 		default:
-			p.raw(" ")
+			b = append(b, ' ')
 		}
-		p.tenths(nextX - x)
-		p.raw(" ")
-		p.tenths(nextY - y)
+		b = appendTenths(b, nextX-x)
+		b = append(b, ' ')
+		b = appendTenths(b, nextY-y)
 		x, y = nextX, nextY
 	}
+	p.body = b
 }
 
 // group draws what belongs together under a label.

@@ -11,6 +11,14 @@ import (
 // stands higher.
 const reachM = 200.0
 
+// reach is reachM, or less if no higher raise was looked for.
+func reach(r profile.Raise) float64 {
+	if r.CapM > 0 {
+		return min(reachM, r.CapM)
+	}
+	return reachM
+}
+
 // raiseAdvice is which of the four things there is to say about raises.
 type raiseAdvice int
 
@@ -29,21 +37,26 @@ func advice(a *assess.Assessment) raiseAdvice {
 		return raiseUnknown
 	case r.AM == 0 && r.BM == 0 && r.BothM == 0:
 		return raiseNothing
-	case !(r.AM <= reachM) && !(r.BM <= reachM) && !(r.BothM <= reachM):
+	case !(r.AM <= reach(r)) && !(r.BM <= reach(r)) && !(r.BothM <= reach(r)):
 		return raiseOutOfReach
 	}
 	return raiseByFigures
 }
 
-// raiseWords is a raise as a figure, or why it is none.
-func raiseWords(m float64) string {
-	switch {
-	case math.IsNaN(m):
-		return "more than was tried"
-	case m > reachM:
-		return "over 200 m"
+// raiseWords is a raise as a figure, or how far it is out of reach.
+func raiseWords(m, reach float64) string {
+	if !(m <= reach) {
+		return "over " + fixed(reach, 0) + nbsp + "m"
 	}
 	return atLeastM(m)
+}
+
+// outOfReach is what to say where no raise will do.
+func outOfReach(r profile.Raise) string {
+	if reach(r) < reachM {
+		return "No raise up to " + fixed(reach(r), 0) + nbsp + "m, the most that was tried, is enough."
+	}
+	return "Every raise is over " + fixed(reachM, 0) + nbsp + "m, beyond any ordinary mast: choose another path."
 }
 
 // raises draws the block on what to raise.
@@ -54,10 +67,9 @@ func (s *sheet) raises() {
 		case raiseNothing:
 			s.remark("Nothing: the antennas are high enough.")
 		case raiseUnknown:
-			s.remark("Not known: a height is missing that the answer rests on.")
+			s.remark("Not known while heights are missing.")
 		case raiseOutOfReach:
-			s.remark("Every raise is over 200 m, beyond any ordinary mast: choose another path.")
-			s.raiseCells()
+			s.remark(outOfReach(s.a.Judgement.Raise))
 		case raiseByFigures:
 			s.raiseCells()
 		}
@@ -72,51 +84,38 @@ func (s *sheet) remark(words string) {
 
 // raiseCells draws the three ways side by side.
 func (s *sheet) raiseCells() {
-	const width, height = 293.0, 118.0
-	r := s.a.Judgement.Raise
-	top := s.y + 14
-	for i, cell := range []struct{ label, figure, remark string }{
-		{"A alone", raiseFigure(r.AM), raiseTarget(s.a.Request.A, s.aboveGround(0), r.AM)},
-		{"or B alone", raiseFigure(r.BM), raiseTarget(s.a.Request.B, s.aboveGround(1), r.BM)},
-		{"or both, each", raiseFigure(r.BothM), raiseBothRemark(r.BothM)},
+	const width, height = 293.0, 106.0
+	r, ends := s.a.Judgement.Raise, s.bothEnds()
+	top := s.y + 8
+	for i, cell := range []struct {
+		label   string
+		m       float64
+		outcome string
+	}{
+		{"A alone", r.AM, raiseTarget(ends[0], r.AM)},
+		{"or B alone", r.BM, raiseTarget(ends[1], r.BM)},
+		{"or both, each", r.BothM, "at A and at B"},
 	} {
+		figure, outcome := "+"+raiseWords(cell.m, reach(r)), cell.outcome
+		if !(cell.m <= reach(r)) {
+			figure, outcome = raiseWords(cell.m, reach(r)), "out of a mast's reach"
+		}
 		x := marginLeft + float64(i)*(width+20.5)
 		s.rect(x, top, width, height, `fill="`+band+`"`)
-		s.text(x+16, top+30, face{size: 22, fill: quiet}, cell.label)
-		s.text(x+16, top+72, face{size: 36, bold: true}, cell.figure)
-		s.text(x+16, top+103, face{size: 20, fill: quiet}, cell.remark)
+		s.text(x+16, top+27, face{size: 21, fill: quiet}, cell.label)
+		s.text(x+16, top+65, face{size: 34, bold: true}, figure)
+		s.text(x+16, top+93, face{size: 20, fill: quiet}, outcome)
 	}
 	s.y = top + height
 }
 
-func raiseFigure(m float64) string {
-	if math.IsNaN(m) || m > reachM {
-		return "over 200 m"
-	}
-	return "+" + atLeastM(m)
-}
-
 // raiseTarget says how high the antenna then stands.
-func raiseTarget(e assess.End, aboveGroundM, m float64) string {
+func raiseTarget(e end, m float64) string {
 	switch {
-	case math.IsNaN(m):
-		return "no height was found"
-	case m > reachM:
-		return "choose another path"
-	case e.HeightAbove == assess.AboveRoof:
-		return "to " + atLeastM(e.AntennaHeightM+m) + " above roof"
-	case math.IsNaN(aboveGroundM):
-		return ""
+	case e.request.HeightAbove == assess.AboveRoof:
+		return "to " + atLeastM(e.request.AntennaHeightM+m) + " above roof"
+	case math.IsNaN(e.aboveGroundM()):
+		return "to " + atLeastM(e.amslM+m) + " above sea level"
 	}
-	return "to " + atLeastM(aboveGroundM+m) + " above ground"
-}
-
-func raiseBothRemark(m float64) string {
-	switch {
-	case math.IsNaN(m):
-		return "no height was found"
-	case m > reachM:
-		return "choose another path"
-	}
-	return "at A and at B"
+	return "to " + atLeastM(e.aboveGroundM()+m) + " above ground"
 }

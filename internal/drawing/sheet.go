@@ -18,7 +18,7 @@ const (
 	sheetWidth  = 1000.0
 	marginLeft  = 40.0
 	marginRight = sheetWidth - marginLeft
-	blockGap    = 30.0
+	blockGap    = 28.0
 )
 
 // SVG writes the assessment as an SVG document. Nothing is written unless all
@@ -32,6 +32,7 @@ func SVG(w io.Writer, a *assess.Assessment) error {
 	s.panel()
 	s.raises()
 	s.cards()
+	s.radio()
 	s.criteria()
 	s.sources()
 	s.cautions()
@@ -39,8 +40,11 @@ func SVG(w io.Writer, a *assess.Assessment) error {
 	if s.err != nil {
 		return s.err
 	}
-	if _, err := w.Write(s.document()); err != nil {
-		return fmt.Errorf("write drawing: %w", err)
+	s.raw("</svg>\n")
+	for _, part := range [][]byte{s.head(), s.body} {
+		if _, err := w.Write(part); err != nil {
+			return fmt.Errorf("write drawing: %w", err)
+		}
 	}
 	return nil
 }
@@ -70,15 +74,15 @@ type sheet struct {
 }
 
 func newSheet(a *assess.Assessment) *sheet {
-	return &sheet{pen: pen{body: make([]byte, 0, 64<<10)}, a: a, view: newView(a)}
+	return &sheet{pen: pen{body: make([]byte, 0, 48<<10)}, a: a, view: newView(a)}
 }
 
-// document puts the root element around what has been drawn. Only now is the
-// height known.
-func (s *sheet) document() []byte {
+// head is the beginning of the root element, and its names. The height is only
+// known when everything is drawn.
+func (s *sheet) head() []byte {
 	id := s.elementID()
 	height := fixed(s.y, 0)
-	head := pen{body: make([]byte, 0, len(s.body)+2048)}
+	head := pen{body: make([]byte, 0, 2048)}
 	head.raw(`<svg xmlns="http://www.w3.org/2000/svg" width="1000" height="`, height, `" viewBox="0 0 1000 `, height,
 		`" lang="en" xml:lang="en" role="img" aria-labelledby="`, id, `-title `, id, `-desc"`,
 		` font-family="sans-serif" fill="`, ink, `">`, "\n")
@@ -87,8 +91,6 @@ func (s *sheet) document() []byte {
 	head.raw("</title>\n", `<desc id="`, id, `-desc">`)
 	head.escaped(description(s.a))
 	head.raw("</desc>\n", `<rect width="1000" height="`, height, `" fill="`, paper, `"/>`, "\n")
-	head.body = append(head.body, s.body...)
-	head.raw("</svg>\n")
 	return head.body
 }
 
@@ -108,10 +110,10 @@ func (s *sheet) elementID() string {
 func (s *sheet) heading(title, remark string) {
 	s.y += blockGap
 	s.line(marginLeft, s.y, marginRight, s.y, `stroke="`+ink+`" stroke-width="2"`)
-	s.y += 34
+	s.y += 32
 	s.text(marginLeft, s.y, face{size: 26, bold: true}, title)
 	room := marginRight - marginLeft - textWidth(title, face{size: 26, bold: true}) - 20
 	remarkFace := face{size: 20, fill: quiet, anchor: atEnd}
 	s.text(marginRight, s.y, remarkFace, shorten(remark, remarkFace, room))
-	s.y += 12
+	s.y += 10
 }

@@ -1,6 +1,7 @@
 package drawing
 
 import (
+	"ridgehop/internal/assess"
 	"ridgehop/profile"
 )
 
@@ -14,7 +15,7 @@ func (s *sheet) sources() {
 		if s.a.Judgement.VoidShare > 0 {
 			remark += ", " + share(s.a.Judgement.VoidShare) + " without a height"
 		}
-		s.heading("Where the heights come from", remark)
+		s.heading("Height sources", remark)
 		if len(p.Sources) == 0 {
 			s.y += 34
 			s.text(marginLeft, s.y, face{size: 23}, "no raster holds a height on this path")
@@ -31,13 +32,20 @@ func (s *sheet) sources() {
 
 // source is two lines: name and share, then version, date and kind.
 func (s *sheet) source(source profile.Source) {
-	part := float64(source.Samples) / float64(len(s.a.Profile.DistanceM))
 	s.y += 36
-	s.name(marginLeft, s.y, face{size: 23}, sourceName(source), 740)
-	s.text(marginRight, s.y, face{size: 23, anchor: atEnd}, share(part)+" of it")
+	s.name(marginLeft, s.y, face{size: 23}, sourceName(source), 640)
+	s.text(marginRight, s.y, face{size: 23, anchor: atEnd}, partWords(source, s.a))
 	s.y += 28
 	f := face{size: 20, fill: quiet}
 	s.name(marginLeft, s.y, f, sourceDetail(source), marginRight-marginLeft)
+}
+
+// partWords says how much of the profile rests on the source.
+func partWords(source profile.Source, a *assess.Assessment) string {
+	if source.Samples == len(a.Profile.DistanceM) {
+		return "all samples"
+	}
+	return share(float64(source.Samples)/float64(len(a.Profile.DistanceM))) + " of the samples"
 }
 
 func sourceName(source profile.Source) string {

@@ -9,11 +9,11 @@ func (s *sheet) terrain() {
 	distances := v.a.Profile.DistanceM
 	if v.covered {
 		s.path(`fill="`+leaf+`" stroke="`+leafInk+`" stroke-width="1.5" stroke-linejoin="round"`, true,
-			v.areas(thin(distances, v.top, v.lengthM), v.top)...)
+			v.areas(thin(distances, v.top, allColumns), v.top)...)
 		s.coverHatch()
 	}
 	s.path(`fill="`+earth+`" stroke="`+earthInk+`" stroke-width="2" stroke-linejoin="round"`, true,
-		v.areas(thin(distances, v.ground, v.lengthM), v.ground)...)
+		v.areas(thin(distances, v.ground, allColumns), v.ground)...)
 }
 
 // areas are the outlines between the known heights and the plot's bottom.
@@ -87,7 +87,7 @@ func (s *sheet) secondTerrain() {
 		moved[i] = v.top[i] - v.bulge(d) + v.bulgeAt(d, v.second.K)
 	}
 	var lines [][]point
-	for _, run := range runs(thin(v.a.Profile.DistanceM, moved, v.lengthM), moved) {
+	for _, run := range runs(thin(v.a.Profile.DistanceM, moved, fewColumns), moved) {
 		lines = append(lines, v.through(run, moved))
 	}
 	s.path(secondLook, false, lines...)

@@ -15,6 +15,7 @@ const (
 	zone     = "#d9e6f0"
 	zoneInk  = "#22557f"
 	alarm    = "#8f2413"
+	intruder = "#cf6b53" // light enough for the lines that cross it
 	pass     = "#0b5b60"
 	doubt    = "#6b4700"
 )
@@ -55,6 +56,17 @@ func (p *pen) text(x, y float64, f face, s string) {
 	p.raw(">")
 	p.escaped(s)
 	p.raw("</text>\n")
+}
+
+// upright writes s from below to above.
+func (p *pen) upright(x, y float64, f face, s string) {
+	p.raw(`<g transform="translate(`)
+	p.number(x)
+	p.raw(" ")
+	p.number(y)
+	p.raw(`) rotate(-90)">`)
+	p.text(0, 0, f, s)
+	p.raw("</g>\n")
 }
 
 // name writes what a user called something, cut to the room, with the whole of

@@ -2,27 +2,32 @@ package drawing
 
 import "math"
 
-// drawnColumns times two is the most points of one profile line.
-const drawnColumns = 500
+// How many columns a profile line is thinned to. Each is drawn with two points
+// at most.
+const (
+	allColumns = 500
+	fewColumns = 120 // for a line that only goes along with another
+)
 
-// thin picks the samples to draw as a line. Few samples are all drawn. Of many,
+// thin picks the samples to draw as a line. Where they are few, all are. Of many,
 // each column of the drawing keeps its lowest and its highest, so that no
 // summit and no hollow is lost; a column without any value keeps one sample
 // without, so that a line breaks there. The first and the last sample are kept.
-func thin(distances, values []float64, lengthM float64) []int {
+func thin(distances, values []float64, columns int) []int {
 	n := len(values)
-	picked := make([]int, 0, min(n, 2*drawnColumns+2))
-	if n <= 2*drawnColumns {
+	picked := make([]int, 0, min(n, 2*columns+2))
+	if n <= 2*columns {
 		for i := range n {
 			picked = append(picked, i)
 		}
 		return picked
 	}
+	columnOf := func(i int) int { return int(distances[i] / distances[n-1] * float64(columns)) }
 	picked = append(picked, 0)
 	for i := 1; i < n-1; {
-		column := columnOf(distances[i], lengthM)
+		column := columnOf(i)
 		low, high := i, i
-		for ; i < n-1 && columnOf(distances[i], lengthM) == column; i++ {
+		for ; i < n-1 && columnOf(i) == column; i++ {
 			if values[i] < values[low] || math.IsNaN(values[low]) {
 				low = i
 			}
@@ -37,8 +42,6 @@ func thin(distances, values []float64, lengthM float64) []int {
 	}
 	return append(picked, n-1)
 }
-
-func columnOf(d, lengthM float64) int { return int(d / lengthM * drawnColumns) }
 
 // runs splits the picked samples where values has none.
 func runs(picked []int, values []float64) [][]int {
@@ -75,41 +78,5 @@ func joinSpans(spans []span, gap float64) []span {
 		}
 		out = append(out, s)
 	}
-	return out
-}
-
-// excess is where one line of a picture lies above another: for each stretch
-// the outline between the two, with the places where they cross. The lines
-// share their x.
-func excess(x, line, limit []float64) [][]point {
-	var out [][]point
-	var upper, lower []point
-	finish := func() {
-		if len(upper) > 0 {
-			for i := len(lower) - 1; i >= 0; i-- {
-				upper = append(upper, lower[i])
-			}
-			out = append(out, upper)
-		}
-		upper, lower = nil, nil
-	}
-	for i := range x {
-		over := limit[i] - line[i] // y grows downwards
-		if i > 0 {
-			before := limit[i-1] - line[i-1]
-			if (before > 0) != (over > 0) {
-				t := before / (before - over)
-				crossing := point{x[i-1] + t*(x[i]-x[i-1]), limit[i-1] + t*(limit[i]-limit[i-1])}
-				upper = append(upper, crossing)
-			}
-		}
-		if over > 0 {
-			upper = append(upper, point{x[i], line[i]})
-			lower = append(lower, point{x[i], limit[i]})
-			continue
-		}
-		finish()
-	}
-	finish()
 	return out
 }

@@ -8,17 +8,27 @@ const voidLook = `fill="none" stroke="` + quiet + `" stroke-width="1.5"`
 // the next, and names those wide enough.
 func (s *sheet) voids() {
 	v := &s.view
-	const label = "no data"
-	f := face{size: 20, bold: true, anchor: atMiddle}
 	for _, gap := range v.voidSpans() {
 		s.rect(gap.from, v.plot.top, gap.to-gap.from, v.plot.height(), `fill="`+paper+`" fill-opacity="0.75" stroke="`+quiet+`" stroke-width="1"`)
 		s.path(voidLook, false, hatch(box{gap.from, gap.to, v.plot.top, v.plot.bottom}, 14)...)
-		wide := textWidth(label, f) + 12
-		if gap.to-gap.from > wide+8 {
-			x, y := (gap.from+gap.to)/2, v.plot.bottom-34
-			s.rect(x-wide/2, y-22, wide, 30, `fill="`+paper+`"`)
-			s.text(x, y, f, label)
-		}
+		s.voidLabel(gap)
+	}
+}
+
+// voidLabel names a void, upright if need be, where it is wide enough.
+func (s *sheet) voidLabel(gap span) {
+	const label, tall = "no data", 28.0
+	v := &s.view
+	f := face{size: 20, bold: true, anchor: atMiddle}
+	x, wide := (gap.from+gap.to)/2, textWidth(label, f)+12
+	switch width := gap.to - gap.from; {
+	case width > wide+8:
+		s.rect(x-wide/2, v.plot.bottom-56, wide, tall, `fill="`+paper+`"`)
+		s.text(x, v.plot.bottom-35, f, label)
+	case width > tall+8:
+		middle := v.plot.bottom - 20 - wide/2
+		s.rect(x-tall/2, middle-wide/2, tall, wide, `fill="`+paper+`"`)
+		s.upright(x+7, middle, f, label)
 	}
 }
 

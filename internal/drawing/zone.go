@@ -6,7 +6,7 @@ const (
 	lineLook     = `stroke="` + ink + `" stroke-width="3"`
 	outlineLook  = `fill="none" stroke="` + zoneInk + `" stroke-width="1.5"`
 	requiredLook = `fill="none" stroke="` + zoneInk + `" stroke-width="2.5" stroke-dasharray="9 5"`
-	alarmLook    = `fill="` + alarm + `" stroke="` + alarm + `" stroke-width="1.5" stroke-linejoin="round"`
+	alarmLook    = `fill="` + intruder + `" stroke="` + alarm + `" stroke-width="1.5" stroke-linejoin="round"`
 )
 
 // zoneFill tints what must be kept free, from the line down to the required
@@ -54,17 +54,16 @@ func (s *sheet) intrusion() {
 	}
 	n := len(v.top)
 	var shapes [][]point
-	for _, run := range runs(thin(v.a.Profile.DistanceM[:n-1], v.top[:n-1], v.lengthM), v.top) {
+	for _, run := range runs(thin(v.a.Profile.DistanceM[:n-1], v.top[:n-1], allColumns), v.top) {
 		if run[0] == 0 {
 			run = run[1:] // the ends themselves are not judged
 		}
-		x, line, limit := make([]float64, len(run)), make([]float64, len(run)), make([]float64, len(run))
+		pairs := make([]pair, len(run))
 		for at, i := range run {
 			d := v.a.Profile.DistanceM[i]
-			x[at], line[at] = v.x(d), v.y(v.top[i])
-			limit[at] = v.y(v.lineAt(d) - v.drawn.F1Fraction*v.f1(d))
+			pairs[at] = pair{v.x(d), v.y(v.top[i]), v.y(v.lineAt(d) - v.drawn.F1Fraction*v.f1(d))}
 		}
-		shapes = append(shapes, excess(x, line, limit)...)
+		shapes = append(shapes, excess(pairs)...)
 	}
 	s.path(alarmLook, true, shapes...)
 }

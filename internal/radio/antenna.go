@@ -16,26 +16,28 @@ const (
 // Antenna describes one model of antenna.
 type Antenna struct {
 	// Name is unique in a register, 1 to 100 characters.
-	Name  string
-	Class Class
+	Name  string `json:"name"`
+	Class Class  `json:"class"`
 	// MinGHz and MaxGHz are the range of frequencies that it is made for.
-	MinGHz, MaxGHz float64
+	MinGHz float64 `json:"min_ghz"`
+	MaxGHz float64 `json:"max_ghz"`
 	// GainDBI is the gain on the axis.
-	GainDBI float64
+	GainDBI float64 `json:"gain_dbi"`
 	// AzimuthBeamwidthDeg and ElevationBeamwidthDeg are the half-power
 	// beamwidths. An omni's azimuth beamwidth is 360.
-	AzimuthBeamwidthDeg, ElevationBeamwidthDeg float64
+	AzimuthBeamwidthDeg   float64 `json:"azimuth_beamwidth_deg"`
+	ElevationBeamwidthDeg float64 `json:"elevation_beamwidth_deg"`
 	// Polarisations are those that it can be used in, at least one.
-	Polarisations []Polarisation
+	Polarisations []Polarisation `json:"polarisations"`
 	// CrossPolarDB is the cross-polar discrimination on the axis; 0 is not
 	// stated.
-	CrossPolarDB float64
+	CrossPolarDB float64 `json:"cross_polar_db,omitzero"`
 	// DiameterM is the diameter of a dish or grid; 0 for others.
-	DiameterM float64
+	DiameterM float64 `json:"diameter_m,omitzero"`
 	// WindAreaM2 is the area that it shows to the wind; 0 is not stated.
-	WindAreaM2 float64
+	WindAreaM2 float64 `json:"wind_area_m2,omitzero"`
 	// Pattern is where its gain off the axis comes from.
-	Pattern PatternSource
+	Pattern PatternSource `json:"pattern"`
 }
 
 // Polarisation of an antenna.
@@ -52,9 +54,10 @@ const (
 type PatternSource struct {
 	// Reference is one of the names below; empty where Azimuth and Elevation
 	// tables are given.
-	Reference Reference
+	Reference Reference `json:"reference,omitzero"`
 	// Azimuth and Elevation are tables of the gain below the axis by angle.
-	Azimuth, Elevation []PatternPoint
+	Azimuth   []PatternPoint `json:"azimuth,omitempty"`
+	Elevation []PatternPoint `json:"elevation,omitempty"`
 }
 
 // Reference names a published reference pattern.
@@ -70,8 +73,8 @@ const (
 
 // PatternPoint is one row of a pattern table.
 type PatternPoint struct {
-	AngleDeg float64 // off the axis: -180 to 180 in azimuth, -90 to 90 in elevation
-	GainDB   float64 // relative to the axis, <= 0
+	AngleDeg float64 `json:"angle_deg"` // off the axis: -180 to 180 in azimuth, -90 to 90 in elevation
+	GainDB   float64 `json:"gain_db"`   // relative to the axis, <= 0
 }
 
 // Pattern gives an antenna's gain off its axis. It never changes.
@@ -79,4 +82,9 @@ type Pattern interface {
 	// GainDBI is the gain at the offsets from the axis: azimuthDeg -180 to 180,
 	// elevationDeg -90 to 90, up positive.
 	GainDBI(azimuthDeg, elevationDeg float64) float64
+}
+
+// Covers reports whether the antenna is made for a frequency.
+func (a Antenna) Covers(frequencyGHz float64) bool {
+	return frequencyGHz >= a.MinGHz && frequencyGHz <= a.MaxGHz
 }

@@ -1,6 +1,11 @@
 package radio
 
-import "time"
+import (
+	"math"
+	"time"
+
+	"ridgehop/internal/itu/p676"
+)
 
 // Link is what the radio half is asked: a judged path, and what stands at its
 // ends.
@@ -20,6 +25,9 @@ type Link struct {
 	Limits []Limit
 	// Neighbours are other sites that the link might disturb.
 	Neighbours []Neighbour
+	// Candidates are the antennas among which the choice looks, in the order from
+	// least to most. Nil is the catalogue; empty but not nil asks for no choice.
+	Candidates []Antenna
 }
 
 // PathFigures are what the judge of the path found.
@@ -76,9 +84,11 @@ type Climate struct {
 // Limit is a power limit that the operator entered. It only warns.
 type Limit struct {
 	MinGHz, MaxGHz float64
-	MaxEIRPDBM     float64
-	Note           string
-	Date           string
+	MaxEIRPDBM     float64 // NaN is none
+	// MaxConductedDBM is of the power that enters the antenna; 0 is none.
+	MaxConductedDBM float64
+	Note            string
+	Date            string
 }
 
 // Neighbour is a site that may hear the link.
@@ -92,4 +102,46 @@ type Neighbour struct {
 	ElevationBDeg float64
 	GainDBI       float64      // of its antenna towards the link; 0 if not known
 	Polarisation  Polarisation // empty if not known
+}
+
+// UnknownClimate returns the climate of which nothing is known: an answer that needs
+// one of its figures is left out. Fill in what is known.
+func UnknownClimate() Climate {
+	unknown := math.NaN()
+	return Climate{
+		LogK: unknown, DN75: unknown, DN1: unknown, RainRateMMH: unknown,
+		TemperatureK: unknown, PressureHPA: unknown, VapourGM3: unknown,
+	}
+}
+
+// atmosphere is the air along the path, with the standard's figures for what is unknown.
+func (c Climate) atmosphere() p676.Atmosphere {
+	air := p676.Standard()
+	if !math.IsNaN(c.PressureHPA) {
+		air.DryPressureHPA = c.PressureHPA
+	}
+	if !math.IsNaN(c.TemperatureK) {
+		air.TemperatureK = c.TemperatureK
+	}
+	if !math.IsNaN(c.VapourGM3) {
+		air.VapourDensityGM3 = c.VapourGM3
+	}
+	return air
+}
+
+// lengthKM is the path length in km.
+func (l *Link) lengthKM() float64 { return l.LengthM / 1000 }
+
+// powerDBM is the transmit power in dBm.
+func (t *Terminal) powerDBM() float64 {
+	if math.IsNaN(t.PowerDBM) {
+		return t.Radio.MaxPowerDBM
+	}
+	return t.PowerDBM
+}
+
+// lossDB is what is lost in dB between the radio's power meter and the antenna, the
+// attenuator aside.
+func (t *Terminal) lossDB() float64 {
+	return t.Radio.LossDB + t.FeederLossDB + t.OtherLossDB
 }

@@ -12,6 +12,9 @@ type format struct {
 	driver string
 }
 
+// textGrid is the driver whose rows lie one after the other as text.
+const textGrid = "AAIGrid"
+
 // formats is the allow-list. Nothing else is ever handed to GDAL, so a file
 // cannot choose a driver that fetches addresses or runs expressions. Longer
 // endings stand first.
@@ -22,7 +25,7 @@ func formats() []format {
 		{".tiff", "GTiff"},
 		{".tif", "GTiff"},
 		{".dem", "USGSDEM"},
-		{".asc", "AAIGrid"},
+		{".asc", textGrid},
 	}
 }
 

@@ -1,18 +1,57 @@
 package raster
 
+/*
+#include <stdlib.h>
+#include <cpl_error.h>
+#include <ogr_srs_api.h>
+
+static OGRSpatialReferenceH ridgehop_coded(int epsg) {
+	OGRSpatialReferenceH sr = OSRNewSpatialReference(NULL);
+	if (OSRImportFromEPSG(sr, epsg) != OGRERR_NONE) {
+		OSRRelease(sr);
+		return NULL;
+	}
+	OSRSetAxisMappingStrategy(sr, OAMS_TRADITIONAL_GIS_ORDER);
+	return sr;
+}
+
+// Drops the vertical half of a compound system where its horizontal half has
+// a code, so that heights are never shifted on the way.
+static OGRSpatialReferenceH ridgehop_horizontal(const char *wkt, int epsg) {
+	OGRSpatialReferenceH sr = OSRNewSpatialReference(wkt);
+	if (sr && epsg && OSRIsCompound(sr)) {
+		OGRSpatialReferenceH flat = ridgehop_coded(epsg);
+		if (flat) {
+			OSRRelease(sr);
+			return flat;
+		}
+	}
+	if (sr) OSRSetAxisMappingStrategy(sr, OAMS_TRADITIONAL_GIS_ORDER);
+	return sr;
+}
+
+static OGRCoordinateTransformationH ridgehop_between(OGRSpatialReferenceH from, OGRSpatialReferenceH to, int ballpark) {
+	OGRCoordinateTransformationOptionsH options = OCTNewCoordinateTransformationOptions();
+	OCTCoordinateTransformationOptionsSetBallparkAllowed(options, ballpark);
+	OGRCoordinateTransformationH made = OCTNewCoordinateTransformationEx(from, to, options);
+	OCTDestroyCoordinateTransformationOptions(options);
+	return made;
+}
+*/
+import "C"
+
 import (
 	"errors"
 	"fmt"
-
-	"github.com/lukeroth/gdal"
+	"unsafe"
 )
 
 // Projector turns WGS 84 longitudes and latitudes into the x and y of a CRS,
 // and back. It is used by one goroutine at a time.
 type Projector struct {
 	name    string
-	forward gdal.CoordinateTransform
-	inverse gdal.CoordinateTransform
+	forward C.OGRCoordinateTransformationH
+	inverse C.OGRCoordinateTransformationH
 	zeros   []float64
 }
 
@@ -20,19 +59,18 @@ type Projector struct {
 // the grids that PROJ finds on this machine and its next best method
 // otherwise. The error is ErrCRS.
 func (*Library) NewProjector(crs CRS) (*Projector, error) {
-	wgs84, own := gdal.CreateSpatialReference(""), horizontal(crs)
-	defer wgs84.Destroy()
-	defer own.Destroy()
+	definition := C.CString(crs.WKT)
+	defer C.free(unsafe.Pointer(definition))
 	p := &Projector{name: crs.Name}
 	err := guarded("", func() error {
-		if err := wgs84.FromEPSG(epsgWGS84); err != nil {
-			return err
+		wgs84, own := C.ridgehop_coded(epsgWGS84), C.ridgehop_horizontal(definition, C.int(crs.EPSG))
+		if wgs84 == nil || own == nil {
+			return errors.New("its definition cannot be read")
 		}
-		wgs84.SetAxisMappingStrategy(gdal.OAMS_TraditionalGisOrder)
-		own.SetAxisMappingStrategy(gdal.OAMS_TraditionalGisOrder)
-		p.forward = gdal.CreateCoordinateTransform(wgs84, own)
-		p.inverse = gdal.CreateCoordinateTransform(own, wgs84)
-		if p.forward.IsNull() || p.inverse.IsNull() {
+		defer C.OSRRelease(wgs84)
+		defer C.OSRRelease(own)
+		p.forward, p.inverse = between(wgs84, own), between(own, wgs84)
+		if p.forward == nil || p.inverse == nil {
 			return errors.New("no way between it and WGS 84 is known")
 		}
 		return nil
@@ -44,20 +82,15 @@ func (*Library) NewProjector(crs CRS) (*Projector, error) {
 	return p, nil
 }
 
-// horizontal drops the vertical half of a compound system where its horizontal
-// half has a code, so that heights are never shifted on the way.
-func horizontal(crs CRS) gdal.SpatialReference {
-	sr := gdal.CreateSpatialReference(crs.WKT)
-	if crs.EPSG == 0 || !sr.IsCompound() {
-		return sr
+// between prepares one direction. A ballpark change, which takes two datums for
+// one, is the last resort: wherever PROJ may choose it, it does so outside the
+// area that the true shift is meant for, and a path that leaves it would jump.
+func between(from, to C.OGRSpatialReferenceH) C.OGRCoordinateTransformationH {
+	if shift := C.ridgehop_between(from, to, 0); shift != nil {
+		return shift
 	}
-	flat := gdal.CreateSpatialReference("")
-	if flat.FromEPSG(crs.EPSG) != nil {
-		flat.Destroy()
-		return sr
-	}
-	sr.Destroy()
-	return flat
+	C.CPLErrorReset()
+	return C.ridgehop_between(from, to, 1)
 }
 
 // Project replaces each longitude x[i] and latitude y[i] (degrees) by the
@@ -67,7 +100,7 @@ func (p *Projector) Project(x, y []float64) error { return p.apply(p.forward, x,
 // Unproject replaces each x[i], y[i] of the CRS by longitude and latitude.
 func (p *Projector) Unproject(x, y []float64) error { return p.apply(p.inverse, x, y) }
 
-func (p *Projector) apply(t gdal.CoordinateTransform, x, y []float64) error {
+func (p *Projector) apply(t C.OGRCoordinateTransformationH, x, y []float64) error {
 	if len(x) != len(y) || len(x) == 0 {
 		return fmt.Errorf("%w: %s: %d x for %d y", ErrCRS, p.name, len(x), len(y))
 	}
@@ -78,7 +111,7 @@ func (p *Projector) apply(t gdal.CoordinateTransform, x, y []float64) error {
 	clear(z)
 	outside := errors.New("a point lies outside what it can hold")
 	err := guarded("", func() error {
-		if !t.Transform(len(x), x, y, z) {
+		if C.OCTTransform(t, C.int(len(x)), coordinates(x), coordinates(y), coordinates(z)) == 0 {
 			return outside
 		}
 		return nil
@@ -92,12 +125,14 @@ func (p *Projector) apply(t gdal.CoordinateTransform, x, y []float64) error {
 	return nil
 }
 
+func coordinates(s []float64) *C.double { return (*C.double)(unsafe.Pointer(&s[0])) }
+
 // Close frees the projector.
 func (p *Projector) Close() {
-	for _, t := range []*gdal.CoordinateTransform{&p.forward, &p.inverse} {
-		if !t.IsNull() {
-			t.Destroy()
+	for _, t := range []*C.OGRCoordinateTransformationH{&p.forward, &p.inverse} {
+		if *t != nil {
+			C.OCTDestroyCoordinateTransformation(*t)
 		}
-		*t = gdal.CoordinateTransform{}
+		*t = nil
 	}
 }

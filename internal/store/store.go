@@ -111,12 +111,10 @@ func unavailable(err error) error {
 	if errors.Is(err, context.Canceled) || errors.Is(err, context.DeadlineExceeded) {
 		return err
 	}
-	var where *fs.PathError
-	if errors.As(err, &where) {
+	if where, ok := errors.AsType[*fs.PathError](err); ok {
 		return fmt.Errorf("%w: %w", ErrUnavailable, where.Err)
 	}
-	var lite sqlite3.Error
-	if errors.As(err, &lite) {
+	if lite, ok := errors.AsType[sqlite3.Error](err); ok {
 		return fmt.Errorf("%w: %s", ErrUnavailable, lite.Error())
 	}
 	return fmt.Errorf("%w: %w", ErrUnavailable, err)

@@ -2,6 +2,7 @@ package terrain
 
 import (
 	"context"
+	"slices"
 	"sync"
 
 	"ridgehop/internal/raster"
@@ -50,9 +51,9 @@ func (h *handles) with(ctx context.Context, e *entry, use func(*raster.Dataset) 
 func (h *handles) takeIdle(e *entry) *raster.Dataset {
 	h.mu.Lock()
 	defer h.mu.Unlock()
-	for i := len(h.idle) - 1; i >= 0; i-- {
-		if h.idle[i].entry == e {
-			found := h.idle[i].dataset
+	for i, one := range slices.Backward(h.idle) {
+		if one.entry == e {
+			found := one.dataset
 			h.idle = append(h.idle[:i], h.idle[i+1:]...)
 			return found
 		}

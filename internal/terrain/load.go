@@ -74,8 +74,7 @@ func (t *Terrain) scan(ctx context.Context, folder string, log *slog.Logger) ([]
 		usable = append(usable, e)
 		return nil
 	})
-	var where *os.PathError
-	if errors.As(err, &where) {
+	if where, ok := errors.AsType[*os.PathError](err); ok {
 		return nil, fmt.Errorf("raster folder %s: %w", folder, where.Err)
 	}
 	return usable, err

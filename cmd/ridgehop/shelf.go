@@ -1,0 +1,43 @@
+package main
+
+import (
+	"context"
+	"errors"
+	"fmt"
+
+	"ridgehop/internal/assess"
+	"ridgehop/internal/store"
+)
+
+// shelf is the store as the registers want it: it says the store's errors in
+// their words.
+type shelf struct {
+	kept *store.Store
+}
+
+func (s shelf) Entry(ctx context.Context, kind, name string) ([]byte, error) {
+	document, err := s.kept.Entry(ctx, kind, name)
+	return document, inWords(err)
+}
+
+func (s shelf) Entries(ctx context.Context, kind string) ([][]byte, error) {
+	return s.kept.Entries(ctx, kind)
+}
+
+func (s shelf) KeepEntry(ctx context.Context, kind, name string, document []byte) error {
+	return inWords(s.kept.KeepEntry(ctx, kind, name, document))
+}
+
+func (s shelf) DropEntry(ctx context.Context, kind, name string) error {
+	return inWords(s.kept.DropEntry(ctx, kind, name))
+}
+
+func inWords(err error) error {
+	switch {
+	case errors.Is(err, store.ErrNotFound):
+		return fmt.Errorf("%w: %w", assess.ErrNoEntry, err)
+	case errors.Is(err, store.ErrExists):
+		return fmt.Errorf("%w: %w", assess.ErrNameTaken, err)
+	}
+	return err
+}

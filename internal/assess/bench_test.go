@@ -1,0 +1,100 @@
+//go:build cgo
+
+package assess
+
+import (
+	"context"
+	"encoding/binary"
+	"log/slog"
+	"math"
+	"os"
+	"path/filepath"
+	"testing"
+
+	"github.com/paulmach/orb"
+
+	"ridgehop/internal/geodesy"
+	"ridgehop/internal/raster"
+	"ridgehop/internal/terrain"
+	"ridgehop/profile"
+)
+
+// rollingTerrain is a raster of one arc second, in a folder that goes with the
+// test, over hills up to 100 m high.
+func rollingTerrain(tb testing.TB) *terrain.Terrain {
+	tb.Helper()
+	const side = 3601
+	row := make([]int16, side)
+	tile := make([]byte, 0, 2*side*side)
+	for y := range side {
+		for x := range row {
+			u, v := float64(x)/40, float64(y)/55
+			row[x] = int16(50 + 30*math.Sin(u)*math.Cos(v) + 20*math.Sin(3.1*u+2.3*v))
+		}
+		var err error
+		if tile, err = binary.Append(tile, binary.BigEndian, row); err != nil {
+			tb.Fatal(err)
+		}
+	}
+	folder := tb.TempDir()
+	if err := os.WriteFile(filepath.Join(folder, "N00E007.hgt"), tile, 0o600); err != nil {
+		tb.Fatal(err)
+	}
+	loaded, err := terrain.Load(context.Background(), raster.NewLibrary(), []string{folder}, terrain.Options{}, slog.New(slog.DiscardHandler))
+	if err != nil {
+		tb.Fatal(err)
+	}
+	tb.Cleanup(loaded.Close)
+	return loaded
+}
+
+// rollingLink is 10 km long and crosses the raster askew; at the raster's step
+// of 30.7 m the default spacing would make 326 samples of it, so 334 are asked
+// for.
+func rollingLink(heightM float64) Request {
+	a := orb.Point{7.3, 0.4}
+	b := geodesy.Direct(a, 37, 10e3)
+	return Request{
+		A:            End{Lon: a.Lon(), Lat: a.Lat(), Placed: true, AntennaHeightM: heightM},
+		B:            End{Lon: b.Lon(), Lat: b.Lat(), Placed: true, AntennaHeightM: heightM},
+		FrequencyGHz: 18.7, SpacingM: 10e3/333 + 1e-6,
+	}
+}
+
+// One warm assessment without storage: from the request over the cached raster to
+// the verdict, with memory that the worker keeps.
+func BenchmarkJudge(b *testing.B) {
+	service := NewService(rollingTerrain(b))
+	for _, c := range []struct {
+		name    string
+		heightM float64
+		want    profile.Verdict
+	}{{"clear", 200, profile.Clear}, {"obstructed", 5, profile.Obstructed}} {
+		b.Run(c.name, func(b *testing.B) {
+			r, a, ws := rollingLink(c.heightM), &Assessment{}, &profile.Workspace{}
+			if err := service.judge(context.Background(), r, a, ws); err != nil {
+				b.Fatal(err)
+			}
+			if a.Judgement.Verdict != c.want || len(a.Profile.GroundM) != 334 {
+				b.Fatalf("got %s over %d samples", a.Judgement.Verdict, len(a.Profile.GroundM))
+			}
+			b.ReportAllocs()
+			for b.Loop() {
+				if err := service.judge(context.Background(), r, a, ws); err != nil {
+					b.Fatal(err)
+				}
+			}
+		})
+	}
+}
+
+// The same with cautions and id, as a caller gets it.
+func BenchmarkAssess(b *testing.B) {
+	service, r := NewService(rollingTerrain(b)), rollingLink(200)
+	b.ReportAllocs()
+	for b.Loop() {
+		if _, err := service.Assess(context.Background(), r); err != nil {
+			b.Fatal(err)
+		}
+	}
+}

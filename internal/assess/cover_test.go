@@ -1,0 +1,212 @@
+package assess
+
+import (
+	"fmt"
+	"testing"
+
+	"github.com/google/go-cmp/cmp"
+
+	"ridgehop/profile"
+)
+
+// Cover is counted where the raster does not hold it already, and never at the
+// ends, where the antenna stands above what covers its own place.
+func TestCoverByKindOfRaster(t *testing.T) {
+	for _, c := range []struct {
+		kind     profile.Kind
+		cover    float64
+		cautions []string
+	}{
+		{profile.KindGround, 25, []string{"obstacle_height_uncertainty", "vertical_datum"}},
+		{profile.KindUnstated, 25, []string{"raster_kind_unstated", "obstacle_height_uncertainty", "vertical_datum"}},
+		{profile.KindSurface, 0, []string{"cover_not_added", "obstacle_height_uncertainty", "vertical_datum"}},
+	} {
+		t.Run(string(c.kind), func(t *testing.T) {
+			r := tenKM()
+			bare := judged(t, land(c.kind, flat), r)
+			r.CoverHeightM = 25
+			a := judged(t, land(c.kind, flat), r)
+			last := len(a.Profile.CoverM) - 1
+			for i, got := range a.Profile.CoverM {
+				want := c.cover
+				if i == 0 || i == last {
+					want = 0
+				}
+				if got != want {
+					t.Fatalf("sample %d: got %g m of cover, want %g", i, got, want)
+				}
+			}
+			if len(bare.Profile.CoverM) != 0 {
+				t.Error("cover where none was asked for")
+			}
+			if a.Link.AntennaAM != bare.Link.AntennaAM || a.Link.AntennaBM != bare.Link.AntennaBM {
+				t.Error("cover moved an antenna")
+			}
+			for i, got := range a.Judgement.Clearance {
+				// k may differ, the place of the least ratio too, but 25 m of
+				// cover everywhere take 25 m off the clearance there.
+				if c.cover > 0 && !(got.MinRatio < bare.Judgement.Clearance[i].MinRatio) {
+					t.Errorf("criterion %d: the cover is not counted", i)
+				}
+			}
+			if diff := cmp.Diff(c.cautions, cautionCodes(a)); diff != "" {
+				t.Errorf("cautions (-want +got):\n%s", diff)
+			}
+		})
+	}
+}
+
+// Beside a brought profile the height of cover counts where a point has less of
+// its own.
+func TestCoverOverABroughtProfile(t *testing.T) {
+	r := brought(Point{0, 100, 3}, Point{2000, 100, 0}, Point{5000, 100, 40}, Point{8000, 100, 0}, Point{10000, 100, 4})
+	r.SpacingM = 1000
+	r.CoverHeightM = 25
+	a := judged(t, noTerrain(t), r)
+	for i, d := range a.Profile.DistanceM {
+		_, own := straight(r.Profile, segment(r.Profile, d), d)
+		want := max(own, 25)
+		if i == 0 || i == len(a.Profile.DistanceM)-1 {
+			want = own
+		}
+		near(t, fmt.Sprintf("cover at %g m", d), a.Profile.CoverM[i], want, 1e-9)
+	}
+}
+
+// Antennas at 30 m over 10 km of bare ground are clear at 18.7 GHz: at the k_e of
+// 0.382 the bulge is 5.1 m, F1 6.3 m. Over 25 m of trees they are not.
+func TestCoverDecidesOverABroughtProfile(t *testing.T) {
+	r := brought(Point{0, 100, 0}, Point{10000, 100, 0})
+	r.A.AntennaHeightM, r.B.AntennaHeightM = 30, 30
+	if got := judged(t, noTerrain(t), r).Judgement.Verdict; got != profile.Clear {
+		t.Errorf("bare: got %s", got)
+	}
+	r.CoverHeightM = 25
+	if got := judged(t, noTerrain(t), r).Judgement.Verdict; got != profile.Obstructed {
+		t.Errorf("under trees: got %s", got)
+	}
+}
+
+func segment(points []Point, d float64) int {
+	i := 0
+	for i < len(points)-1 && points[i+1].DistanceM <= d {
+		i++
+	}
+	return i
+}
+
+func TestAntennaHeights(t *testing.T) {
+	cases := []struct {
+		name    string
+		terrain profile.Terrain
+		points  []Point
+		above   HeightAbove
+		heightM float64
+		want    float64
+	}{
+		{"ground, by default", land(profile.KindGround, flat), nil, "", 12, 112},
+		{"ground", land(profile.KindSurface, flat), nil, AboveGround, 12, 112},
+		{"sea level", land(profile.KindGround, flat), nil, AboveSeaLevel, 150, 150},
+		{"sea level, at the very ground", land(profile.KindGround, flat), nil, AboveSeaLevel, 100, 100},
+		{"roof of a surface", land(profile.KindSurface, flat), nil, AboveRoof, 12, 112},
+		{"roof of who knows what", land(profile.KindUnstated, flat), nil, AboveRoof, 12, 112},
+		{"roof of brought cover", nil, []Point{{0, 100, 18}, {10000, 100, 18}}, AboveRoof, 12, 130},
+		{"ground under brought cover", nil, []Point{{0, 100, 18}, {10000, 100, 18}}, AboveGround, 12, 112},
+	}
+	for _, c := range cases {
+		t.Run(c.name, func(t *testing.T) {
+			r := tenKM()
+			if c.points != nil {
+				r = brought(c.points...)
+			}
+			r.A.HeightAbove, r.A.AntennaHeightM = c.above, c.heightM
+			r.B.HeightAbove, r.B.AntennaHeightM = c.above, c.heightM
+			a := judged(t, c.terrain, r)
+			if a.Link.AntennaAM != c.want || a.Link.AntennaBM != c.want {
+				t.Errorf("got %g and %g m above sea level, want %g", a.Link.AntennaAM, a.Link.AntennaBM, c.want)
+			}
+		})
+	}
+}
+
+func TestInvalidAntennaHeights(t *testing.T) {
+	r := tenKM()
+	r.A.HeightAbove, r.A.AntennaHeightM = AboveSeaLevel, 60
+	r.B.HeightAbove = AboveRoof
+	want := []FieldError{
+		{"/a/antenna_height_m", "is 60 m above sea level, which is 40.0 m below the ground there (100.0 m)"},
+		{"/b/height_above", "is roof, but raster land.tif is bare earth and knows no roofs: give the height above ground"},
+	}
+	if diff := cmp.Diff(want, refused(t, land(profile.KindGround, flat), r)); diff != "" {
+		t.Errorf("(-want +got):\n%s", diff)
+	}
+}
+
+func TestCautions(t *testing.T) {
+	quiet := func() (Request, profile.Profile) {
+		return Request{FrequencyGHz: 13}, profile.Profile{
+			Sources: []profile.Source{{Kind: profile.KindGround}}, SpacingM: 30, PixelM: 30,
+		}
+	}
+	kinds := func(p *profile.Profile, kinds ...profile.Kind) {
+		p.Sources = nil
+		for _, k := range kinds {
+			p.Sources = append(p.Sources, profile.Source{Kind: k})
+		}
+	}
+	cases := []struct {
+		name  string
+		spoil func(*Request, *profile.Profile)
+		want  []string
+	}{
+		{"bare earth", func(*Request, *profile.Profile) {}, []string{"vertical_datum"}},
+		{"no raster at all", func(_ *Request, p *profile.Profile) { kinds(p) }, nil},
+		{"brought", func(_ *Request, p *profile.Profile) { kinds(p, profile.KindProfile) }, nil},
+		{"surface", func(_ *Request, p *profile.Profile) { kinds(p, profile.KindSurface) }, []string{"vertical_datum"}},
+		{"surface and cover", func(r *Request, p *profile.Profile) {
+			kinds(p, profile.KindSurface)
+			r.CoverHeightM = 10
+		}, []string{"cover_not_added", "vertical_datum"}},
+		{"bare earth and cover", func(r *Request, _ *profile.Profile) { r.CoverHeightM = 10 }, []string{"vertical_datum"}},
+		{"unstated", func(_ *Request, p *profile.Profile) { kinds(p, profile.KindUnstated) }, []string{"raster_kind_unstated", "vertical_datum"}},
+		{"two kinds", func(r *Request, p *profile.Profile) {
+			kinds(p, profile.KindGround, profile.KindSurface, profile.KindGround)
+			r.CoverHeightM = 10
+		}, []string{"cover_not_added", "raster_kinds_mixed", "vertical_datum"}},
+		{"steps half as wide again", func(_ *Request, p *profile.Profile) { p.SpacingM = 45 }, []string{"vertical_datum"}},
+		{"wider steps", func(_ *Request, p *profile.Profile) { p.SpacingM = 45.1 }, []string{"coarse_spacing", "vertical_datum"}},
+		{"pixels not known", func(_ *Request, p *profile.Profile) { p.SpacingM, p.PixelM = 1000, 0 }, []string{"vertical_datum"}},
+		{"above 13 GHz", func(r *Request, _ *profile.Profile) { r.FrequencyGHz = 13.01 }, []string{"obstacle_height_uncertainty", "vertical_datum"}},
+	}
+	for _, c := range cases {
+		t.Run(c.name, func(t *testing.T) {
+			r, p := quiet()
+			c.spoil(&r, &p)
+			a := &Assessment{Request: r, Profile: p}
+			a.Cautions = a.cautions()
+			all := a.Cautions
+			if diff := cmp.Diff(c.want, cautionCodes(a)); diff != "" {
+				t.Errorf("(-want +got):\n%s", diff)
+			}
+			if diff := cmp.Diff(standing(), all[len(c.want):]); diff != "" {
+				t.Errorf("standing cautions (-want +got):\n%s", diff)
+			}
+		})
+	}
+}
+
+func TestCautionSentences(t *testing.T) {
+	r := Request{FrequencyGHz: 38, CoverHeightM: 12.5}
+	p := profile.Profile{SpacingM: 123.456, PixelM: 30.9, Sources: []profile.Source{{Kind: profile.KindSurface}, {Kind: profile.KindUnstated}}}
+	want := []Caution{
+		{"cover_not_added", "Cover of 12.5 m was not added where a surface raster holds it already."},
+		{"raster_kind_unstated", "The rasters do not say whether their heights include roofs and trees; the public global models largely do."},
+		{"raster_kinds_mixed", "Part of the path rests on bare earth and part on a surface with roofs and trees."},
+		{"coarse_spacing", "Samples are 123 m apart but pixels 30.9 m: a ridge may lie unseen between samples."},
+		{"obstacle_height_uncertainty", "Above about 13 GHz the Fresnel zone is narrow: add the uncertainty of the obstacle heights (P.530-19 2.2.2)."},
+		{"vertical_datum", "Heights are used as the rasters state them; sources on different vertical datums are not yet brought to one."},
+	}
+	if diff := cmp.Diff(want, r.cautions(&p)); diff != "" {
+		t.Errorf("(-want +got):\n%s", diff)
+	}
+}

@@ -1,0 +1,92 @@
+package assess
+
+import (
+	"math"
+	"testing"
+
+	"github.com/google/go-cmp/cmp"
+	"github.com/google/go-cmp/cmp/cmpopts"
+
+	"ridgehop/profile"
+)
+
+func TestRecordRoundTrip(t *testing.T) {
+	voids := func(d, lengthM float64) float64 {
+		if d > lengthM/2 {
+			return math.NaN()
+		}
+		return 100
+	}
+	covered := tenKM()
+	covered.CoverHeightM = 12
+	uneven := brought(Point{0, 100, 0}, Point{1234.5, 90, 5}, Point{1250, 95, 0}, Point{10000, 100, 0})
+	custom := tenKM()
+	custom.Criteria = []Criterion{{K: 1, F1Fraction: 0}, {K: 0.5, F1Fraction: 0.6}}
+	custom.Rasters = []string{"land.tif"}
+	for _, c := range []struct {
+		name    string
+		terrain profile.Terrain
+		request Request
+		want    profile.Verdict
+	}{
+		{"clear", land(profile.KindGround, flat), tenKM(), profile.Clear},
+		{"obstructed", land(profile.KindUnstated, hill), tenKM(), profile.Obstructed},
+		{"voids", land(profile.KindGround, voids), tenKM(), profile.Unknown},
+		{"covered", land(profile.KindGround, flat), covered, profile.Clear},
+		{"brought, uneven", nil, uneven, profile.Clear},
+		{"criteria of its own", land(profile.KindSurface, flat), custom, profile.Clear},
+	} {
+		t.Run(c.name, func(t *testing.T) {
+			want := judged(t, c.terrain, c.request)
+			if want.Judgement.Verdict != c.want {
+				t.Fatalf("got %s, want %s", want.Judgement.Verdict, c.want)
+			}
+			record, err := want.Record()
+			if err != nil {
+				t.Fatal(err)
+			}
+			got, err := FromRecord(record)
+			if err != nil {
+				t.Fatal(err)
+			}
+			same := cmp.Options{cmpopts.EquateNaNs(), cmpopts.EquateEmpty()}
+			if diff := cmp.Diff(want, got, same); diff != "" {
+				t.Errorf("(-want +got):\n%s", diff)
+			}
+			if diff := cmp.Diff(want.Samples(), got.Samples(), same); diff != "" {
+				t.Errorf("samples (-want +got):\n%s", diff)
+			}
+			if err := got.identify(); err != nil || got.ID != want.ID {
+				t.Errorf("id: got %s, %v, want %s", got.ID, err, want.ID)
+			}
+		})
+	}
+}
+
+// A record that is cut short or is none at all is an error, whatever the place
+// of the cut.
+func TestFromBrokenRecord(t *testing.T) {
+	record, err := judged(t, land(profile.KindGround, flat), tenKM()).Record()
+	if err != nil {
+		t.Fatal(err)
+	}
+	for _, n := range []int{0, 1, 100, len(record) / 2, len(record) - 1} {
+		if got, err := FromRecord(record[:n]); err == nil {
+			t.Errorf("first %d bytes of %d: got %+v", n, len(record), got)
+		}
+	}
+	if _, err := FromRecord([]byte("no record")); err == nil {
+		t.Error("text: got no error")
+	}
+}
+
+// The arrays for a drawing are at the k of the first criterion.
+func TestSamplesOfAnAssessment(t *testing.T) {
+	a := judged(t, land(profile.KindGround, hill), tenKM())
+	s := a.Samples()
+	if s.K != a.Link.Criteria[0].K || len(s.LineM) != len(a.Profile.DistanceM) {
+		t.Errorf("got k %g, %d samples", s.K, len(s.LineM))
+	}
+	near(t, "line at a", s.LineM[0], a.Link.AntennaAM, 0)
+	near(t, "line at b", s.LineM[len(s.LineM)-1], a.Link.AntennaBM, 1e-9)
+}
