@@ -33,6 +33,16 @@ func (t Terrain) Validate() error {
 // CacheBytes is CacheMB in bytes.
 func (t Terrain) CacheBytes() uint64 { return t.CacheMB << 20 }
 
+// Equipment names the operator's own files on antennas, radios, regions, limits
+// and maps.
+type Equipment struct {
+	Antennas string `help:"Antennas of one's own, as JSON." name:"antennas" placeholder:"FILE" env:"RIDGEHOP_ANTENNAS"`
+	Radios   string `help:"Radios of one's own, as JSON." name:"radios" placeholder:"FILE" env:"RIDGEHOP_RADIOS"`
+	Regions  string `help:"Regions with their climate, as JSON." name:"regions" placeholder:"FILE" env:"RIDGEHOP_REGIONS"`
+	Limits   string `help:"Power limits to warn about, as JSON." name:"limits" placeholder:"FILE" env:"RIDGEHOP_LIMITS"`
+	ITUMaps  string `help:"Folder with one's own copies of the ITU digital maps." name:"itu-maps" placeholder:"DIR" env:"RIDGEHOP_ITU_MAPS"`
+}
+
 // Service is how the server runs.
 type Service struct {
 	Data       string     `help:"Directory that keeps assessments; made if missing." name:"data" default:"data" placeholder:"DIR" env:"RIDGEHOP_DATA"`
