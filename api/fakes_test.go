@@ -41,6 +41,7 @@ func (h hills) Sample(_ context.Context, path profile.Path, _ profile.Sampling, 
 			into.GroundM[i], into.SourceIndex[i] = math.NaN(), -1
 		}
 	}
+	into.DistanceM[n-1] = path.LengthM
 	return nil
 }
 
@@ -151,3 +152,31 @@ func (slowBody) Read(p []byte) (int, error) {
 }
 
 var _ io.Reader = slowBody{}
+
+// shelf is an assess.Shelf in memory, for one goroutine.
+type shelf map[string][]byte
+
+func (s shelf) Entry(_ context.Context, kind, name string) ([]byte, error) {
+	if document, ok := s[kind+name]; ok {
+		return document, nil
+	}
+	return nil, assess.ErrNoEntry
+}
+
+func (s shelf) Entries(context.Context, string) ([][]byte, error) { return nil, nil }
+
+func (s shelf) KeepEntry(_ context.Context, kind, name string, document []byte) error {
+	if _, taken := s[kind+name]; taken {
+		return assess.ErrNameTaken
+	}
+	s[kind+name] = document
+	return nil
+}
+
+func (s shelf) DropEntry(_ context.Context, kind, name string) error {
+	if _, ok := s[kind+name]; !ok {
+		return assess.ErrNoEntry
+	}
+	delete(s, kind+name)
+	return nil
+}

@@ -14,6 +14,7 @@ import (
 	"time"
 
 	"github.com/labstack/echo/v4"
+	"github.com/labstack/echo/v4/middleware"
 
 	"ridgehop/internal/telemetry"
 )
@@ -75,6 +76,18 @@ func limited(most int, metrics *telemetry.Metrics) echo.MiddlewareFunc {
 			}
 		}
 	}
+}
+
+// recovered turns a panic into an error of the server, with its stack in the
+// log alone.
+func recovered(log *slog.Logger) echo.MiddlewareFunc {
+	return middleware.RecoverWithConfig(middleware.RecoverConfig{
+		DisableStackAll: true,
+		LogErrorFunc: func(c echo.Context, err error, stack []byte) error {
+			log.Error("panic", "request_id", c.Response().Header().Get(requestIDHeader), "error", err, "stack", string(stack))
+			return err
+		},
+	})
 }
 
 // timed ends the work on a request when its time is up.

@@ -69,7 +69,7 @@ func NewHandler(contract *Contract, d Dependencies) (http.Handler, error) {
 	e.IPExtractor = echo.ExtractIPDirect()
 	e.Binder = binder{contract}
 	e.HTTPErrorHandler = answerProblem(d.Log)
-	e.Use(identified, watched(d.Log, d.Metrics), middleware.Recover(), limited(d.MostAtOnce, d.Metrics), timed, hardened)
+	e.Use(identified, watched(d.Log, d.Metrics), recovered(d.Log), limited(d.MostAtOnce, d.Metrics), timed, hardened)
 	e.Use(middleware.BodyLimitWithConfig(middleware.BodyLimitConfig{Limit: bodyLimit}))
 	RegisterHandlers(e, NewStrictHandler(&handlers{d}, nil))
 	e.GET("/metrics", echo.WrapHandler(d.Metrics.Handler()))

@@ -178,3 +178,17 @@ func TestTwoPointsKeepTheBulge(t *testing.T) {
 	}
 	near(t, "raise of both", a.Judgement.Raise.BothM, 3.544, 0.001)
 }
+
+// Ten kilometres in 19,999 steps make 20,000 samples, as many as are taken.
+func TestMostSamples(t *testing.T) {
+	r := brought(Point{0, 100, 0}, Point{10000, 100, 0})
+	r.SpacingM = 10000.0 / 19999
+	if got := len(judged(t, noTerrain(t), r).Profile.GroundM); got != 20000 {
+		t.Errorf("got %d samples", got)
+	}
+	r.SpacingM = 10000.0 / 20000
+	want := one("/spacing_m", "makes more than 20000 samples of this profile; a larger one fits")
+	if diff := cmp.Diff(want, refused(t, noTerrain(t), r)); diff != "" {
+		t.Errorf("(-want +got):\n%s", diff)
+	}
+}

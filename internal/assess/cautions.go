@@ -15,34 +15,33 @@ type Caution struct {
 // standing cautions hold for every link.
 func standing() []Caution {
 	return []Caution{
-		{"survey_before_build", "Heights come from elevation data, which may miss new buildings, trees and cranes: confirm the path on site before building."},
+		beforeBuilding(),
 		{"work_at_height", "Roofs and masts: trained crews with fall protection only; structure, wind load and lightning protection by local codes and licensed practice."},
 		{"radio_exposure", "Keep people out of the beam while it is on; local exposure limits apply."},
 		{"spectrum_licence", "Frequency, power and antenna need the licence or exemption of the country concerned."},
 	}
 }
 
+func beforeBuilding() Caution {
+	return Caution{"survey_before_build", "Heights come from elevation data, which may miss new buildings, trees and cranes: confirm the path on site before building."}
+}
+
 // obstacleUncertaintyGHz is the frequency above which P.530-19 section 2.2.2
 // says that the uncertainty of obstacle heights counts.
 const obstacleUncertaintyGHz = 13.0
 
-// cautions are those that this link needs, the particular ones first. What
-// the radio half says takes the place of the general sentence of its code.
+// cautions are those that this link needs, the particular ones first. The
+// radio half knows the link's own hazards, and speaks in place of the general
+// sentences about them.
 func (a *Assessment) cautions() []Caution {
 	out := a.Request.cautions(&a.Profile)
-	said := map[string]bool{}
-	if a.Radio != nil {
-		for _, c := range a.Radio.Report.Cautions {
-			out = append(out, Caution{c.Code, c.Detail})
-			said[c.Code] = true
-		}
+	if a.Radio == nil {
+		return append(out, standing()...)
 	}
-	for _, c := range standing() {
-		if !said[c.Code] {
-			out = append(out, c)
-		}
+	for _, c := range a.Radio.Report.Cautions {
+		out = append(out, Caution{c.Code, c.Detail})
 	}
-	return out
+	return append(out, beforeBuilding())
 }
 
 // cautions are those that the request and its terrain give rise to.

@@ -173,6 +173,7 @@ func TestCautions(t *testing.T) {
 			kinds(p, profile.KindGround, profile.KindSurface, profile.KindGround)
 			r.CoverHeightM = 10
 		}, []string{"cover_not_added", "raster_kinds_mixed", "vertical_datum"}},
+		{"two rasters of one kind", func(_ *Request, p *profile.Profile) { kinds(p, profile.KindSurface, profile.KindSurface) }, []string{"vertical_datum"}},
 		{"steps half as wide again", func(_ *Request, p *profile.Profile) { p.SpacingM = 45 }, []string{"vertical_datum"}},
 		{"wider steps", func(_ *Request, p *profile.Profile) { p.SpacingM = 45.1 }, []string{"coarse_spacing", "vertical_datum"}},
 		{"pixels not known", func(_ *Request, p *profile.Profile) { p.SpacingM, p.PixelM = 1000, 0 }, []string{"vertical_datum"}},

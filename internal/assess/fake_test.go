@@ -31,7 +31,10 @@ func land(kind profile.Kind, height func(d, lengthM float64) float64) fakeTerrai
 		into.Resize(n)
 		into.SpacingM, into.PixelM = path.LengthM/float64(n-1), 30
 		for i := range n {
-			into.DistanceM[i] = path.LengthM * float64(i) / float64(n-1)
+			into.DistanceM[i] = float64(i) * into.SpacingM
+			if i == n-1 {
+				into.DistanceM[i] = path.LengthM
+			}
 			into.GroundM[i] = height(into.DistanceM[i], path.LengthM)
 			into.SourceIndex[i] = 0
 			if math.IsNaN(into.GroundM[i]) {

@@ -1,6 +1,8 @@
 package assess
 
 import (
+	"bytes"
+	"encoding/gob"
 	"math"
 	"testing"
 
@@ -77,6 +79,25 @@ func TestFromBrokenRecord(t *testing.T) {
 	}
 	if _, err := FromRecord([]byte("no record")); err == nil {
 		t.Error("text: got no error")
+	}
+}
+
+// Arrays that do not hold what the record says are an error, and no memory is
+// taken for a number of samples that no profile has.
+func TestFromRecordWithWrongArrays(t *testing.T) {
+	for name, r := range map[string]record{
+		"more samples than heights":   {Samples: 3, Ground: plain([]float64{1, 2}), Source: plain([]int16{0, 0, 0})},
+		"more samples than any path":  {Samples: profile.MaxSamples + 1},
+		"fewer than none":             {Samples: -1},
+		"more samples than distances": {Samples: 2, Distance: []byte{1}, Ground: plain([]float64{1, 2}), Source: plain([]int16{0, 0})},
+	} {
+		var kept bytes.Buffer
+		if err := gob.NewEncoder(&kept).Encode(r); err != nil {
+			t.Fatal(err)
+		}
+		if a, err := FromRecord(kept.Bytes()); err == nil {
+			t.Errorf("%s: got %+v", name, a)
+		}
 	}
 }
 

@@ -141,6 +141,44 @@ func TestCriteriaOfARequest(t *testing.T) {
 	}
 }
 
+// A worker judges one link after another in the same memory: nothing of one may
+// show in the next.
+func TestReusedMemory(t *testing.T) {
+	voids := func(d, lengthM float64) float64 {
+		if d > lengthM/2 {
+			return math.NaN()
+		}
+		return 100
+	}
+	covered := tenKM()
+	covered.CoverHeightM = 12
+	points := brought(Point{0, 100, 0}, Point{1234.5, 90, 5}, Point{10000, 100, 0})
+	near := tenKM()
+	near.B.Lat = 46.089
+	a, ws := &Assessment{}, &profile.Workspace{}
+	for i, turn := range []struct {
+		terrain profile.Terrain
+		request Request
+	}{
+		{land(profile.KindSurface, hill), covered},
+		{nil, points},
+		{land(profile.KindGround, voids), tenKM()},
+		{land(profile.KindGround, flat), near},
+		{land(profile.KindUnstated, hill), tenKM()},
+		{nil, points},
+		{land(profile.KindGround, flat), covered},
+	} {
+		if err := NewService(turn.terrain).judge(context.Background(), turn.request, a, ws); err != nil {
+			t.Fatal(err)
+		}
+		want := judged(t, turn.terrain, turn.request)
+		want.ID, want.Cautions = "", nil
+		if diff := cmp.Diff(want, a, cmpopts.EquateNaNs(), cmpopts.EquateEmpty()); diff != "" {
+			t.Errorf("turn %d (-new +reused):\n%s", i, diff)
+		}
+	}
+}
+
 // Many callers at once get what each alone would get.
 func TestConcurrentCallers(t *testing.T) {
 	service := NewService(land(profile.KindGround, hill))

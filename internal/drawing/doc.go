@@ -8,8 +8,8 @@
 // more. Nothing rests on colour: words, shapes, hatches and line styles say the
 // same.
 //
-// An SVG of this package holds no script, no link, no style sheet and no
-// reference to anything, itself included: hatches are plain lines, so that the
-// sheet looks the same wherever it is shown. The same assessment gives the
-// same bytes.
+// An SVG of this package holds no script, no link and no style sheet, and looks
+// nothing up, not even in itself: hatches are plain lines, so that the sheet
+// looks the same wherever it is shown. The same assessment gives the same
+// bytes.
 package drawing

@@ -69,7 +69,7 @@ func (s *sheet) equipment(letter string, t assess.TerminalRequest) {
 		parts = append(parts, string(t.Polarisation))
 	}
 	s.y += 30
-	s.name(marginLeft, s.y, face{size: 20}, "At "+letter+": "+strings.Join(parts, ", "), marginRight-marginLeft)
+	s.name(marginLeft, s.y, face{size: 20}, "At "+letter+": "+strings.Join(parts, "; "), marginRight-marginLeft)
 }
 
 // radioReasons says why the target is missed.

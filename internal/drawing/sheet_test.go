@@ -47,7 +47,9 @@ func TestHostileNames(t *testing.T) {
 	for _, name := range names {
 		c := cases()[0]
 		a := c.assessment(t)
+		withRadio(a)
 		a.Request.A.Name, a.Request.B.Name = name, name
+		a.Request.Radio.A.Radio.Name, a.Radio.Report.AToB.Target, a.Radio.Report.Reasons[0].Detail = name, name, name
 		a.Profile.Sources[0].Name, a.Profile.Sources[0].Version, a.ID = name, name, name
 		a.Cautions = append(a.Cautions, assess.Caution{Code: "test", Detail: name})
 		out := draw(t, a)

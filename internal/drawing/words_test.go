@@ -126,8 +126,8 @@ func TestSheetSays(t *testing.T) {
 		{"unknown_void", []string{"UNKNOWN", "no data", "Not known while heights are missing.", "not judged"}},
 		{"unknown_end", []string{"no data", "not known", "18.0 m above ground"}},
 		{"brought", []string{"no coordinates given", "a profile brought by the caller", "antenna above roof"}},
-		{"radio", []string{"A to B", "−58.3 dBm", "13.8 dB", "16-QAM 3/4", "36.0 dBm", "none", "azimuth, magnetic", "53.0°",
-			"target missed: 50 Mbit/s, 10.0 dB margin, 99.99 % of the year", "At A: Access point, 5 GHz, Dish, 0.6 m, vertical",
+		{"radio", []string{"A to B", "−58.2 dBm", "13.8 dB", "16-QAM 3/4", "36.0 dBm", "none", "azimuth, magnetic", "53.0°",
+			"target missed: 50 Mbit/s, 10.0 dB margin, 99.99 % of the year", "At A: Access point, 5 GHz; Dish, 0.6 m; vertical",
 			"From B to A the fade margin is 7.4 dB; 10.0 dB are asked for."}},
 		{"long", []string{"176.1 km", "file date not known", "50.0 % of the samples"}},
 	} {
