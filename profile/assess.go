@@ -127,13 +127,20 @@ func (a Assessment) groundless(link *Link, p *Profile, capM float64) Assessment 
 	return a
 }
 
-// tilts are the elevation angles of the far antenna seen from each end, over
-// the earth of the median k: atan((h2-h1)/d - d/(2 k a)). The last term is how
-// far the earth falls away, which is what makes both tilts of a level long
-// path point down.
+// tilts are the elevation angles of the far antenna seen from each end.
 func (g *geometry) tilts(link *Link) (aDeg, bDeg float64) {
-	fall := g.lengthM * bulgeFactor(MedianK)
-	degrees := func(slope float64) float64 { return math.Atan(slope-fall) * 180 / math.Pi }
-	rise := (link.AntennaBM - link.AntennaAM) / g.lengthM
-	return degrees(rise), degrees(-rise)
+	rise := link.AntennaBM - link.AntennaAM
+	return ElevationDeg(rise, g.lengthM), ElevationDeg(-rise, g.lengthM)
+}
+
+// ElevationDeg is the angle in degrees, up positive, at which something is seen
+// that lies riseM higher at a distance, both in metres, over the earth of the
+// median k:
+//
+//	atan(rise/d - d/(2 k a))
+//
+// The last term is how far the earth falls away, which is what makes both
+// tilts of a level long path point down.
+func ElevationDeg(riseM, distanceM float64) float64 {
+	return math.Atan(riseM/distanceM-distanceM*bulgeFactor(MedianK)) * 180 / math.Pi
 }

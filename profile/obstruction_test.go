@@ -80,34 +80,43 @@ func TestObstructionsOfEachCriterion(t *testing.T) {
 }
 
 // Samples a limit apart to the last bit, as even steps often are, must be judged
-// the same from either end: 20 steps, of which one is a twentieth of the path,
-// or 250 m where that is more.
-func TestEvenStepsFromEitherEnd(t *testing.T) {
+// the same from either end. Of 20 steps one is a twentieth of the path, the
+// longest isolated obstruction.
+func TestEvenStepsAreIsolatedFromEitherEnd(t *testing.T) {
 	for _, lengthM := range []float64{5000, 8103.083927575384, 12345.678, 33333.3} {
-		heights := make([]float64, 21)
-		heights[7], heights[8] = 1, 1
-		s := plain(lengthM, 0, 0, []Criterion{{K: 1, F1Fraction: 0.3}}, heights...)
+		s := plain(lengthM, 0, 0, []Criterion{{K: 1, F1Fraction: 0.3}}, make([]float64, 21)...)
 		r := s.reference()
-		for i := range heights {
-			heights[i] = r.line(i) - r.bulge(i, 1) - 10*r.f1(i)
+		for i := range s.p.GroundM {
+			clearance := 10 * r.f1(i)
+			if i == 7 || i == 8 {
+				clearance = 0.1 * r.f1(i)
+			}
+			s.p.GroundM[i] = r.line(i) - r.bulge(i, 1) - clearance
 		}
-		heights[7] = r.line(7) - r.bulge(7, 1) - 0.1*r.f1(7)
-		heights[8] = r.line(8) - r.bulge(8, 1) - 0.2*r.f1(8)
-		copy(s.p.GroundM, heights)
-		a, b := s.assess(t), s.mirrored().assess(t)
-		if a.Verdict != Clear || b.Verdict != Clear || !a.Clearance[0].Isolated || !b.Clearance[0].Isolated {
-			t.Errorf("%g m: got %s from a, %s from b", lengthM, a.Verdict, b.Verdict)
+		for end, a := range map[string]Assessment{"a": s.assess(t), "b": s.mirrored().assess(t)} {
+			if a.Verdict != Clear || !a.Clearance[0].Isolated {
+				t.Errorf("%g m from %s: got %s, %+v", lengthM, end, a.Verdict, a.Clearance[0])
+			}
 		}
 	}
-	// 250 m apart make one obstruction.
-	for _, lengthM := range []float64{5000, 7000.000000001} {
-		heights := make([]float64, int(lengthM/250)+1)
-		for i := 5; i < 10; i++ {
-			heights[i] = 200
+}
+
+// Steps of 250 m, of which rounding makes some longer: neighbours are one
+// obstruction.
+func TestEvenStepsAreOneObstructionFromEitherEnd(t *testing.T) {
+	for _, steps := range []int{20, 23, 28, 41} {
+		s := plain(250.1*float64(steps), 100, 100, []Criterion{Flat(1, 0.6)}, make([]float64, steps+1)...)
+		for i := range s.p.DistanceM {
+			s.p.DistanceM[i] = 0.1 + 250*float64(i)
 		}
-		s := plain(float64(len(heights)-1)*250, 100, 100, []Criterion{Flat(1, 0.6)}, heights...)
-		if a, b := s.assess(t), s.mirrored().assess(t); len(a.Obstructions) != 1 || len(b.Obstructions) != 1 {
-			t.Errorf("%g m: got %d from a, %d from b", lengthM, len(a.Obstructions), len(b.Obstructions))
+		s.p.DistanceM[0], s.p.DistanceM[steps] = 0, s.link.Path.LengthM
+		for i := 5; i < 15; i++ {
+			s.p.GroundM[i] = 200
+		}
+		for end, a := range map[string]Assessment{"a": s.assess(t), "b": s.mirrored().assess(t)} {
+			if len(a.Obstructions) != 1 {
+				t.Errorf("%d steps from %s: got %d obstructions", steps, end, len(a.Obstructions))
+			}
 		}
 	}
 }

@@ -19,21 +19,20 @@ func TestRaiseByLever(t *testing.T) {
 	}
 	nan := math.NaN()
 	cases := []struct {
-		name         string
-		cap, want    float64
-		a, b, both   float64
-		capTolerance float64
+		name        string
+		cap, capped float64
+		a, b, both  float64
 	}{
-		{"default cap", 0, DefaultRaiseCapM, 160.0 / 3, 160, 40, 0},
-		{"cap beyond all", 500, 500, 160.0 / 3, 160, 40, 0},
-		{"cap below b", 100, 100, 160.0 / 3, nan, 40, 0},
-		{"cap below a", 50, 50, nan, nan, 40, 0},
-		{"cap below all", 10, 10, nan, nan, nan, 0},
+		{"default cap", 0, DefaultRaiseCapM, 160.0 / 3, 160, 40},
+		{"cap beyond all", 500, 500, 160.0 / 3, 160, 40},
+		{"cap below b", 100, 100, 160.0 / 3, nan, 40},
+		{"cap below a", 50, 50, nan, nan, 40},
+		{"cap below all", 10, 10, nan, nan, nan},
 	}
 	for _, c := range cases {
 		t.Run(c.name, func(t *testing.T) {
 			got := hill(c.cap)
-			near(t, "cap", got.CapM, c.want, 0)
+			near(t, "cap", got.CapM, c.capped, 0)
 			near(t, "a", got.AM, c.a, 1e-9)
 			near(t, "b", got.BM, c.b, 1e-9)
 			near(t, "both", got.BothM, c.both, 1e-9)

@@ -75,8 +75,8 @@ func TestEveryFieldChangesTheID(t *testing.T) {
 func fillIn(v reflect.Value) {
 	switch v.Kind() {
 	case reflect.Struct:
-		for i := range v.NumField() {
-			fillIn(v.Field(i))
+		for _, field := range v.Fields() {
+			fillIn(field)
 		}
 	case reflect.Slice:
 		v.Set(reflect.MakeSlice(v.Type(), 1, 1))

@@ -11,7 +11,6 @@ import (
 	"github.com/paulmach/orb"
 
 	"ridgehop/internal/geodesy"
-	"ridgehop/internal/itu/p526"
 	"ridgehop/internal/radio"
 	"ridgehop/profile"
 )
@@ -125,16 +124,14 @@ func (a *Assessment) neighbours() []radio.Neighbour {
 	return out
 }
 
-// seenFrom is where a neighbour lies from an antenna: the elevation is over
-// the earth of the median k.
+// seenFrom is where a neighbour lies from an antenna.
 func seenFrom(from orb.Point, heightM float64, n NeighbourRequest) (distanceM, azimuthDeg, elevationDeg float64) {
 	line, err := geodesy.NewLine(from, orb.Point{n.Lon, n.Lat})
 	if err != nil || line.LengthM() == 0 {
 		return 0, 0, 0
 	}
 	d := line.LengthM()
-	slope := (n.AntennaAMSLM-heightM)/d - d/(2*p526.EffectiveRadiusKM(profile.MedianK)*1000)
-	return d, line.AzimuthADeg(), math.Atan(slope) * 180 / math.Pi
+	return d, line.AzimuthADeg(), profile.ElevationDeg(n.AntennaAMSLM-heightM, d)
 }
 
 // radioFaults says faults of the radio half by the names of the contract.

@@ -22,6 +22,8 @@ func TestRecordRoundTrip(t *testing.T) {
 	covered := tenKM()
 	covered.CoverHeightM = 12
 	uneven := brought(Point{0, 100, 0}, Point{1234.5, 90, 5}, Point{1250, 95, 0}, Point{10000, 100, 0})
+	rounded := tenKM()
+	rounded.SpacingM = 18 // times the number of steps it misses the path by a bit
 	custom := tenKM()
 	custom.Criteria = []Criterion{{K: 1, F1Fraction: 0}, {K: 0.5, F1Fraction: 0.6}}
 	custom.Rasters = []string{"land.tif"}
@@ -35,6 +37,7 @@ func TestRecordRoundTrip(t *testing.T) {
 		{"obstructed", land(profile.KindUnstated, hill), tenKM(), profile.Obstructed},
 		{"voids", land(profile.KindGround, voids), tenKM(), profile.Unknown},
 		{"covered", land(profile.KindGround, flat), covered, profile.Clear},
+		{"steps that do not add up to the path", land(profile.KindGround, flat), rounded, profile.Clear},
 		{"brought, uneven", nil, uneven, profile.Clear},
 		{"criteria of its own", land(profile.KindSurface, flat), custom, profile.Clear},
 	} {

@@ -1,6 +1,9 @@
 package island
 
-import "math"
+import (
+	"math"
+	"slices"
+)
 
 // drain points each node of a row at its steepest lower neighbour.
 func (b *basin) drain(row int) {
@@ -68,8 +71,8 @@ func (b *basin) gather() {
 	for i := range b.area {
 		b.area[i] = cell
 	}
-	for k := len(b.order) - 1; k >= 0; k-- {
-		if i := b.order[k]; b.down[i] != i {
+	for _, i := range slices.Backward(b.order) {
+		if b.down[i] != i {
 			b.area[b.down[i]] += b.area[i]
 		}
 	}

@@ -17,8 +17,8 @@ type Fault struct {
 	Detail string
 }
 
-// Error is the pointer and the detail.
-func (f Fault) Error() string { return f.Pointer + ": " + f.Detail }
+// String is the pointer and the detail.
+func (f Fault) String() string { return f.Pointer + ": " + f.Detail }
 
 // faults gathers what is wrong.
 type faults []Fault
@@ -36,12 +36,12 @@ func (f *faults) between(pointer string, value, low, high float64, unit string) 
 	return false
 }
 
-// above wants low < value <= high, and answers whether it is so.
-func (f *faults) above(pointer string, value, low, high float64, unit string) bool {
-	if value > low && value <= high {
+// positive wants 0 < value <= high, and answers whether it is so.
+func (f *faults) positive(pointer string, value, high float64, unit string) bool {
+	if value > 0 && value <= high {
 		return true
 	}
-	f.add(pointer, "%s is not above %s and at most %s%s", figure(value), figure(low), figure(high), unit)
+	f.add(pointer, "%s is not above 0 and at most %s%s", figure(value), figure(high), unit)
 	return false
 }
 

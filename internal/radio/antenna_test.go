@@ -106,7 +106,7 @@ func TestGainBound(t *testing.T) {
 }
 
 func TestFaultError(t *testing.T) {
-	if got, want := (Fault{"name", "is empty"}).Error(), "name: is empty"; got != want {
+	if got, want := (Fault{"name", "is empty"}).String(), "name: is empty"; got != want {
 		t.Errorf("got %q, want %q", got, want)
 	}
 }

@@ -12,7 +12,7 @@ type FaultsError struct{ Faults []Fault }
 func (e *FaultsError) Error() string {
 	list := make([]string, len(e.Faults))
 	for i, fault := range e.Faults {
-		list[i] = fault.Error()
+		list[i] = fault.String()
 	}
 	return strings.Join(list, "; ")
 }
@@ -46,7 +46,7 @@ func (f *faults) within(pointer string, part []Fault) {
 func (l *Link) ownFaults() faults {
 	var f faults
 	f.between("frequency_ghz", l.FrequencyGHz, leastGHz, mostGHz, " GHz")
-	f.above("length_m", l.LengthM, 0, longestM, " m")
+	f.positive("length_m", l.LengthM, longestM, " m")
 	l.checkTerminal(&f, "a/", &l.A)
 	l.checkTerminal(&f, "b/", &l.B)
 	l.checkPath(&f)
@@ -54,8 +54,8 @@ func (l *Link) ownFaults() faults {
 	l.checkClimate(&f)
 	for i := range l.Neighbours {
 		n, at := &l.Neighbours[i], "neighbours/"+index(i)+"/"
-		f.above(at+"distance_a_m", n.DistanceAM, 0, longestM, " m")
-		f.above(at+"distance_b_m", n.DistanceBM, 0, longestM, " m")
+		f.positive(at+"distance_a_m", n.DistanceAM, longestM, " m")
+		f.positive(at+"distance_b_m", n.DistanceBM, longestM, " m")
 	}
 	return f
 }
@@ -119,6 +119,6 @@ func (l *Link) checkClimate(f *faults) {
 	}
 	air := c.atmosphere()
 	f.between("climate/temperature_k", air.TemperatureK, 150, 350, " K")
-	f.above("climate/pressure_hpa", air.DryPressureHPA, 0, 1200, " hPa")
+	f.positive("climate/pressure_hpa", air.DryPressureHPA, 1200, " hPa")
 	f.between("climate/vapour_gm3", air.VapourDensityGM3, 0, 100, " g/m3")
 }

@@ -67,8 +67,7 @@ func csvHead(rows *csv.Reader) error {
 }
 
 func csvError(err error) error {
-	var parse *csv.ParseError
-	if errors.As(err, &parse) {
+	if parse, ok := errors.AsType[*csv.ParseError](err); ok {
 		return &LineError{Line: parse.Line, Detail: "is not CSV: " + parse.Err.Error()}
 	}
 	return fmt.Errorf("reading the file: %w", err)

@@ -71,10 +71,9 @@ func (a Antenna) validateReference(f *faults) {
 			a.Pattern.Reference, figure(low), figure(high), figure(a.MinGHz), figure(a.MaxGHz))
 		return
 	}
-	var outside *validity.RangeError
 	for _, frequency := range []float64{max(low, a.MinGHz), min(high, a.MaxGHz)} {
 		_, err := NewPattern(a, frequency)
-		if errors.As(err, &outside) {
+		if outside, ok := errors.AsType[*validity.RangeError](err); ok {
 			f.add("pattern/reference", "%s does not fit: %s", a.Pattern.Reference, outside.Error())
 			return
 		}

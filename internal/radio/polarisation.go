@@ -1,6 +1,9 @@
 package radio
 
-import "math"
+import (
+	"math"
+	"slices"
+)
 
 // DefaultCrossPolarDB is the cross-polar discrimination assumed of an antenna that
 // states none. Licence records have a median of 30 dB on the axis and a lowest tenth
@@ -59,10 +62,5 @@ func (a Antenna) discriminationDB() float64 {
 
 // Supports reports whether the antenna can be used in a polarisation.
 func (a Antenna) Supports(p Polarisation) bool {
-	for _, own := range a.Polarisations {
-		if own == p {
-			return true
-		}
-	}
-	return false
+	return slices.Contains(a.Polarisations, p)
 }

@@ -1,5 +1,7 @@
 package radio
 
+import "slices"
+
 // Radio describes one model of radio.
 type Radio struct {
 	// Name is unique in a register, 1 to 100 characters.
@@ -41,9 +43,9 @@ func (r Radio) Covers(frequencyGHz float64) bool {
 // receiver in dBm: the last whose threshold the level reaches. It is false where none
 // does.
 func (r Radio) ModulationAt(levelDBM float64) (Modulation, bool) {
-	for i := len(r.Modulations) - 1; i >= 0; i-- {
-		if levelDBM >= r.Modulations[i].ThresholdDBM {
-			return r.Modulations[i], true
+	for _, m := range slices.Backward(r.Modulations) {
+		if levelDBM >= m.ThresholdDBM {
+			return m, true
 		}
 	}
 	return Modulation{}, false

@@ -61,8 +61,8 @@ func (r Radio) validateModulation(f *faults, i int, powered bool) {
 	m, at := r.Modulations[i], "modulations/"+index(i)+"/"
 	f.name(at+"name", m.Name)
 	threshold := f.between(at+"threshold_dbm", m.ThresholdDBM, -160, 0, " dBm")
-	capacity := f.above(at+"capacity_mbps", m.CapacityMbps, 0, 1e6, " Mbit/s")
-	f.above(at+"bandwidth_mhz", m.BandwidthMHz, 0, 2e4, " MHz")
+	capacity := f.positive(at+"capacity_mbps", m.CapacityMbps, 1e6, " Mbit/s")
+	f.positive(at+"bandwidth_mhz", m.BandwidthMHz, 2e4, " MHz")
 	if powered && m.MaxPowerDBM != 0 {
 		f.between(at+"max_power_dbm", m.MaxPowerDBM, r.MinPowerDBM, r.MaxPowerDBM, " dBm, the radio's own range (0 is its most)")
 	}
