@@ -35,7 +35,8 @@ type Assessment struct {
 // Workspace is memory that a worker keeps from one assessment to the next. Its
 // zero value is ready. One goroutine uses it at a time.
 type Workspace struct {
-	distanceKM, surfaceM, needs, spare, behind []float64
+	distanceKM, surfaceM, needs, behind []float64
+	short                               []shortSample
 }
 
 // ErrLink means a link that Assess cannot judge: the caller should have

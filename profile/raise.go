@@ -1,6 +1,9 @@
 package profile
 
-import "math"
+import (
+	"math"
+	"slices"
+)
 
 // Raise is the least extra antenna height, in metres, that meets every
 // criterion: at A alone, at B alone, or the same at both ends. Zero where they
@@ -32,6 +35,7 @@ func (g *geometry) raise(criteria []Criterion, found []Clearance, ws *Workspace,
 		if found[i].Met {
 			continue
 		}
+		g.gatherShort(criteria[i], ws)
 		r.AM = max(r.AM, g.need(criteria[i], atA, ws))
 		r.BM = max(r.BM, g.need(criteria[i], atB, ws))
 		r.BothM = max(r.BothM, g.need(criteria[i], atBoth, ws))
@@ -44,67 +48,67 @@ func (g *geometry) raise(criteria []Criterion, found []Clearance, ws *Workspace,
 	return r
 }
 
+// shortSample is a sample that misses a criterion's full fraction.
+type shortSample struct {
+	distanceM float64
+	t         float64 // share of the path from A
+	// fullM is what is missing to the full fraction, isolatedM to the isolated
+	// one; the latter may be negative.
+	fullM, isolatedM float64
+}
+
+// gatherShort collects in ws what misses the criterion, from A to B.
+func (g *geometry) gatherShort(c Criterion, ws *Workspace) {
+	bulge := bulgeFactor(c.K)
+	ws.short = ws.short[:0]
+	for i := 1; i < len(g.p.DistanceM)-1; i++ {
+		clearanceM, f1M := g.at(i, bulge)
+		if missing := c.F1Fraction*f1M - clearanceM; missing > ratioTolerance*f1M {
+			d := g.p.DistanceM[i]
+			ws.short = append(ws.short, shortSample{
+				distanceM: d, t: d / g.lengthM, fullM: missing, isolatedM: c.IsolatedF1Fraction*f1M - clearanceM,
+			})
+		}
+	}
+}
+
 // need is the least raise through the lever that meets one criterion, by
 // whichever of its fractions is met first.
 func (g *geometry) need(c Criterion, l lever, ws *Workspace) float64 {
-	ws.needs = resized(ws.needs, len(g.p.DistanceM))
-	missing := g.needs(c.K, c.F1Fraction, l, ws.needs)
-	if !(c.IsolatedF1Fraction < c.F1Fraction) || missing.most == 0 {
-		return missing.most
+	ws.needs = resized(ws.needs, len(ws.short))
+	full, isolated := 0.0, 0.0
+	for i := range ws.short {
+		s := &ws.short[i]
+		perMetre := 1 / l(s.t)
+		ws.needs[i] = s.fullM * perMetre
+		full = max(full, ws.needs[i])
+		isolated = max(isolated, s.isolatedM*perMetre)
 	}
-	isolated := g.shrink(missing, ws, isolatedSpanM(g.lengthM))
-	ws.spare = resized(ws.spare, len(g.p.DistanceM))
-	return min(missing.most, max(isolated, g.needs(c.K, c.IsolatedF1Fraction, l, ws.spare).most))
-}
-
-// missing is the stretch of samples that need a raise, and the largest raise.
-type missing struct {
-	first, end int // samples first <= i < end
-	most       float64
-}
-
-// needs sets out[i], for the stretch that it returns, to the raise that sample
-// i needs to reach the fraction; 0 where it does already.
-func (g *geometry) needs(k, fraction float64, l lever, out []float64) missing {
-	bulge := bulgeFactor(k)
-	found := missing{}
-	for i := 1; i < len(out)-1; i++ {
-		clearanceM, f1M := g.at(i, bulge)
-		short := fraction*f1M - clearanceM
-		if !(short > ratioTolerance*f1M) {
-			out[i] = 0
-			continue
-		}
-		if found.end == 0 {
-			found.first = i
-		}
-		found.end = i + 1
-		out[i] = short / l(g.p.DistanceM[i]/g.lengthM)
-		found.most = max(found.most, out[i])
+	if !(c.IsolatedF1Fraction < c.F1Fraction) || isolated >= full {
+		return full
 	}
-	return found
+	return min(full, max(isolated, shrink(ws, isolatedSpanM(g.lengthM))))
 }
 
 // shrink is the least raise after which the samples that still miss the full
 // fraction, those of ws.needs above it, all lie within spanM of each other.
 // Every window of that width is tried: the raise must satisfy all samples
 // before and behind it.
-func (g *geometry) shrink(stretch missing, ws *Workspace, spanM float64) float64 {
-	needs, distances := ws.needs[stretch.first:stretch.end], g.p.DistanceM[stretch.first:stretch.end]
-	n := len(needs)
+func shrink(ws *Workspace, spanM float64) float64 {
+	n := len(ws.short)
 	ws.behind = resized(ws.behind, n+1)
 	behind := ws.behind // behind[i]: the most that samples i and later need
 	behind[n] = 0
-	for i := n - 1; i >= 0; i-- {
-		behind[i] = max(behind[i+1], needs[i])
+	for i, need := range slices.Backward(ws.needs) {
+		behind[i] = max(behind[i+1], need)
 	}
 	least, before, end := math.Inf(1), 0.0, 0
 	for i := range n {
-		for end < n && distances[end]-distances[i] <= spanM {
+		for end < n && ws.short[end].distanceM-ws.short[i].distanceM <= spanM {
 			end++
 		}
 		least = min(least, max(before, behind[end]))
-		before = max(before, needs[i])
+		before = max(before, ws.needs[i])
 	}
 	return least
 }
