@@ -68,7 +68,7 @@ func (r Reason) Detail() string {
 	case ReasonVoidOnPath:
 		return fmt.Sprintf("No height is known for %.1f %% of the path, between %.0f m and %.0f m from A.", 100*r.Share, r.FromM, r.ToM)
 	case ReasonVoidAtEnd:
-		return fmt.Sprintf("No ground height is known at end %s, so its antenna cannot be placed; state its height above sea level.", r.End)
+		return fmt.Sprintf("No ground height is known at end %s, so its antenna cannot be placed.", r.End)
 	case ReasonRadioWillDecide:
 		return "The line is open but the Fresnel zone is not: whether the link carries traffic depends on the radio's margin."
 	}

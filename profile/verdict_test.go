@@ -81,7 +81,7 @@ func TestReasonDetail(t *testing.T) {
 		},
 		{
 			Reason{Code: ReasonVoidAtEnd, End: "b"},
-			"No ground height is known at end b, so its antenna cannot be placed; state its height above sea level.",
+			"No ground height is known at end b, so its antenna cannot be placed.",
 		},
 		{
 			Reason{Code: ReasonRadioWillDecide},

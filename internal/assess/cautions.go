@@ -26,6 +26,19 @@ func beforeBuilding() Caution {
 	return Caution{"survey_before_build", "Heights come from elevation data, which may miss new buildings, trees and cranes: confirm the path on site before building."}
 }
 
+// sparseGapM is from which distance between the points of a profile that the
+// caller brings a ridge between them is likely enough to be said: a few pixels
+// of the public models. Common practice, no source.
+const sparseGapM = 100.0
+
+func widestGapM(points []Point) float64 {
+	widest := 0.0
+	for i := 1; i < len(points); i++ {
+		widest = max(widest, points[i].DistanceM-points[i-1].DistanceM)
+	}
+	return widest
+}
+
 // obstacleUncertaintyGHz is the frequency above which P.530-19 section 2.2.2
 // says that the uncertainty of obstacle heights counts.
 const obstacleUncertaintyGHz = 13.0
@@ -58,13 +71,16 @@ func (r Request) cautions(p *profile.Profile) []Caution {
 		add("cover_not_added", "Cover of %g m was not added where a surface raster holds it already.", r.CoverHeightM)
 	}
 	if kinds[profile.KindUnstated] {
-		add("raster_kind_unstated", "The rasters do not say whether their heights include roofs and trees; the public global models largely do.")
+		add("raster_kind_unstated", "The rasters do not say whether their heights include roofs and trees; the public global models largely do. An antenna height above ground may then count from a roof.")
 	}
-	if len(kinds) > 1 {
+	if kinds[profile.KindGround] && kinds[profile.KindSurface] {
 		add("raster_kinds_mixed", "Part of the path rests on bare earth and part on a surface with roofs and trees.")
 	}
 	if p.PixelM > 0 && p.SpacingM > 1.5*p.PixelM {
 		add("coarse_spacing", "Samples are %.3g m apart but pixels %.3g m: a ridge may lie unseen between samples.", p.SpacingM, p.PixelM)
+	}
+	if gap := widestGapM(r.Profile); gap > sparseGapM {
+		add("sparse_profile", "Points of the profile are up to %.0f m apart; the ground between them was taken as straight.", gap)
 	}
 	if r.FrequencyGHz > obstacleUncertaintyGHz {
 		add("obstacle_height_uncertainty", "Above about 13 GHz the Fresnel zone is narrow: add the uncertainty of the obstacle heights (P.530-19 2.2.2).")

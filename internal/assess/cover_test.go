@@ -43,8 +43,7 @@ func TestCoverByKindOfRaster(t *testing.T) {
 				t.Error("cover moved an antenna")
 			}
 			for i, got := range a.Judgement.Clearance {
-				// k may differ, the place of the least ratio too, but 25 m of
-				// cover everywhere take 25 m off the clearance there.
+				// Cover on every sample lowers every ratio.
 				if c.cover > 0 && !(got.MinRatio < bare.Judgement.Clearance[i].MinRatio) {
 					t.Errorf("criterion %d: the cover is not counted", i)
 				}
@@ -198,10 +197,10 @@ func TestCautions(t *testing.T) {
 
 func TestCautionSentences(t *testing.T) {
 	r := Request{FrequencyGHz: 38, CoverHeightM: 12.5}
-	p := profile.Profile{SpacingM: 123.456, PixelM: 30.9, Sources: []profile.Source{{Kind: profile.KindSurface}, {Kind: profile.KindUnstated}}}
+	p := profile.Profile{SpacingM: 123.456, PixelM: 30.9, Sources: []profile.Source{{Kind: profile.KindSurface}, {Kind: profile.KindUnstated}, {Kind: profile.KindGround}}}
 	want := []Caution{
 		{"cover_not_added", "Cover of 12.5 m was not added where a surface raster holds it already."},
-		{"raster_kind_unstated", "The rasters do not say whether their heights include roofs and trees; the public global models largely do."},
+		{"raster_kind_unstated", "The rasters do not say whether their heights include roofs and trees; the public global models largely do. An antenna height above ground may then count from a roof."},
 		{"raster_kinds_mixed", "Part of the path rests on bare earth and part on a surface with roofs and trees."},
 		{"coarse_spacing", "Samples are 123 m apart but pixels 30.9 m: a ridge may lie unseen between samples."},
 		{"obstacle_height_uncertainty", "Above about 13 GHz the Fresnel zone is narrow: add the uncertainty of the obstacle heights (P.530-19 2.2.2)."},

@@ -147,3 +147,26 @@ func TestRasterVersionChangesTheID(t *testing.T) {
 		t.Error("another version gave the same id")
 	}
 }
+
+// What has no meaning in a request does not change its id.
+func TestMeaninglessDifferencesKeepTheID(t *testing.T) {
+	terrain := land(profile.KindGround, flat)
+	r := tenKM()
+	r.Criteria = []Criterion{{K: 1, F1Fraction: 0.5}}
+	r.Rasters = []string{"a", "b"}
+	same := r
+	same.CriteriaSet, same.Rasters = profile.F160, []string{"b", "a", "b"}
+	if got, want := judged(t, terrain, same).ID, judged(t, terrain, r).ID; got != want {
+		t.Errorf("criteria set beside criteria, rasters in another order: got %s, want %s", got, want)
+	}
+	r = brought(Point{}, Point{DistanceM: 1000, GroundM: 1})
+	same = r
+	same.A.Lon, same.B.Lat = 5, 6
+	if got, want := judged(t, terrain, same).ID, judged(t, terrain, r).ID; got != want {
+		t.Errorf("places of ends that have none: got %s, want %s", got, want)
+	}
+	sparse := judged(t, terrain, brought(Point{}, Point{DistanceM: 101, GroundM: 1}))
+	if codes := cautionCodes(sparse); len(codes) == 0 || codes[0] != "sparse_profile" {
+		t.Errorf("cautions of a sparse profile: got %v", codes)
+	}
+}

@@ -1,6 +1,8 @@
 package assess
 
 import (
+	"slices"
+
 	"ridgehop/profile"
 )
 
@@ -75,19 +77,27 @@ type Point struct {
 	CoverM    float64 `json:"cover_m"`
 }
 
-// withDefaults fills in what the caller left open.
+// withDefaults fills in what the caller left open and drops what has no
+// meaning, so that the same question always reads the same.
 func (r Request) withDefaults() Request {
 	for _, end := range []*End{&r.A, &r.B} {
 		if end.HeightAbove == "" {
 			end.HeightAbove = AboveGround
 		}
+		if !end.Placed {
+			end.Lon, end.Lat = 0, 0
+		}
 	}
 	if r.Polarisation == "" {
 		r.Polarisation = profile.Vertical
 	}
-	if r.CriteriaSet == "" {
+	switch {
+	case len(r.Criteria) > 0:
+		r.CriteriaSet = "" // the criteria listed stand in its place
+	case r.CriteriaSet == "":
 		r.CriteriaSet = profile.P530Temperate
 	}
+	r.Rasters = slices.Compact(slices.Sorted(slices.Values(r.Rasters)))
 	return r
 }
 
