@@ -19,7 +19,7 @@ FROM debian:bookworm-slim
 RUN apt-get update \
     && apt-get install -y --no-install-recommends ca-certificates libgdal32 libsqlite3-0 proj-data \
     && rm -rf /var/lib/apt/lists/* \
-    && useradd --system --uid 10001 --no-create-home --shell /usr/sbin/nologin ridgehop \
+    && useradd --uid 10001 --user-group --no-create-home --shell /usr/sbin/nologin ridgehop \
     && install -d -o ridgehop -g ridgehop /data /rasters
 COPY --from=build /out/ridgehop /usr/local/bin/ridgehop
 

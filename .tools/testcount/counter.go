@@ -113,8 +113,7 @@ func (c *counter) pkg(e event) {
 	}
 }
 
-// close adds a package to the totals and prints its line, or none where the
-// package has no tests.
+// close adds a package to the totals and prints its line.
 func (c *counter) close(e event, word string) {
 	p := c.packages[e.Package]
 	delete(c.packages, e.Package)
@@ -122,6 +121,7 @@ func (c *counter) close(e event, word string) {
 	c.failed += p.failed
 	c.skipped += p.skipped
 	if p.passed+p.failed+p.skipped == 0 {
+		fmt.Fprintf(c.out, "none %-40s no tests\n", e.Package)
 		return
 	}
 	parts := []string{fmt.Sprintf("%d passed", p.passed)}

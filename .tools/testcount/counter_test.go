@@ -69,6 +69,16 @@ func TestRun(t *testing.T) {
 			wantErr:     "1 failed",
 		},
 		{
+			name: "a package without tests is named",
+			events: `{"Action":"start","Package":"m/a"}
+{"Action":"output","Package":"m/a","Output":"?   \tm/a\t[no test files]\n"}
+{"Action":"skip","Package":"m/a"}
+`,
+			wantOut:     "none m/a                                      no tests\n",
+			wantSummary: "0 passed, 0 failed, 0 skipped\n",
+			wantErr:     "no test ran",
+		},
+		{
 			name:        "a stream cut short has failed",
 			events:      `{"Action":"start","Package":"m/a"}` + "\n",
 			wantOut:     "FAIL m/a                                      0 passed, 1 failed (0.0 s)\n",

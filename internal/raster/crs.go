@@ -2,6 +2,7 @@ package raster
 
 import (
 	"fmt"
+	"math"
 	"strconv"
 
 	"github.com/lukeroth/gdal"
@@ -24,6 +25,10 @@ type CRS struct {
 }
 
 const epsgWGS84 = 4326
+
+// largestAngle lies above every unit that longitudes are counted in, degrees
+// and grads, in radians, and below the metre, which counts as 1.
+const largestAngle = 0.1
 
 func describeCRS(wkt string) (CRS, error) {
 	crs := CRS{WKT: wkt}
@@ -49,6 +54,12 @@ func describeCRS(wkt string) (CRS, error) {
 		}
 	default:
 		return crs, fmt.Errorf("%w: it is neither geographic nor projected", ErrCRS)
+	}
+	// PROJ ends the process over longitudes and latitudes in a unit of length.
+	text, _ := sr.AttrValue("GEOGCS|UNIT", 1)
+	angle, _ := strconv.ParseFloat(text, 64)
+	if !(angle > 0 && angle < largestAngle) || crs.Geographic && math.Abs(angle-math.Pi/180) > 1e-9 {
+		return crs, fmt.Errorf("%w: its longitudes and latitudes do not count degrees", ErrCRS)
 	}
 	crs.Name, _ = sr.AttrValue(root, 0)
 	crs.EPSG, _ = strconv.Atoi(sr.AuthorityCode(root))

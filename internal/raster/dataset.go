@@ -32,7 +32,7 @@ func (*Library) Open(path string) (*Dataset, error) {
 		return nil, err
 	}
 	if strings.EqualFold(filepath.Ext(path), ".zip") {
-		if err := zipOpens(path); err != nil {
+		if err := soundZip(path); err != nil {
 			return nil, err
 		}
 	}

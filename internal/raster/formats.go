@@ -2,6 +2,7 @@ package raster
 
 import (
 	"fmt"
+	"os"
 	"path/filepath"
 	"strings"
 )
@@ -46,4 +47,20 @@ func driverFor(path string) (string, error) {
 	}
 	return "", fmt.Errorf("%w: %q; GeoTIFF (.tif), SRTM (.hgt, .hgt.zip), USGS DEM (.dem) and Arc ASCII (.asc) are",
 		ErrFormat, filepath.Base(path))
+}
+
+// Beside names the file that lies beside a raster and says where its pixels
+// lie: the .prj of an Arc ASCII grid. It is empty where there is none.
+func Beside(path string) string {
+	ending := filepath.Ext(path)
+	if !strings.EqualFold(ending, ".asc") {
+		return ""
+	}
+	for _, other := range []string{".prj", ".PRJ"} {
+		beside := strings.TrimSuffix(path, ending) + other
+		if _, err := os.Stat(beside); err == nil {
+			return beside
+		}
+	}
+	return ""
 }

@@ -43,8 +43,8 @@ func (*Library) Version() string { return gdal.RELEASE_NAME }
 
 // guarded runs one GDAL call on one operating-system thread and, where the
 // call reports failure, returns GDAL's own message, which GDAL keeps for that
-// thread only. path is cut down to the file's name in the message: callers
-// see a raster's name, never where it lies.
+// thread only. path, if any, is cut down to the file's name in the message:
+// callers see a raster's name, never where it lies.
 func guarded(path string, call func() error) error {
 	runtime.LockOSThread()
 	defer runtime.UnlockOSThread()
@@ -57,5 +57,8 @@ func guarded(path string, call func() error) error {
 	if text == "" {
 		return err
 	}
-	return errors.New(strings.ReplaceAll(text, path, filepath.Base(path)))
+	if path != "" {
+		text = strings.ReplaceAll(text, path, filepath.Base(path))
+	}
+	return errors.New(text)
 }

@@ -65,10 +65,13 @@ func (c *chunks) at(ctx context.Context, e *entry, x, y int) (*chunk, error) {
 		return found, nil
 	}
 	found, err := c.cache.Get(ctx, key, otter.LoaderFunc[chunkKey, *chunk](c.read))
-	if err != nil {
-		return nil, &profile.UnreadableError{Raster: e.Name, Err: err}
+	switch {
+	case err == nil:
+		return found, nil
+	case ctx.Err() != nil:
+		return nil, ctx.Err()
 	}
-	return found, nil
+	return nil, &profile.UnreadableError{Raster: e.Name, Err: err}
 }
 
 // read decodes one chunk. Others may wait for it, so it does not stop when the

@@ -97,6 +97,9 @@ func (m *mosaic) cross(line geodesy.Line, geographic track, turns float64) (cros
 		err := m.with(m.crs, func(p *raster.Projector) error {
 			projected, err := newTrack(line.LengthM(), projectedPlane(line, m.crs, p))
 			onGrid = projected.onGrid(m.grid)
+			if m.crs.Geographic {
+				onGrid = onGrid.shifted(turns / m.grid.PixelX)
+			}
 			return err
 		})
 		if err != nil {
@@ -107,7 +110,23 @@ func (m *mosaic) cross(line geodesy.Line, geographic track, turns float64) (cros
 		return crossing{}, nil
 	}
 	middle := line.At(line.LengthM() / 2)
-	return crossing{mosaic: m, track: onGrid, pixelM: pixelMetres(m.crs, m.grid, middle.Lat())}, nil
+	first, last := &onGrid[0], &onGrid[len(onGrid)-1]
+	u0, v0 := first.at(first.from)
+	u1, v1 := last.at(last.to)
+	units := math.Hypot((u1-u0)*m.grid.PixelX, (v1-v0)*m.grid.PixelY)
+	pixelM := onGround(pixelMetres(m.crs, m.grid, middle.Lat()), m.crs, units, line.LengthM())
+	return crossing{mosaic: m, track: onGrid, pixelM: pixelM}, nil
+}
+
+// onGround corrects the size of a projected pixel where so many units of the
+// projection are so many metres of ground: a Mercator unit at 60 degrees is
+// half a metre. Up to a hundredth, as in UTM, a projection counts as true.
+func onGround(pixelM float64, crs raster.CRS, units, groundM float64) float64 {
+	stretch := units * crs.MetresPerUnit / groundM
+	if crs.Geographic || math.Abs(stretch-1) <= 0.01 {
+		return pixelM
+	}
+	return pixelM / stretch
 }
 
 // pixelMetres is the finer side of a pixel in metres at a latitude.
@@ -142,9 +161,12 @@ func (m *mosaic) under(t track) bool {
 func (m *mosaic) underChord(u0, v0, u1, v1 float64) bool {
 	shift := 0.0
 	if m.turn != 0 {
-		shift = -float64(m.turn) * math.Floor(u0/float64(m.turn))
+		// The turn in which the tiles begin, and the ones before and after: a
+		// chord may run into a tile from the end of a turn, and a tile may
+		// reach beyond it.
+		shift = -float64(m.turn) * (math.Floor(u0/float64(m.turn)) + 1)
 	}
-	for range 2 {
+	for range 3 {
 		touched := cells(int(math.Floor(min(u0, u1)+shift)), int(math.Floor(min(v0, v1))),
 			int(math.Ceil(max(u0, u1)+shift)), int(math.Ceil(max(v0, v1))))
 		for c := range touched {

@@ -17,6 +17,9 @@ type cursor struct {
 	i0, j0, columns, rows int
 	heights               []float32
 	tile                  int32
+	// The same as bounds for interpolation: its first pixel's column and row,
+	// and how far from it the last four pixels begin.
+	u0, v0, uEnd, vEnd float64
 
 	found []int32 // scratch
 }
@@ -32,19 +35,28 @@ const (
 // NaN where the mosaic has no height there, and the tile that the nearest
 // pixel belongs to.
 func (c *cursor) height(u, v float64) (float64, int32, error) {
-	i, j := int(math.Floor(u)), int(math.Floor(v))
-	a, b := i-c.i0, j-c.j0
-	if a >= 0 && b >= 0 && a+1 < c.columns && b+1 < c.rows {
-		at := b*c.columns + a
-		fx, fy := u-float64(i), v-float64(j)
-		upper, lower := c.heights[at:at+2:at+2], c.heights[at+c.columns:at+c.columns+2:at+c.columns+2]
-		top := float64(upper[0]) + fx*(float64(upper[1])-float64(upper[0]))
-		bottom := float64(lower[0]) + fx*(float64(lower[1])-float64(lower[0]))
-		if h := top + fy*(bottom-top); h == h {
-			return h, c.tile, nil
-		}
+	if h, ok := c.inside(u, v); ok {
+		return h, c.tile, nil
 	}
-	return c.corners(i, j, u-float64(i), v-float64(j))
+	i, j := math.Floor(u), math.Floor(v)
+	return c.corners(int(i), int(j), u-i, v-j)
+}
+
+// inside interpolates where all four pixels are known and lie in the chunk at
+// hand. It is small, so that the loop over the samples holds it inline.
+func (c *cursor) inside(u, v float64) (float64, bool) {
+	x, y := u-c.u0, v-c.v0
+	if !(x >= 0 && y >= 0 && x < c.uEnd && y < c.vEnd) {
+		return 0, false
+	}
+	i, j := int(x), int(y)
+	fx, fy := x-float64(i), y-float64(j)
+	at := j*c.columns + i
+	upper, lower := c.heights[at:at+2:at+2], c.heights[at+c.columns:at+c.columns+2]
+	top := float64(upper[0]) + fx*(float64(upper[1])-float64(upper[0]))
+	bottom := float64(lower[0]) + fx*(float64(lower[1])-float64(lower[0]))
+	h := top + fy*(bottom-top)
+	return h, h == h
 }
 
 // corners interpolates pixel by pixel: where the four lie in different chunks
@@ -134,5 +146,7 @@ func (c *cursor) fetch(n int32, i, j int) error {
 	c.i0, c.j0 = i-x+got.x, t.j+got.y
 	c.columns, c.rows, c.heights = got.width, got.height, got.heights
 	c.tile = n
+	c.u0, c.v0 = float64(c.i0), float64(c.j0)
+	c.uEnd, c.vEnd = float64(c.columns-1), float64(c.rows-1)
 	return nil
 }

@@ -24,11 +24,9 @@ type entry struct {
 }
 
 func newEntry(path, name string) *entry {
-	return &entry{
-		Raster:  profile.Raster{Name: name, Kind: kindOf(name)},
-		path:    path,
-		version: sync.OnceValues(func() (string, error) { return contentVersion(path) }),
-	}
+	e := &entry{Raster: profile.Raster{Name: name, Kind: kindOf(name)}, path: path}
+	e.version = sync.OnceValues(e.contentVersion)
+	return e
 }
 
 // describe copies what the raster declares to where callers see it.
@@ -58,19 +56,36 @@ func (e *entry) unchanged() error {
 // far more than telling two versions of one raster apart needs.
 const versionDigits = 16
 
-// contentVersion names the content of a file: the same bytes have the same
-// version on every machine, and no edit goes unnoticed.
-func contentVersion(path string) (string, error) {
-	f, err := os.Open(path) // #nosec G304 -- a file that the operator's own folder holds
-	if err != nil {
-		return "", fmt.Errorf("version of a raster: %w", err)
-	}
-	defer f.Close()
+// contentVersion names the content of the file that was loaded, and of the one
+// beside it that says where its pixels lie, if there is one: the same bytes
+// have the same version on every machine, and no edit goes unnoticed.
+func (e *entry) contentVersion() (string, error) {
 	h := sha256.New()
-	if _, err := io.Copy(h, f); err != nil {
-		return "", fmt.Errorf("version of a raster: %w", err)
+	for _, path := range []string{e.path, raster.Beside(e.path)} {
+		if path == "" {
+			continue
+		}
+		if err := copyFile(h, path); err != nil {
+			return "", fmt.Errorf("its version: %w", err)
+		}
+	}
+	if err := e.unchanged(); err != nil {
+		return "", err
 	}
 	return hex.EncodeToString(h.Sum(nil))[:versionDigits], nil
+}
+
+// copyFile copies a file's content. Its errors do not say where the file lies.
+func copyFile(to io.Writer, path string) error {
+	f, err := os.Open(path)
+	if err == nil {
+		defer f.Close()
+		_, err = io.Copy(to, f)
+	}
+	if where, ok := errors.AsType[*os.PathError](err); ok {
+		return where.Err
+	}
+	return err
 }
 
 // kindOf reads the kind from the file's name, where producers write it by

@@ -15,6 +15,7 @@ type handles struct {
 	places  chan struct{} // one token for each handle that may be in use
 
 	mu   sync.Mutex
+	open int      // in use and idle together
 	idle []handle // least recently used first
 }
 
@@ -40,6 +41,7 @@ func (h *handles) with(ctx context.Context, e *entry, use func(*raster.Dataset) 
 	if dataset == nil {
 		var err error
 		if dataset, err = h.library.Open(e.path); err != nil {
+			h.forget()
 			return err
 		}
 	}
@@ -48,6 +50,9 @@ func (h *handles) with(ctx context.Context, e *entry, use func(*raster.Dataset) 
 	return err
 }
 
+// takeIdle takes the raster's handle if one is idle. If none is, it counts one
+// that is about to be opened, and where that would be too many closes the one
+// that was used longest ago.
 func (h *handles) takeIdle(e *entry) *raster.Dataset {
 	h.mu.Lock()
 	defer h.mu.Unlock()
@@ -58,19 +63,26 @@ func (h *handles) takeIdle(e *entry) *raster.Dataset {
 			return found
 		}
 	}
+	if h.open == cap(h.places) { // fewer than that are in use, so one is idle
+		h.idle[0].dataset.Close()
+		h.idle = append(h.idle[:0], h.idle[1:]...)
+		h.open--
+	}
+	h.open++
 	return nil
 }
 
-// keepIdle puts the handle away and closes the one that was used longest ago
-// when there are too many.
+// forget uncounts a handle that could not be opened.
+func (h *handles) forget() {
+	h.mu.Lock()
+	defer h.mu.Unlock()
+	h.open--
+}
+
 func (h *handles) keepIdle(e *entry, dataset *raster.Dataset) {
 	h.mu.Lock()
 	defer h.mu.Unlock()
 	h.idle = append(h.idle, handle{e, dataset})
-	if len(h.idle) > cap(h.places) {
-		h.idle[0].dataset.Close()
-		h.idle = append(h.idle[:0], h.idle[1:]...)
-	}
 }
 
 func (h *handles) close() {

@@ -13,6 +13,7 @@ import (
 
 	"github.com/paulmach/orb"
 
+	"ridgehop/internal/geodesy"
 	"ridgehop/internal/raster"
 )
 
@@ -49,14 +50,22 @@ func Load(ctx context.Context, library *raster.Library, folders []string, option
 // scan looks through one folder.
 func (t *Terrain) scan(ctx context.Context, folder string, log *slog.Logger) ([]*entry, error) {
 	var usable []*entry
-	err := filepath.WalkDir(folder, func(path string, d fs.DirEntry, err error) error {
+	// A walk does not follow a link, not even the one that it starts from.
+	root, err := filepath.EvalSymlinks(folder)
+	if err != nil {
+		return nil, unlisted(folder, err)
+	}
+	err = filepath.WalkDir(root, func(path string, d fs.DirEntry, err error) error {
 		if err == nil {
 			err = ctx.Err()
+		}
+		if err == nil && path == root && !d.IsDir() {
+			err = errors.New("not a folder")
 		}
 		if err != nil || d.IsDir() || !raster.Recognised(path) {
 			return err
 		}
-		name, err := filepath.Rel(folder, path)
+		name, err := filepath.Rel(root, path)
 		if err != nil {
 			return err
 		}
@@ -74,10 +83,18 @@ func (t *Terrain) scan(ctx context.Context, folder string, log *slog.Logger) ([]
 		usable = append(usable, e)
 		return nil
 	})
-	if where, ok := errors.AsType[*os.PathError](err); ok {
-		return nil, fmt.Errorf("raster folder %s: %w", folder, where.Err)
+	if err != nil {
+		return nil, unlisted(folder, err)
 	}
-	return usable, err
+	return usable, nil
+}
+
+// unlisted says which folder could not be listed, and why, once.
+func unlisted(folder string, err error) error {
+	if where, ok := errors.AsType[*os.PathError](err); ok {
+		err = where.Err
+	}
+	return fmt.Errorf("raster folder %s: %w", folder, err)
 }
 
 // inspect opens a file, checks it, and reads its last block, which shows a file
@@ -100,36 +117,63 @@ func (t *Terrain) inspect(e *entry) error {
 	if err := dataset.Read(e.Width-1, e.Height-1, 1, 1, make([]float32, 1)); err != nil {
 		return err
 	}
-	if e.Bound, err = t.extent(e.info); err != nil {
-		return err
-	}
-	e.PixelM = pixelMetres(e.info.CRS, e.info.Grid, e.Bound.Center().Lat())
-	return nil
+	e.Bound, e.PixelM, err = t.extent(e.info)
+	return err
 }
 
-// extent is the box of longitudes and latitudes around a raster's outer edge.
-func (t *Terrain) extent(info raster.Info) (orb.Bound, error) {
+// extent is the box of longitudes and latitudes around a raster's outer edge,
+// and the finer side of a pixel in metres at its middle.
+func (t *Terrain) extent(info raster.Info) (orb.Bound, float64, error) {
 	g := info.Grid
 	right, bottom := g.Left+float64(info.Width)*g.PixelX, g.Top-float64(info.Height)*g.PixelY
+	edges := orb.Bound{Min: orb.Point{g.Left, bottom}, Max: orb.Point{right, g.Top}}
 	if info.CRS.WGS84 {
 		if math.Abs(g.Top) > 91 || math.Abs(bottom) > 91 || math.Abs(g.Left) > 361 || right-g.Left > 361 {
-			return orb.Bound{}, fmt.Errorf("%w: it spans longitudes %g to %g and latitudes %g to %g", raster.ErrGeoreference, g.Left, right, bottom, g.Top)
+			return orb.Bound{}, 0, fmt.Errorf("%w: it spans longitudes %g to %g and latitudes %g to %g", raster.ErrGeoreference, g.Left, right, bottom, g.Top)
 		}
-		return orb.Bound{Min: orb.Point{g.Left, bottom}, Max: orb.Point{right, g.Top}}, nil
+		return edges, pixelMetres(info.CRS, g, edges.Center().Lat()), nil
 	}
 	projector, err := t.library.NewProjector(info.CRS)
 	if err != nil {
-		return orb.Bound{}, err
+		return orb.Bound{}, 0, err
 	}
 	defer projector.Close()
-	x, y := edge(g.Left, bottom, right, g.Top)
+	bound, err := unprojected(projector, info.CRS, edges)
+	if err != nil {
+		return orb.Bound{}, 0, err
+	}
+	middle := edges.Center()
+	x, y := []float64{middle[0], middle[0] + g.PixelX}, []float64{middle[1], middle[1]}
+	if err := projector.Unproject(x, y); err != nil {
+		return orb.Bound{}, 0, err
+	}
+	step, err := geodesy.NewLine(orb.Point{x[0], y[0]}, orb.Point{x[1], y[1]})
+	if err != nil {
+		return orb.Bound{}, 0, err
+	}
+	return bound, onGround(pixelMetres(info.CRS, g, y[0]), info.CRS, g.PixelX, step.LengthM()), nil
+}
+
+// unprojected is the box of longitudes and latitudes around a rectangle.
+func unprojected(projector *raster.Projector, crs raster.CRS, edges orb.Bound) (orb.Bound, error) {
+	x, y := edge(edges.Min[0], edges.Min[1], edges.Max[0], edges.Max[1])
 	if err := projector.Unproject(x, y); err != nil {
 		return orb.Bound{}, err
 	}
-	b := orb.Bound{Min: orb.Point{x[0], y[0]}, Max: orb.Point{x[0], y[0]}}
+	start := x[0]
+	if crs.Geographic { // counted as the grid counts, which may be beyond 180
+		start = edges.Min[0] + math.Remainder(start-edges.Min[0], 360)
+	}
+	b := orb.Bound{Min: orb.Point{start, y[0]}, Max: orb.Point{start, y[0]}}
 	for i := range x {
-		lon := x[0] + math.Remainder(x[i]-x[0], 360)
-		b = b.Extend(orb.Point{lon, y[i]})
+		b = b.Extend(orb.Point{start + math.Remainder(x[i]-start, 360), y[i]})
+	}
+	for _, lat := range []float64{-90, 90} {
+		// Around a pole the edges do not show what they enclose.
+		x, y := []float64{0}, []float64{lat}
+		if err := projector.Project(x, y); err == nil && !crs.Geographic && edges.Contains(orb.Point{x[0], y[0]}) {
+			b = b.Extend(orb.Point{-180, lat}).Extend(orb.Point{180, lat})
+		}
 	}
 	return b, nil
 }

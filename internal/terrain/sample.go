@@ -62,7 +62,7 @@ func space(lengthM, spacingM float64, into *profile.Profile) error {
 	}
 	if intervals >= profile.MaxSamples {
 		return fmt.Errorf("%w: a step of %.3g m makes %.0f of them; at most %d are taken: a spacing of %.3g m or more fits this path",
-			profile.ErrTooManySamples, lengthM/intervals, intervals+1, profile.MaxSamples, lengthM/(profile.MaxSamples-1)*1.0005)
+			profile.ErrTooManySamples, lengthM/intervals, intervals+1, profile.MaxSamples, roundedUp(lengthM/(profile.MaxSamples-1)))
 	}
 	n := int(intervals) + 1
 	into.Resize(n)
@@ -74,6 +74,12 @@ func space(lengthM, spacingM float64, into *profile.Profile) error {
 	}
 	into.DistanceM[n-1] = lengthM
 	return nil
+}
+
+// roundedUp is the least number of three digits that is no less than v > 0.
+func roundedUp(v float64) float64 {
+	digit := math.Pow(10, math.Floor(math.Log10(v))-2)
+	return math.Ceil(v/digit) * digit
 }
 
 // sampler fills one profile from one mosaic after the other.
@@ -93,26 +99,31 @@ func (s *sampler) fill(ctx context.Context, c crossing) error {
 		return err
 	}
 	cur := cursor{ctx: ctx, m: c.mosaic, chunks: s.terrain.chunks, tile: -1}
-	distances, ground, sources := s.into.DistanceM, s.into.GroundM, s.into.SourceIndex
+	distances, ground := s.into.DistanceM, s.into.GroundM
 	lastTile, source := int32(-1), int16(-1)
 	i := 0
-	for _, p := range c.track {
+	for k := range c.track {
+		p := &c.track[k]
 		for ; i < len(distances) && distances[i] <= p.to; i++ {
 			if ground[i] == ground[i] {
 				continue
 			}
 			u, v := p.at(distances[i])
-			h, tile, err := cur.height(u, v)
-			if err != nil {
-				return err
-			}
-			if h != h {
-				continue
+			h, ok := cur.inside(u, v)
+			tile := cur.tile
+			if !ok {
+				var err error
+				if h, tile, err = cur.height(u, v); err != nil {
+					return err
+				}
+				if h != h {
+					continue
+				}
 			}
 			if tile != lastTile {
 				lastTile, source = tile, s.source(c.mosaic.tiles[tile].entry)
 			}
-			ground[i], sources[i] = h, source
+			ground[i], s.into.SourceIndex[i] = h, source
 			s.known++
 		}
 	}

@@ -19,6 +19,7 @@ type track []piece
 // x = x[0] + x[1] t + x[2] t^2 + x[3] t^3, and y alike.
 type piece struct {
 	from, to float64
+	perM     float64 // 1/(to-from)
 	x, y     [4]float64
 }
 
@@ -50,7 +51,7 @@ func fitTrack(done track, from, to float64, exact plane, depth int) (track, erro
 	if err != nil {
 		return done, err
 	}
-	p := piece{from: from, to: to, x: throughKnots(x[0], x[1], x[2], x[3]), y: throughKnots(y[0], y[1], y[2], y[3])}
+	p := piece{from: from, to: to, perM: 1 / (to - from), x: throughKnots(x[0], x[1], x[2], x[3]), y: throughKnots(y[0], y[1], y[2], y[3])}
 	px, py := p.at(at[4])
 	if off := math.Hypot((px-x[4])*metresX, (py-y[4])*metresY); off <= trackToleranceM || depth == maxTrackDepth {
 		return append(done, p), nil
@@ -73,7 +74,7 @@ func throughKnots(f0, f1, f2, f3 float64) [4]float64 {
 }
 
 func (p *piece) at(d float64) (x, y float64) {
-	t := (d - p.from) / (p.to - p.from)
+	t := (d - p.from) * p.perM
 	return p.x[0] + t*(p.x[1]+t*(p.x[2]+t*p.x[3])), p.y[0] + t*(p.y[1]+t*(p.y[2]+t*p.y[3]))
 }
 
@@ -93,18 +94,24 @@ func geographicPlane(line geodesy.Line) plane {
 	}
 }
 
-// projectedPlane is the plane of a CRS along a line.
+// projectedPlane is the plane of a CRS along a line. Where that counts degrees
+// they do not jump at the antimeridian, as those of geographicPlane do not.
 func projectedPlane(line geodesy.Line, crs raster.CRS, projector *raster.Projector) plane {
 	geographic := geographicPlane(line)
+	start := line.At(0).Lon()
 	return func(distances, x, y []float64) (float64, float64, error) {
 		metresX, metresY, _ := geographic(distances, x, y)
 		for i := range x {
 			x[i] = math.Remainder(x[i], 360)
 		}
+		err := projector.Project(x, y)
 		if !crs.Geographic {
-			metresX, metresY = crs.MetresPerUnit, crs.MetresPerUnit
+			return crs.MetresPerUnit, crs.MetresPerUnit, err
 		}
-		return metresX, metresY, projector.Project(x, y)
+		for i := range x {
+			x[i] = start + math.Remainder(x[i]-start, 360)
+		}
+		return metresX, metresY, err
 	}
 }
 
