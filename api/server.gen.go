@@ -507,7 +507,7 @@ type AssessmentRequest struct {
 	// Rasters Names of the rasters to use; all that are loaded, if left out.
 	Rasters *[]string `json:"rasters,omitempty"`
 
-	// SpacingM Step between samples, metres. Left out, it follows the finest pixel on the path. At most 20,000 samples are taken.
+	// SpacingM Step between samples, metres. Left out, it is a quarter of the finest pixel on the path, or up to a whole one on long paths. At most 20,000 samples are taken.
 	SpacingM *float64 `json:"spacing_m,omitempty"`
 }
 

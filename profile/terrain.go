@@ -20,7 +20,7 @@ type Terrain interface {
 // Sampling says how a path is sampled.
 type Sampling struct {
 	// SpacingM is the wanted step in metres; 0 leaves it to the finest pixel
-	// on the path. The step used divides the path evenly and is never larger.
+	// on the path, of which it is then a fraction. The step used divides the path evenly and is never larger.
 	SpacingM float64
 	// Rasters limits the terrain to the rasters of these names; empty is all.
 	Rasters []string

@@ -91,5 +91,6 @@ func (h *handles) close() {
 	for _, one := range h.idle {
 		one.dataset.Close()
 	}
+	h.open -= len(h.idle)
 	h.idle = nil
 }

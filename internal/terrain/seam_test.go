@@ -207,3 +207,23 @@ func checkSources(t testing.TB, p *profile.Profile) {
 		}
 	}
 }
+
+// From B to A there are the same heights as from A to B.
+func TestBackIsTheSame(t *testing.T) {
+	for _, c := range seamCases(t) {
+		terrain := loadedGrids(t, cuts(c.whole, 1)["four"])
+		for _, path := range c.paths(t) {
+			there, back := sampled(t, terrain, path, profile.Sampling{SpacingM: 20}), sampled(t, terrain, pathOf(t, path.B, path.A), profile.Sampling{SpacingM: 20})
+			n := len(there.GroundM)
+			if len(back.GroundM) != n {
+				t.Fatalf("%s: got %d samples back, want %d", c.name, len(back.GroundM), n)
+			}
+			// Twice 4 mm of ground on slopes of up to 256 m in 30.
+			for i, want := range there.GroundM {
+				if got := back.GroundM[n-1-i]; !near(got, want, 0.14) {
+					t.Fatalf("%s: sample %d: got %g back, want %g", c.name, i, got, want)
+				}
+			}
+		}
+	}
+}

@@ -29,10 +29,11 @@ func TestSpacing(t *testing.T) {
 		intervals int
 		pixelM    float64
 	}{
-		{"by the finest pixel", 5000, 0, nil, 500, 10},
-		{"by the finest pixel, rounded up", 5001, 0, nil, 501, 10},
-		{"by the finest pixel of those named", 4500, 0, []string{"coarse.asc"}, 50, 90},
-		{"no fewer than the least number", 100, 0, nil, profile.MinIntervals, 10},
+		{"by the finest pixel", 5000, 0, nil, 2000, 10},
+		{"by the finest pixel, rounded up", 5001, 0, nil, 2001, 10},
+		{"by the finest pixel of those named", 4500, 0, []string{"coarse.asc"}, 200, 90},
+		{"as fine as a long path allows", 120e3, 0, nil, profile.MaxSamples - 1, 10},
+		{"no fewer than the least number", 30, 0, nil, profile.MinIntervals, 10},
 		{"no fewer than the least number, on a metre", 1, 0, nil, profile.MinIntervals, 10},
 		{"as the caller wants", 5000, 100, nil, 50, 10},
 		{"as the caller wants, rounded up", 5000, 99, nil, 51, 10},
