@@ -669,7 +669,7 @@ type CriteriaSet string
 
 // Criterion defines model for Criterion.
 type Criterion struct {
-	// F1Fraction Clearance required
+	// F1Fraction Clearance required, as a fraction of the first Fresnel radius.
 	F1Fraction float64 `json:"f1_fraction"`
 
 	// K The k-factor.
