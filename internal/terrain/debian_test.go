@@ -3,7 +3,6 @@ package terrain
 import (
 	"archive/zip"
 	"encoding/binary"
-	"fmt"
 	"io"
 	"math"
 	"math/rand/v2"
@@ -186,5 +185,5 @@ func TestPublishedUndulations(t *testing.T) {
 			worst = max(worst, math.Abs(got-c.want))
 		}
 	}
-	t.Log(fmt.Sprintf("%.3f m off at most", worst))
+	t.Logf("%.3f m off at most", worst)
 }
