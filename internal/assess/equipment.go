@@ -44,23 +44,18 @@ func (e *Equipment) resolveTerminal(ctx context.Context, t *TerminalRequest, poi
 	if err := resolveModel(ctx, e.Radios, t.RadioName, &t.Radio, pointer, "radio"); err != nil {
 		return err
 	}
-	if err := resolveModel(ctx, e.Antennas, t.AntennaName, &t.Antenna, pointer, "antenna"); err != nil {
-		return err
-	}
-	if err := invalidFaults(pointer+"/radio_model/", t.Radio.Validate()); err != nil {
-		return err
-	}
-	return invalidFaults(pointer+"/antenna_model/", t.Antenna.Validate())
+	return resolveModel(ctx, e.Antennas, t.AntennaName, &t.Antenna, pointer, "antenna")
 }
 
-// resolveModel finds the model of a name, unless the request brings one.
-func resolveModel[T any](ctx context.Context, register *Register[T], name string, model **T, pointer, word string) error {
+// resolveModel finds the model of a name, or checks the one that the request
+// brings. What a register holds was checked when it came in.
+func resolveModel[T interface{ Validate() []radio.Fault }](ctx context.Context, register *Register[T], name string, model **T, pointer, word string) error {
 	field := pointer + "/" + word
 	switch {
 	case *model != nil && name != "":
 		return invalid(field, "is named, and a model is given beside it: give one or the other")
 	case *model != nil:
-		return nil
+		return invalidFaults(field+"_model/", (**model).Validate())
 	case name == "":
 		return invalid(field, "is missing: name one of /v1/%ss, or describe one as %s_model", word, word)
 	case register == nil:

@@ -56,7 +56,7 @@ func (s *Service) judgeRadio(ctx context.Context, a *Assessment, ws *profile.Wor
 // radioLink is the question to the radio half.
 func (a *Assessment) radioLink(ws *profile.Workspace) (radio.Link, error) {
 	r, path := a.Request.Radio, a.Link.Path
-	diffraction, err := profile.MedianDiffractionDB(&a.Link, &a.Profile, ws)
+	diffraction, err := a.medianDiffractionDB(ws)
 	link := radio.Link{
 		FrequencyGHz: a.Request.FrequencyGHz, LengthM: path.LengthM,
 		Path: radio.PathFigures{
@@ -75,6 +75,17 @@ func (a *Assessment) radioLink(ws *profile.Workspace) (radio.Link, error) {
 		link.Candidates = []Antenna{}
 	}
 	return link, err
+}
+
+// medianDiffractionDB is the loss at the median k, which most criteria sets
+// have asked for already.
+func (a *Assessment) medianDiffractionDB(ws *profile.Workspace) (float64, error) {
+	for _, d := range a.Judgement.Diffraction {
+		if d.K == profile.MedianK {
+			return d.LossDB, nil
+		}
+	}
+	return profile.MedianDiffractionDB(&a.Link, &a.Profile, ws)
 }
 
 func (t *TerminalRequest) terminal() radio.Terminal {

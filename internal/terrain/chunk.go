@@ -24,7 +24,7 @@ type chunkKey struct {
 
 // chunkPixels is the least size that a chunk aims for: big enough that a path
 // crosses few of them, small enough that a cold path reads little.
-const chunkPixels = 64 << 10
+const chunkPixels = 256 << 10
 
 // chunkSize is a whole number of GDAL blocks each way, so that every block is
 // decoded once.
