@@ -54,6 +54,7 @@ func budget(b *assess.Budget) Budget {
 		Overload: Overload{
 			MaxInputDbm: b.Overload.MaxInputDBM, ExcessDb: level(b.Overload.ExcessDB),
 			AttenuationDb: level(b.Overload.AttenuationDB), EnhancementDb: level(b.Overload.EnhancementDB),
+			EnhancementAtMost: b.Overload.EnhancementAtMost,
 		},
 	}
 	for _, l := range b.Lines {

@@ -5,6 +5,7 @@ import (
 	"context"
 	"crypto/sha256"
 	"encoding/hex"
+	"encoding/json"
 	"net/http"
 	"strings"
 
@@ -53,7 +54,12 @@ func (h *handlers) GetAssessment(ctx context.Context, request GetAssessmentReque
 	if err != nil {
 		return nil, err
 	}
-	out.body, err = Encode(Answer(judged, true))
+	var answer Assessment
+	if err := json.Unmarshal(kept.Answer, &answer); err != nil {
+		return nil, err
+	}
+	answer.Samples = samplesOf(judged)
+	out.body, err = Encode(answer)
 	return out, err
 }
 

@@ -6,7 +6,9 @@ import (
 	"errors"
 	"fmt"
 	"io"
+	"strconv"
 	"strings"
+	"unicode/utf8"
 
 	"github.com/getkin/kin-openapi/openapi3"
 
@@ -26,10 +28,18 @@ func (c *Contract) DecodeAssessmentRequest(body []byte) (AssessmentRequest, erro
 
 // decode reads a body that a schema of the contract describes.
 func (c *Contract) decode(schema string, body []byte, into any) error {
+	body = bytes.TrimPrefix(body, []byte("\ufeff")) // some editors put a byte order mark first
 	if err := c.check(schema, body); err != nil {
 		return err
 	}
-	if err := json.Unmarshal(body, into); err != nil {
+	err := json.Unmarshal(body, into)
+	if wrong, ok := errors.AsType[*json.UnmarshalTypeError](err); ok {
+		fields := []FieldError{{
+			Pointer: "/" + strings.ReplaceAll(wrong.Field, ".", "/"), Detail: "must be a whole number, without decimals",
+		}}
+		return invalid.problem("%s %s", fields[0].Pointer, fields[0].Detail).withErrors(fields)
+	}
+	if err != nil {
 		return malformed.problem("%v", err)
 	}
 	return nil
@@ -37,6 +47,12 @@ func (c *Contract) decode(schema string, body []byte, into any) error {
 
 // check holds a body against a schema of the contract.
 func (c *Contract) check(schema string, body []byte) error {
+	if !utf8.Valid(body) {
+		return malformed.problem("The body is not UTF-8.")
+	}
+	if name := repeatedName(body); name != "" {
+		return malformed.problem("The field %s stands twice in one object.", strconv.Quote(shortened(name)))
+	}
 	decoder := json.NewDecoder(bytes.NewReader(body))
 	var value any
 	err := decoder.Decode(&value)
@@ -62,6 +78,9 @@ func (c *Contract) check(schema string, body []byte) error {
 func whereInJSON(body []byte, err error) string {
 	if len(bytes.TrimSpace(body)) == 0 {
 		return "The body is empty; send one JSON object."
+	}
+	if _, ok := errors.AsType[*json.UnmarshalTypeError](err); ok {
+		return "A number is too large to be read."
 	}
 	var syntax *json.SyntaxError
 	if !errors.As(err, &syntax) {
@@ -100,9 +119,12 @@ func faultOf(fault *openapi3.SchemaError) assess.FieldError {
 	pointer := pointerOf(fault.JSONPointer())
 	schema := fault.Schema
 	detail := fault.Reason
+	if fault.Value == nil {
+		return assess.FieldError{Pointer: pointer, Detail: "is null; leave it out or give a value"}
+	}
 	switch fault.SchemaField {
 	case "properties":
-		name := quoted(fault.Reason)
+		name := shortened(quoted(fault.Reason))
 		return assess.FieldError{Pointer: pointer + "/" + escapePointer(name), Detail: unknownField(name, schema)}
 	case "required":
 		detail = "is missing"
@@ -118,6 +140,15 @@ func faultOf(fault *openapi3.SchemaError) assess.FieldError {
 		detail = fmt.Sprintf("has the wrong length; it takes %d to %s characters", schema.MinLength, countWords(schema.MaxLength))
 	}
 	return assess.FieldError{Pointer: pointer, Detail: detail}
+}
+
+// shortened keeps what a caller made up from filling the answer.
+func shortened(text string) string {
+	const most = 60
+	if runes := []rune(text); len(runes) > most {
+		return string(runes[:most]) + "..."
+	}
+	return text
 }
 
 func pointerOf(path []string) string {

@@ -23,7 +23,7 @@ import (
 const requestIDHeader = "Request-Id"
 
 // bodyLimit is maxBodyBytes as the middleware wants it.
-const bodyLimit = "4M"
+const bodyLimit = "4MiB"
 
 // identified gives each request an id.
 func identified(next echo.HandlerFunc) echo.HandlerFunc {
@@ -154,7 +154,13 @@ func (b binder) Bind(into any, c echo.Context) error {
 	if err != nil || kind != echo.MIMEApplicationJSON {
 		return mediaType.problem("Content-Type is %s; send the request as application/json.", strconv.Quote(given))
 	}
+	if packed := c.Request().Header.Get(echo.HeaderContentEncoding); packed != "" {
+		return mediaType.problem("Content-Encoding is %s; send the body as it is.", strconv.Quote(packed))
+	}
 	body, err := io.ReadAll(c.Request().Body)
+	if _, limit := errors.AsType[*echo.HTTPError](err); err != nil && !limit {
+		return badRequest.problem("The body broke off before its end.")
+	}
 	if err != nil {
 		return err
 	}

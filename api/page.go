@@ -2,6 +2,7 @@ package api
 
 import (
 	"bytes"
+	"cmp"
 	_ "embed"
 	"fmt"
 	"html/template"
@@ -18,7 +19,7 @@ var pageTemplate string
 // page is the contract as a page for people, which needs no network. It is
 // made once.
 func (c *Contract) page() ([]byte, error) {
-	t, err := template.New("page").Parse(pageTemplate)
+	t, err := template.New("page").Funcs(template.FuncMap{"marked": marked}).Parse(pageTemplate)
 	if err != nil {
 		return nil, fmt.Errorf("page of the contract: %w", err)
 	}
@@ -27,6 +28,19 @@ func (c *Contract) page() ([]byte, error) {
 		return nil, fmt.Errorf("page of the contract: %w", err)
 	}
 	return out.Bytes(), nil
+}
+
+// marked sets what stands between backticks as code.
+func marked(text string) template.HTML {
+	parts := strings.Split(template.HTMLEscapeString(text), "`")
+	var out strings.Builder
+	for i, part := range parts {
+		if i%2 == 1 && i < len(parts)-1 {
+			part = "<code>" + part + "</code>"
+		}
+		out.WriteString(part)
+	}
+	return template.HTML(out.String()) //nolint:gosec // escaped above
 }
 
 // pageView is what the page shows.
@@ -39,6 +53,7 @@ type pageView struct {
 
 type operationView struct {
 	Method, Path, Summary, Description string
+	tag                                string
 	Parameters                         []fieldView
 	Body                               string
 	Responses                          []responseView
@@ -72,7 +87,14 @@ func (c *Contract) view() pageView {
 			}
 		}
 	}
-	slices.SortFunc(v.Operations, func(a, b operationView) int { return strings.Compare(a.Path+a.Method, b.Path+b.Method) })
+	// In the order of the contract's tags, the main job first.
+	order := map[string]int{}
+	for i, tag := range c.doc.Tags {
+		order[tag.Name] = i
+	}
+	slices.SortStableFunc(v.Operations, func(a, b operationView) int {
+		return cmp.Or(cmp.Compare(order[a.tag], order[b.tag]), strings.Compare(a.Path, b.Path), strings.Compare(b.Method, a.Method))
+	})
 	for _, name := range sortedNames(c.doc.Components.Schemas) {
 		v.Schemas = append(v.Schemas, viewSchema(name, c.schema(name)))
 	}
@@ -84,6 +106,9 @@ func (c *Contract) view() pageView {
 
 func viewOperation(method, path string, o *openapi3.Operation) operationView {
 	v := operationView{Method: method, Path: path, Summary: o.Summary, Description: o.Description}
+	if len(o.Tags) > 0 {
+		v.tag = o.Tags[0]
+	}
 	for _, p := range o.Parameters {
 		f := viewField(p.Value.Name, p.Value.Schema, p.Value.Required)
 		f.Description = p.Value.Description

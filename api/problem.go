@@ -85,6 +85,8 @@ func problemOf(err error) *ProblemError {
 		return conflict.problem("%v.", err)
 	case errors.Is(err, store.ErrUnavailable):
 		return unavailable.problem("%v", err)
+	case errors.Is(err, context.Canceled):
+		return tooSlow.problem("The caller hung up before the answer was ready.")
 	case errors.Is(err, context.DeadlineExceeded):
 		return tooSlow.problem("The request was given up after %v.", requestTime)
 	case errors.As(err, &fromRouter):

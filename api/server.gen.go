@@ -462,7 +462,7 @@ type Assessment struct {
 	// Clearance How each criterion fares.
 	Clearance []Clearance `json:"clearance"`
 
-	// Obstructions The stretches that miss a criterion, each named by its worst point, from A to B.
+	// Obstructions The stretches that miss a criterion, each named by its worst point; by criterion, and from A to B.
 	Obstructions []Obstruction `json:"obstructions"`
 
 	// Raise The least extra antenna height that meets every criterion. Null where none up to the cap does, or where missing data keeps it from being known.
@@ -947,7 +947,7 @@ type Modulation struct {
 	// BandwidthMhz Occupied bandwidth.
 	BandwidthMhz float64 `json:"bandwidth_mhz"`
 
-	// MaxPowerDbm The most power in it; left out or 0, the radio's own.
+	// MaxPowerDbm The most power in it; left out, the radio's own.
 	MaxPowerDbm *float64 `json:"max_power_dbm,omitempty"`
 }
 
@@ -1102,6 +1102,9 @@ type Overload struct {
 
 	// EnhancementDb By how much multipath lifts the level for 0.01 % of the worst month (P.530-19 2.3.3).
 	EnhancementDb *float64 `json:"enhancement_db"`
+
+	// EnhancementAtMost It is less than that.
+	EnhancementAtMost bool `json:"enhancement_at_most"`
 }
 
 // Path defines model for Path.
@@ -1907,6 +1910,20 @@ func (response GetLive500ApplicationProblemPlusJSONResponse) VisitGetLiveRespons
 	return err
 }
 
+type GetLive503ApplicationProblemPlusJSONResponse Problem
+
+func (response GetLive503ApplicationProblemPlusJSONResponse) VisitGetLiveResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(503)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
 type GetReadyRequestObject struct {
 }
 
@@ -1991,6 +2008,20 @@ func (response ListAntennas500ApplicationProblemPlusJSONResponse) VisitListAnten
 	}
 	w.Header().Set("Content-Type", "application/problem+json")
 	w.WriteHeader(500)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ListAntennas503ApplicationProblemPlusJSONResponse Problem
+
+func (response ListAntennas503ApplicationProblemPlusJSONResponse) VisitListAntennasResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(503)
 	_, err := buf.WriteTo(w)
 	return err
 }
@@ -2253,6 +2284,20 @@ func (response GetAntenna500ApplicationProblemPlusJSONResponse) VisitGetAntennaR
 	return err
 }
 
+type GetAntenna503ApplicationProblemPlusJSONResponse Problem
+
+func (response GetAntenna503ApplicationProblemPlusJSONResponse) VisitGetAntennaResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(503)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
 type CreateAssessmentRequestObject struct {
 	Body *CreateAssessmentJSONRequestBody
 }
@@ -2460,6 +2505,20 @@ func (response GetAssessment500ApplicationProblemPlusJSONResponse) VisitGetAsses
 	return err
 }
 
+type GetAssessment503ApplicationProblemPlusJSONResponse Problem
+
+func (response GetAssessment503ApplicationProblemPlusJSONResponse) VisitGetAssessmentResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(503)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
 type GetAssessmentSVGRequestObject struct {
 	Id     AssessmentId `json:"id"`
 	Params GetAssessmentSVGParams
@@ -2535,6 +2594,20 @@ func (response GetAssessmentSVG500ApplicationProblemPlusJSONResponse) VisitGetAs
 	return err
 }
 
+type GetAssessmentSVG503ApplicationProblemPlusJSONResponse Problem
+
+func (response GetAssessmentSVG503ApplicationProblemPlusJSONResponse) VisitGetAssessmentSVGResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(503)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
 type ListRadiosRequestObject struct {
 }
 
@@ -2568,6 +2641,20 @@ func (response ListRadios500ApplicationProblemPlusJSONResponse) VisitListRadiosR
 	}
 	w.Header().Set("Content-Type", "application/problem+json")
 	w.WriteHeader(500)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ListRadios503ApplicationProblemPlusJSONResponse Problem
+
+func (response ListRadios503ApplicationProblemPlusJSONResponse) VisitListRadiosResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(503)
 	_, err := buf.WriteTo(w)
 	return err
 }
@@ -2830,6 +2917,20 @@ func (response GetRadio500ApplicationProblemPlusJSONResponse) VisitGetRadioRespo
 	return err
 }
 
+type GetRadio503ApplicationProblemPlusJSONResponse Problem
+
+func (response GetRadio503ApplicationProblemPlusJSONResponse) VisitGetRadioResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(503)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
 type ListRastersRequestObject struct {
 }
 
@@ -2863,6 +2964,20 @@ func (response ListRasters500ApplicationProblemPlusJSONResponse) VisitListRaster
 	}
 	w.Header().Set("Content-Type", "application/problem+json")
 	w.WriteHeader(500)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ListRasters503ApplicationProblemPlusJSONResponse Problem
+
+func (response ListRasters503ApplicationProblemPlusJSONResponse) VisitListRastersResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(503)
 	_, err := buf.WriteTo(w)
 	return err
 }

@@ -76,6 +76,8 @@ func typeWords(schema *openapi3.Schema) string {
 		return "a list"
 	case schema.Type.Is(openapi3.TypeObject):
 		return "an object"
+	case schema.Type.Is(openapi3.TypeBoolean):
+		return "true or false"
 	}
 	return fmt.Sprintf("of type %v", schema.Type.Slice())
 }
@@ -102,7 +104,7 @@ func rangeWords(schema *openapi3.Schema) string {
 
 // unitHint recognises a frequency that was given in MHz.
 func unitHint(pointer string, value any) string {
-	if f, ok := value.(float64); ok && strings.HasSuffix(pointer, "frequency_ghz") && f > 100 && f <= 100_000 {
+	if f, ok := value.(float64); ok && strings.HasSuffix(pointer, "frequency_ghz") && f >= 400 && f <= 100_000 {
 		return fmt.Sprintf(" GHz: %v MHz would be %v", f, f/1000)
 	}
 	return ""

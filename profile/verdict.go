@@ -61,7 +61,7 @@ func (r Reason) Detail() string {
 			c.K, c.MinRatio, c.ClearanceM, c.AtM, c.F1Fraction)
 	case ReasonClearanceShort:
 		return fmt.Sprintf("At k %.3g the clearance falls to %.2f F1 (%.1f m at %.0f m from A); %.2g F1, %.1f m, is required there.",
-			c.K, c.MinRatio, c.ClearanceM, c.AtM, c.F1Fraction, c.F1Fraction*c.F1M)
+			c.K, math.Floor(100*c.MinRatio)/100, c.ClearanceM, c.AtM, c.F1Fraction, c.F1Fraction*c.F1M)
 	case ReasonLineCut:
 		return fmt.Sprintf("At k %.3g the ground or its cover rises %.1f m above the line between the antennas, at %.0f m from A.",
 			c.K, -c.ClearanceM, c.AtM)

@@ -3,7 +3,6 @@ package main
 import (
 	"context"
 	"errors"
-	"fmt"
 
 	"ridgehop/internal/assess"
 	"ridgehop/internal/store"
@@ -35,9 +34,9 @@ func (s shelf) DropEntry(ctx context.Context, kind, name string) error {
 func inWords(err error) error {
 	switch {
 	case errors.Is(err, store.ErrNotFound):
-		return fmt.Errorf("%w: %w", assess.ErrNoEntry, err)
+		return assess.ErrNoEntry
 	case errors.Is(err, store.ErrExists):
-		return fmt.Errorf("%w: %w", assess.ErrNameTaken, err)
+		return assess.ErrNameTaken
 	}
 	return err
 }

@@ -5,6 +5,7 @@ import (
 	"context"
 	"fmt"
 	"io"
+	"math"
 	"os"
 	"path/filepath"
 	"strings"
@@ -92,14 +93,17 @@ func toRaise(a answer) string {
 	case *both > anyMast:
 		return "beyond any mast: choose another path"
 	}
-	ways := []string{fmt.Sprintf("raise both ends %.1f m", *both)}
+	ways := []string{fmt.Sprintf("raise both ends %.1f m", up(*both))}
 	for _, one := range []struct {
 		end string
 		m   *float64
 	}{{"A", a.Raise.AM}, {"B", a.Raise.BM}} {
 		if one.m != nil && *one.m <= anyMast {
-			ways = append(ways, fmt.Sprintf("%s alone %.1f m", one.end, *one.m))
+			ways = append(ways, fmt.Sprintf("%s alone %.1f m", one.end, up(*one.m)))
 		}
 	}
 	return strings.Join(ways, ", or ")
 }
+
+// up rounds up to a tenth, so that the raise as printed is enough.
+func up(metres float64) float64 { return math.Ceil(metres*10) / 10 }

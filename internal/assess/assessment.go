@@ -34,7 +34,7 @@ type Assessment struct {
 }
 
 // identify computes the id: a hash of the canonical request, the versions of
-// the rasters that it rests on, and the engine's version.
+// the rasters that it rests on, how they were sampled, and the engine's version.
 func (a *Assessment) identify() error {
 	var asked bytes.Buffer
 	if err := json.NewEncoder(&asked).Encode(a.Request); err != nil {
@@ -43,6 +43,7 @@ func (a *Assessment) identify() error {
 	for _, s := range a.Profile.Sources {
 		fmt.Fprintf(&asked, "%s %s\n", s.Name, s.Version)
 	}
+	fmt.Fprintf(&asked, "%d samples, step %v, pixel %v\n", len(a.Profile.DistanceM), a.Profile.SpacingM, a.Profile.PixelM)
 	fmt.Fprintf(&asked, "engine %s\n", a.Engine)
 	sum := sha256.Sum256(asked.Bytes())
 	digest := base32.StdEncoding.WithPadding(base32.NoPadding).EncodeToString(sum[:])

@@ -2,6 +2,7 @@ package assess
 
 import (
 	"fmt"
+	"math"
 
 	"ridgehop/profile"
 )
@@ -39,6 +40,30 @@ func widestGapM(points []Point) float64 {
 	return widest
 }
 
+// fineShare of a pixel is the step up to which little hides between samples;
+// it is that of the default spacing, and a little for its rounding.
+const fineShare = 0.26
+
+// seaFloorM is below what height terrain is more likely under water than dry.
+// Common practice, no source.
+const seaFloorM = -10.0
+
+func lowestM(p *profile.Profile) float64 {
+	lowest := 0.0
+	for _, h := range p.GroundM {
+		lowest = min(lowest, known(h))
+	}
+	return lowest
+}
+
+// known is a height, or 0 for a void.
+func known(h float64) float64 {
+	if math.IsNaN(h) {
+		return 0
+	}
+	return h
+}
+
 // obstacleUncertaintyGHz is the frequency above which P.530-19 section 2.2.2
 // says that the uncertainty of obstacle heights counts.
 const obstacleUncertaintyGHz = 13.0
@@ -50,6 +75,9 @@ func (a *Assessment) cautions() []Caution {
 	out := a.Request.cautions(&a.Profile)
 	if a.Radio == nil {
 		return append(out, standing()...)
+	}
+	if target := a.Request.Radio.Target; target.MarginDB == 0 && target.AvailabilityPercent == 0 {
+		out = append(out, Caution{"no_target", "Neither a margin nor an availability was asked for: a level at the threshold itself counts as enough."})
 	}
 	for _, c := range a.Radio.Report.Cautions {
 		out = append(out, Caution{c.Code, c.Detail})
@@ -76,7 +104,13 @@ func (r Request) cautions(p *profile.Profile) []Caution {
 	if kinds[profile.KindGround] && kinds[profile.KindSurface] {
 		add("raster_kinds_mixed", "Part of the path rests on bare earth and part on a surface with roofs and trees.")
 	}
-	if p.PixelM > 0 && p.SpacingM > 1.5*p.PixelM {
+	if lowest := lowestM(p); lowest < seaFloorM {
+		add("below_sea_level", "The terrain lies down to %.0f m below sea level: where that is the floor of water, its surface counts instead.", -lowest)
+	}
+	if kinds[profile.KindSurface] && (r.A.HeightAbove == AboveGround || r.B.HeightAbove == AboveGround) {
+		add("height_above_surface", "The raster is a surface: an antenna height above ground counts from its top, which may be a roof or a tree.")
+	}
+	if p.PixelM > 0 && p.SpacingM > fineShare*p.PixelM {
 		add("coarse_spacing", "Samples are %.3g m apart but pixels %.3g m: a ridge may lie unseen between samples.", p.SpacingM, p.PixelM)
 	}
 	if gap := widestGapM(r.Profile); gap > sparseGapM {

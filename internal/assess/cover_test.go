@@ -2,6 +2,7 @@ package assess
 
 import (
 	"fmt"
+	"math"
 	"testing"
 
 	"github.com/google/go-cmp/cmp"
@@ -19,7 +20,7 @@ func TestCoverByKindOfRaster(t *testing.T) {
 	}{
 		{profile.KindGround, 25, []string{"obstacle_height_uncertainty", "vertical_datum"}},
 		{profile.KindUnstated, 25, []string{"raster_kind_unstated", "obstacle_height_uncertainty", "vertical_datum"}},
-		{profile.KindSurface, 0, []string{"cover_not_added", "obstacle_height_uncertainty", "vertical_datum"}},
+		{profile.KindSurface, 0, []string{"cover_not_added", "height_above_surface", "obstacle_height_uncertainty", "vertical_datum"}},
 	} {
 		t.Run(string(c.kind), func(t *testing.T) {
 			r := tenKM()
@@ -143,8 +144,8 @@ func TestInvalidAntennaHeights(t *testing.T) {
 
 func TestCautions(t *testing.T) {
 	quiet := func() (Request, profile.Profile) {
-		return Request{FrequencyGHz: 13}, profile.Profile{
-			Sources: []profile.Source{{Kind: profile.KindGround}}, SpacingM: 30, PixelM: 30,
+		return Request{FrequencyGHz: 13, A: End{HeightAbove: AboveRoof}, B: End{HeightAbove: AboveSeaLevel}}, profile.Profile{
+			Sources: []profile.Source{{Kind: profile.KindGround}}, SpacingM: 7.5, PixelM: 30,
 		}
 	}
 	kinds := func(p *profile.Profile, kinds ...profile.Kind) {
@@ -173,8 +174,14 @@ func TestCautions(t *testing.T) {
 			r.CoverHeightM = 10
 		}, []string{"cover_not_added", "raster_kinds_mixed", "vertical_datum"}},
 		{"two rasters of one kind", func(_ *Request, p *profile.Profile) { kinds(p, profile.KindSurface, profile.KindSurface) }, []string{"vertical_datum"}},
-		{"steps half as wide again", func(_ *Request, p *profile.Profile) { p.SpacingM = 45 }, []string{"vertical_datum"}},
-		{"wider steps", func(_ *Request, p *profile.Profile) { p.SpacingM = 45.1 }, []string{"coarse_spacing", "vertical_datum"}},
+		{"a surface, and a height above ground", func(r *Request, p *profile.Profile) {
+			kinds(p, profile.KindSurface)
+			r.B.HeightAbove = AboveGround
+		}, []string{"height_above_surface", "vertical_datum"}},
+		{"the floor of water", func(_ *Request, p *profile.Profile) { p.GroundM = []float64{3, math.NaN(), -60} }, []string{"below_sea_level", "vertical_datum"}},
+		{"a dry polder", func(_ *Request, p *profile.Profile) { p.GroundM = []float64{-7, 2} }, []string{"vertical_datum"}},
+		{"steps a little wider than a quarter", func(_ *Request, p *profile.Profile) { p.SpacingM = 7.7 }, []string{"vertical_datum"}},
+		{"wider steps", func(_ *Request, p *profile.Profile) { p.SpacingM = 8 }, []string{"coarse_spacing", "vertical_datum"}},
 		{"pixels not known", func(_ *Request, p *profile.Profile) { p.SpacingM, p.PixelM = 1000, 0 }, []string{"vertical_datum"}},
 		{"above 13 GHz", func(r *Request, _ *profile.Profile) { r.FrequencyGHz = 13.01 }, []string{"obstacle_height_uncertainty", "vertical_datum"}},
 	}

@@ -73,6 +73,9 @@ func resolveModel[T interface{ Validate() []radio.Fault }](ctx context.Context, 
 // named, then from the monthly normals, then from the maps.
 func (e *Equipment) resolveClimate(c *ClimateRequest, path profile.Path) error {
 	c.Sources = nil
+	if c.RainEdition == 0 {
+		c.RainEdition = 19
+	}
 	if c.Region != "" {
 		region, ok := e.Regions.Lookup(c.Region)
 		if !ok {

@@ -29,7 +29,7 @@ func land(kind profile.Kind, height func(d, lengthM float64) float64) fakeTerrai
 		}
 		n := int(max(math.Ceil(path.LengthM/step), profile.MinIntervals)) + 1
 		into.Resize(n)
-		into.SpacingM, into.PixelM = path.LengthM/float64(n-1), 30
+		into.SpacingM, into.PixelM = path.LengthM/float64(n-1), 120
 		for i := range n {
 			into.DistanceM[i] = float64(i) * into.SpacingM
 			if i == n-1 {

@@ -97,11 +97,9 @@ func (t *TerminalRequest) terminal() radio.Terminal {
 }
 
 func (l Limit) limit() radio.Limit {
-	out := radio.Limit{MinGHz: l.MinGHz, MaxGHz: l.MaxGHz, MaxEIRPDBM: orNaN(l.MaxEIRPDBM), Note: l.Note, Date: l.Date}
-	if l.MaxConductedDBM != nil {
-		out.MaxConductedDBM = *l.MaxConductedDBM
+	return radio.Limit{
+		MinGHz: l.MinGHz, MaxGHz: l.MaxGHz, MaxEIRPDBM: orNaN(l.MaxEIRPDBM), MaxConductedDBM: orNaN(l.MaxConductedDBM), Note: l.Note, Date: l.Date,
 	}
-	return out
 }
 
 func orNaN(v *float64) float64 {
@@ -138,8 +136,8 @@ func (a *Assessment) neighbours() []radio.Neighbour {
 // seenFrom is where a neighbour lies from an antenna.
 func seenFrom(from orb.Point, heightM float64, n NeighbourRequest) (distanceM, azimuthDeg, elevationDeg float64) {
 	line, err := geodesy.NewLine(from, orb.Point{n.Lon, n.Lat})
-	if err != nil || line.LengthM() == 0 {
-		return 0, 0, 0
+	if err != nil || line.LengthM() < 1 {
+		return 1, 0, 0 // on the same roof: as near as the far field can be thought of
 	}
 	d := line.LengthM()
 	return d, line.AzimuthADeg(), profile.ElevationDeg(n.AntennaAMSLM-heightM, d)
@@ -164,8 +162,9 @@ func radioFaults(e *radio.FaultsError) error {
 const ReasonRadioMeets profile.ReasonCode = "radio_meets_target"
 
 // bringTogether makes one verdict of the path's and the radio's: clear if both
-// hold, marginal if one does, obstructed if neither. Missing data stays
-// unknown.
+// hold, marginal if one does, obstructed if neither. Where missing data keeps
+// the radio from being judged, a clear path is unknown, and a missed one stays
+// what it is.
 func (a *Assessment) bringTogether() {
 	j, report := &a.Judgement, &a.Radio.Report
 	pathHolds := j.Verdict == profile.Clear
@@ -178,11 +177,29 @@ func (a *Assessment) bringTogether() {
 	}
 	switch {
 	case j.Verdict == profile.Unknown, pathHolds && report.Meets:
+	case a.RadioUnjudged():
+		if pathHolds {
+			j.Verdict = profile.Unknown
+		}
 	case pathHolds || report.Meets:
 		j.Verdict = profile.Marginal
 	default:
 		j.Verdict = profile.Obstructed
 	}
+}
+
+// RadioUnjudged reports whether missing data alone keeps the radio from meeting
+// its target.
+func (a *Assessment) RadioUnjudged() bool {
+	if a.Radio == nil || a.Radio.Report.Meets {
+		return false
+	}
+	for _, r := range a.Radio.Report.Reasons {
+		if r.Code != radio.ReasonBudgetUnknown && r.Code != radio.ReasonAvailabilityUnknown {
+			return false
+		}
+	}
+	return true
 }
 
 func (a *Assessment) meetsSentence() string {

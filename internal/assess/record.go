@@ -4,6 +4,7 @@ import (
 	"bytes"
 	"encoding/binary"
 	"encoding/gob"
+	"encoding/json"
 	"fmt"
 
 	"ridgehop/profile"
@@ -12,7 +13,8 @@ import (
 // record is an assessment as it is kept: the figures by name, the arrays of
 // the profile as plain bytes, and no distances where the spacing gives them.
 type record struct {
-	Assessment Assessment // without the arrays of its profile
+	Request    []byte     // as JSON: gob does not tell a zero that is meant from one that is not
+	Assessment Assessment // without its request and the arrays of its profile
 	Samples    int
 	Distance   []byte // empty if the samples are evenly spaced
 	Ground     []byte
@@ -28,6 +30,11 @@ func (a *Assessment) Record() ([]byte, error) {
 	r := record{Assessment: *a, Samples: len(p.DistanceM)}
 	r.Assessment.Profile.DistanceM, r.Assessment.Profile.GroundM = nil, nil
 	r.Assessment.Profile.CoverM, r.Assessment.Profile.SourceIndex = nil, nil
+	r.Assessment.Request = Request{}
+	var err error
+	if r.Request, err = json.Marshal(a.Request); err != nil {
+		return nil, fmt.Errorf("assessment %s as a record: %w", a.ID, err)
+	}
 	if !even(p) {
 		r.Distance = plain(p.DistanceM)
 	}
@@ -43,6 +50,9 @@ func (a *Assessment) Record() ([]byte, error) {
 func FromRecord(kept []byte) (*Assessment, error) {
 	var r record
 	if err := gob.NewDecoder(bytes.NewReader(kept)).Decode(&r); err != nil {
+		return nil, fmt.Errorf("record of an assessment: %w", err)
+	}
+	if err := json.Unmarshal(r.Request, &r.Assessment.Request); err != nil {
 		return nil, fmt.Errorf("record of an assessment: %w", err)
 	}
 	p := &r.Assessment.Profile

@@ -158,6 +158,9 @@ func (r *Register[T]) Add(ctx context.Context, model T) error {
 	if err := invalidFaults("/", r.validate(model)); err != nil {
 		return err
 	}
+	if name := r.nameOf(model); name == "." || name == ".." {
+		return invalid("/name", "is %q, which is no address of its own; give it a word", name)
+	}
 	if _, taken := r.inFixed(r.nameOf(model)); taken || r.shelf == nil {
 		return ErrNameTaken
 	}

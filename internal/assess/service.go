@@ -3,6 +3,7 @@ package assess
 import (
 	"context"
 	"errors"
+	"fmt"
 	"math"
 	"sync"
 
@@ -59,10 +60,30 @@ func (s *Service) judge(ctx context.Context, request Request, a *Assessment, ws 
 	if err := a.place(path); err != nil {
 		return err
 	}
-	if a.Judgement, err = profile.Assess(&a.Link, &a.Profile, ws); err != nil || a.Request.Radio == nil {
+	if a.Judgement, err = profile.Assess(&a.Link, &a.Profile, ws); err != nil {
 		return err
 	}
+	a.doubtCoarseSpacing()
+	if a.Request.Radio == nil {
+		return nil
+	}
 	return s.judgeRadio(ctx, a, ws)
+}
+
+// ReasonCoarseSpacing says that the samples lie too far apart to see every
+// ridge that the rasters hold.
+const ReasonCoarseSpacing profile.ReasonCode = "spacing_too_coarse"
+
+// doubtCoarseSpacing withholds clear where the caller's own spacing steps over
+// whole pixels: a ridge between two samples would not have been seen.
+func (a *Assessment) doubtCoarseSpacing() {
+	p, j := &a.Profile, &a.Judgement
+	if p.PixelM == 0 || p.SpacingM <= p.PixelM || j.Verdict != profile.Clear {
+		return
+	}
+	j.Verdict = profile.Unknown
+	j.Reasons = append(j.Reasons, profile.Reason{Code: ReasonCoarseSpacing, Sentence: fmt.Sprintf(
+		"Samples are %.3g m apart over pixels of %.3g m, so a ridge may lie unseen between them: a clear path takes a spacing of a pixel or less.", p.SpacingM, p.PixelM)})
 }
 
 // sample fills the profile from the caller's points or from the terrain.

@@ -24,7 +24,7 @@ func (s *sheet) radio() {
 	}
 	report := &s.a.Radio.Report
 	s.group("Radio", func() {
-		s.heading("Radio", targetWords(s.a.Request.Radio.Target, report.Meets))
+		s.heading("Radio", targetWords(s.a.Request.Radio.Target, outcome(s.a)))
 		s.y += 26
 		head := face{size: 20, fill: quiet}
 		s.text(columnDirection, s.y, head, "from, to")
@@ -37,6 +37,7 @@ func (s *sheet) radio() {
 		s.y += 8
 		s.equipment("A", s.a.Request.Radio.A)
 		s.equipment("B", s.a.Request.Radio.B)
+		s.availability(&report.Availability.Both)
 		s.radioReasons()
 	})
 }
@@ -45,15 +46,38 @@ func (s *sheet) direction(words string, b *assess.Budget) {
 	s.y += 38
 	f := face{size: 23, bold: true}
 	s.text(columnDirection, s.y, face{size: 23}, words)
-	s.text(columnReceived, s.y, f, level(b.ReceivedDBM, "dBm"))
+	received, eirp := inTarget(b)
+	s.text(columnReceived, s.y, f, level(received, "dBm"))
 	s.text(columnFadeMargin, s.y, f, level(b.TargetMarginDB, "dB"))
 	modulation := plain(b.Target)
 	if modulation == "" {
 		modulation = "none"
 	}
 	s.name(columnModulation, s.y, face{size: 23}, modulation, 230)
-	s.text(marginRight, s.y, face{size: 23, anchor: atEnd}, level(b.EIRPDBM, "dBm"))
+	s.text(marginRight, s.y, face{size: 23, anchor: atEnd}, level(eirp, "dBm"))
 	s.line(marginLeft, s.y+11, marginRight, s.y+11, `stroke="`+faint+`" stroke-width="1"`)
+}
+
+// inTarget is the received level and the EIRP in the modulation that the row
+// names, for which a radio may turn its power down.
+func inTarget(b *assess.Budget) (receivedDBM, eirpDBM float64) {
+	for _, m := range b.Margins {
+		if m.Modulation == b.Target {
+			return m.LevelDBM, b.EIRPDBM - (b.ReceivedDBM - m.LevelDBM)
+		}
+	}
+	return b.ReceivedDBM, b.EIRPDBM
+}
+
+// availability says for how much of the year both directions work, rounded
+// down.
+func (s *sheet) availability(both *assess.Outage) {
+	if !both.Known || math.IsNaN(both.AvailabilityAnnualPercent) {
+		return
+	}
+	percent := math.Floor(both.AvailabilityAnnualPercent*1e4) / 1e4
+	s.y += 30
+	s.text(marginLeft, s.y, face{size: 20}, "Works "+trimmed(percent)+nbsp+"% of the year in both directions, by rain and multipath at that margin.")
 }
 
 // equipment is what stands at one end, by the names its owner gave it.
@@ -88,8 +112,20 @@ func level(v float64, unit string) string {
 	return fixed(v, 1) + nbsp + unit
 }
 
-// targetWords says what was asked for, and whether it is met.
-func targetWords(t assess.Target, meets bool) string {
+// outcome is how the radio's target fares: met, missed, or not judged where
+// only missing data stands in the way.
+func outcome(a *assess.Assessment) string {
+	switch {
+	case a.Radio.Report.Meets:
+		return "met"
+	case a.RadioUnjudged():
+		return "not judged"
+	}
+	return "missed"
+}
+
+// targetWords says what was asked for, and how it fares.
+func targetWords(t assess.Target, outcome string) string {
 	var parts []string
 	if t.CapacityMbps > 0 {
 		parts = append(parts, fixed(t.CapacityMbps, 0)+nbsp+"Mbit/s")
@@ -101,11 +137,7 @@ func targetWords(t assess.Target, meets bool) string {
 		parts = append(parts, trimmed(t.AvailabilityPercent)+nbsp+"% of the year")
 	}
 	if len(parts) == 0 {
-		parts = []string{"a working link"}
-	}
-	outcome := "missed"
-	if meets {
-		outcome = "met"
+		parts = []string{"any margin"}
 	}
 	return "target " + outcome + ": " + strings.Join(parts, ", ")
 }

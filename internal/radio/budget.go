@@ -127,8 +127,8 @@ func (r *Radio) mostPowerDBM(name string, index int) float64 {
 	switch {
 	case index < 0:
 		return math.NaN()
-	case r.Modulations[index].MaxPowerDBM == 0:
+	case r.Modulations[index].MaxPowerDBM == nil:
 		return r.MaxPowerDBM
 	}
-	return min(r.Modulations[index].MaxPowerDBM, r.MaxPowerDBM)
+	return min(*r.Modulations[index].MaxPowerDBM, r.MaxPowerDBM)
 }

@@ -28,7 +28,7 @@ func (j *judge) warnings(list []Statement, name string, eirpDBM, conductedDBM fl
 		if eirpDBM > limit.MaxEIRPDBM+roundingDB {
 			list = append(list, limit.warning(WarningEIRP, "EIRP", name, eirpDBM, limit.MaxEIRPDBM))
 		}
-		if most := limit.MaxConductedDBM; most != 0 && conductedDBM > most+roundingDB {
+		if most := limit.MaxConductedDBM; conductedDBM > most+roundingDB {
 			list = append(list, limit.warning(WarningConducted, "power into the antenna", name, conductedDBM, most))
 		}
 	}

@@ -187,7 +187,7 @@ func TestLimitsOnlyWarn(t *testing.T) {
 	link.Limits = []Limit{
 		{MinGHz: 17, MaxGHz: 19, MaxEIRPDBM: 55, MaxConductedDBM: 18, Note: "our licence", Date: "2026-01-31"},
 		{MinGHz: 5, MaxGHz: 6, MaxEIRPDBM: 10},
-		{MinGHz: 17, MaxGHz: 19, MaxEIRPDBM: math.NaN()},
+		{MinGHz: 17, MaxGHz: 19, MaxEIRPDBM: math.NaN(), MaxConductedDBM: math.NaN()},
 	}
 	report := must(t, link, nil)
 	if len(report.Warnings) != 4 || !has(report.Warnings, WarningEIRP) || !has(report.Warnings, WarningConducted) {

@@ -21,27 +21,23 @@ type Exposure struct {
 	Source    string
 }
 
-const exposureSource = "ICNIRP Guidelines 2020 (Health Physics 118(5)), Table 5: public, whole body, mean over 30 min; " +
-	"seen quoted for 400 MHz and above, the level below from memory; distance in free space"
+const exposureSource = "ICNIRP Guidelines 2020 (Health Physics 118(5)), Table 5: public, whole body, mean over 30 min; distance in free space"
 
 // The range of the reference level in MHz.
-const leastExposureMHz, mostExposureMHz = 30.0, 300_000.0
+const leastExposureMHz, mostExposureMHz = 400.0, 300_000.0
 
 // PublicReferenceWM2 returns the reference level of the power density for the public, for
-// the whole body and in the mean over 30 minutes, in W/m2: 2 from 30 MHz, f/200 (f in
-// MHz) from 400 MHz, 10 from 2 GHz to 300 GHz. The error wraps a validity.RangeError
-// outside 30 MHz to 300 GHz.
+// the whole body and in the mean over 30 minutes, in W/m2: f/200 (f in MHz) from 400 MHz,
+// 10 from 2 GHz to 300 GHz. The error wraps a validity.RangeError outside 400 MHz to
+// 300 GHz; below, the level is stated for fields rather than for a density.
 //
-// Source: ICNIRP Guidelines 2020, Table 5. The rows above 400 MHz were seen quoted; the
-// level from 30 MHz to 400 MHz (27.7 V/m, 2 W/m2) is from memory and joins them.
+// Source: ICNIRP Guidelines 2020, Table 5.
 func PublicReferenceWM2(frequencyGHz float64) (float64, error) {
 	mhz := frequencyGHz * 1000
 	if err := validity.Between("frequency", mhz, leastExposureMHz, mostExposureMHz, "MHz"); err != nil {
 		return 0, err
 	}
 	switch {
-	case mhz <= 400:
-		return 2, nil
 	case mhz <= 2000:
 		return mhz / 200, nil
 	}

@@ -85,7 +85,7 @@ type Climate struct {
 type Limit struct {
 	MinGHz, MaxGHz float64
 	MaxEIRPDBM     float64 // NaN is none
-	// MaxConductedDBM is of the power that enters the antenna; 0 is none.
+	// MaxConductedDBM is of the power that enters the antenna; NaN is none.
 	MaxConductedDBM float64
 	Note            string
 	Date            string

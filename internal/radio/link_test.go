@@ -33,8 +33,8 @@ func testRadio() Radio {
 		MaxInputDBM: -20, LossDB: 0.5,
 		Modulations: []Modulation{
 			{Name: "low", ThresholdDBM: -88, CapacityMbps: 50, BandwidthMHz: 56},
-			{Name: "middle", ThresholdDBM: -78, CapacityMbps: 150, BandwidthMHz: 56, MaxPowerDBM: 22},
-			{Name: "high", ThresholdDBM: -66, CapacityMbps: 300, BandwidthMHz: 56, MaxPowerDBM: 20},
+			{Name: "middle", ThresholdDBM: -78, CapacityMbps: 150, BandwidthMHz: 56, MaxPowerDBM: new(22.0)},
+			{Name: "high", ThresholdDBM: -66, CapacityMbps: 300, BandwidthMHz: 56, MaxPowerDBM: new(20.0)},
 		},
 	}
 }

@@ -31,7 +31,8 @@ type Modulation struct {
 	ThresholdDBM float64 `json:"threshold_dbm"` // lowest usable received level
 	CapacityMbps float64 `json:"capacity_mbps"`
 	BandwidthMHz float64 `json:"bandwidth_mhz"`
-	MaxPowerDBM  float64 `json:"max_power_dbm,omitzero"` // the most power in it; 0 is the radio's own
+	// MaxPowerDBM is the most power in it; nil is the radio's own.
+	MaxPowerDBM *float64 `json:"max_power_dbm,omitempty"`
 }
 
 // Covers reports whether the radio tunes a frequency.

@@ -76,7 +76,7 @@ func (d demo) complete(r Radio) Radio {
 			ThresholdDBM: rounded(noise+carrierToNoiseDB(s.bits), 10),
 			CapacityMbps: rounded(s.bits*d.bandwidthMHz*d.share, 1),
 			BandwidthMHz: d.bandwidthMHz,
-			MaxPowerDBM:  r.MaxPowerDBM - s.backoff,
+			MaxPowerDBM:  new(r.MaxPowerDBM - s.backoff),
 		})
 	}
 	return r

@@ -131,7 +131,7 @@ func TestRadioFaults(t *testing.T) {
 		{"capacity", func(r *Radio) { r.Modulations[0].CapacityMbps = 0 }, "modulations/0/capacity_mbps", "0 is not above 0"},
 		{"capacities out of order", func(r *Radio) { r.Modulations[1].CapacityMbps = 2 }, "modulations/1/capacity_mbps", "2 does not rise from the 24 before"},
 		{"bandwidth", func(r *Radio) { r.Modulations[0].BandwidthMHz = nan }, "modulations/0/bandwidth_mhz", "not a number"},
-		{"modulation power", func(r *Radio) { r.Modulations[0].MaxPowerDBM = 25 }, "modulations/0/max_power_dbm", "25 is not from 0 to 24 dBm"},
+		{"modulation power", func(r *Radio) { r.Modulations[0].MaxPowerDBM = new(25.0) }, "modulations/0/max_power_dbm", "25 is not from 0 to 24 dBm"},
 	}
 	for _, tt := range tests {
 		t.Run(tt.name, func(t *testing.T) {
@@ -142,7 +142,7 @@ func TestRadioFaults(t *testing.T) {
 	}
 	fixed := DemoRadios()[2]
 	fixed.MinPowerDBM, fixed.PowerStepDB = fixed.MaxPowerDBM, 0
-	fixed.power(0)
+	fixed.power(fixed.MaxPowerDBM)
 	if got := fixed.Validate(); len(got) != 0 {
 		t.Errorf("a fixed power: got %v, want no fault", got)
 	}
@@ -154,6 +154,6 @@ func TestRadioFaults(t *testing.T) {
 // power sets the most power of each modulation.
 func (r *Radio) power(dbm float64) {
 	for i := range r.Modulations {
-		r.Modulations[i].MaxPowerDBM = dbm
+		r.Modulations[i].MaxPowerDBM = new(dbm)
 	}
 }

@@ -63,8 +63,8 @@ func (r Radio) validateModulation(f *faults, i int, powered bool) {
 	threshold := f.between(at+"threshold_dbm", m.ThresholdDBM, -160, 0, " dBm")
 	capacity := f.positive(at+"capacity_mbps", m.CapacityMbps, 1e6, " Mbit/s")
 	f.positive(at+"bandwidth_mhz", m.BandwidthMHz, 2e4, " MHz")
-	if powered && m.MaxPowerDBM != 0 {
-		f.between(at+"max_power_dbm", m.MaxPowerDBM, r.MinPowerDBM, r.MaxPowerDBM, " dBm, the radio's own range (0 is its most)")
+	if powered && m.MaxPowerDBM != nil {
+		f.between(at+"max_power_dbm", *m.MaxPowerDBM, r.MinPowerDBM, r.MaxPowerDBM, " dBm, the radio's own range")
 	}
 	for before, other := range r.Modulations[:i] {
 		if other.Name == m.Name {

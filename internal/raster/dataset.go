@@ -104,7 +104,30 @@ func (d *Dataset) Read(x, y, width, height int, heights []float32) error {
 		return fmt.Errorf("%w: %w", ErrUnreadable, err)
 	}
 	d.info.voidAndScale(heights)
+	if d.info.Driver == "GTiff" && !d.info.HasNoData {
+		d.voidAbsent(x, y, width, height, heights)
+	}
 	return nil
+}
+
+// voidAbsent makes those blocks of a window void that a sparse GeoTIFF leaves
+// out. GDAL reads them as nodata where the file declares it, and as 0 where it
+// does not.
+func (d *Dataset) voidAbsent(x, y, width, height int, heights []float32) {
+	band := d.raw.RasterBand(1)
+	bw, bh := d.info.BlockWidth, d.info.BlockHeight
+	for by := y / bh; by*bh < y+height; by++ {
+		for bx := x / bw; bx*bw < x+width; bx++ {
+			if band.MetadataItem(fmt.Sprintf("BLOCK_OFFSET_%d_%d", bx, by), "TIFF") != "" {
+				continue
+			}
+			for row := max(by*bh, y); row < min((by+1)*bh, y+height); row++ {
+				for column := max(bx*bw, x); column < min((bx+1)*bw, x+width); column++ {
+					heights[(row-y)*width+column-x] = float32(math.NaN())
+				}
+			}
+		}
+	}
 }
 
 // reach reads a pixel of every row of a text grid above row y, in order, once.

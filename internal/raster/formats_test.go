@@ -37,6 +37,22 @@ func TestRecognised(t *testing.T) {
 	}
 }
 
+func TestBeside(t *testing.T) {
+	lower, upper := writeArcASCII(t, arcASCII(true), esriWGS84), writeFile(t, "GRID.ASC", nil)
+	must(t, os.WriteFile(strings.TrimSuffix(upper, ".ASC")+".PRJ", nil, 0o644))
+	for path, want := range map[string]string{
+		lower:                           strings.TrimSuffix(lower, ".asc") + ".prj",
+		upper:                           strings.TrimSuffix(upper, ".ASC") + ".PRJ",
+		writeFile(t, "a.asc", nil):      "",
+		writeFile(t, "a.tif", nil):      "",
+		filepath.Join("nowhere.d", "a"): "",
+	} {
+		if got := Beside(path); got != want {
+			t.Errorf("%s: got %q, want %q", path, got, want)
+		}
+	}
+}
+
 // without compares what a raster declares but for its long definition.
 var without = cmp.Options{cmpopts.IgnoreFields(CRS{}, "WKT"), cmpopts.EquateApprox(0, 1e-9), cmpopts.EquateNaNs()}
 

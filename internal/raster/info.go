@@ -65,7 +65,7 @@ func inspect(ds gdal.Dataset, driver string) (Info, error) {
 	if err := info.inspectType(band); err != nil {
 		return info, err
 	}
-	if err := info.inspectValues(band); err != nil {
+	if err := info.inspectMask(band); err != nil {
 		return info, err
 	}
 	info.PixelIsPoint = ds.MetadataItem("AREA_OR_POINT", "") == "Point"
@@ -73,8 +73,25 @@ func inspect(ds gdal.Dataset, driver string) (Info, error) {
 		return info, err
 	}
 	var err error
-	info.CRS, err = describeCRS(ds.Projection())
-	return info, err
+	if info.CRS, err = describeCRS(ds.Projection()); err != nil {
+		return info, err
+	}
+	return info, info.inspectValues(band)
+}
+
+// The flags of a band's mask (GDAL's raster data model).
+const (
+	maskPerDataset = 2
+	maskAlpha      = 4
+)
+
+// inspectMask refuses voids that are marked outside the values: nothing here
+// would see them.
+func (info *Info) inspectMask(band gdal.RasterBand) error {
+	if band.GetMaskFlags()&(maskPerDataset|maskAlpha) != 0 {
+		return fmt.Errorf("%w: it marks voids by a mask; write them as a nodata value", ErrShape)
+	}
+	return nil
 }
 
 func (info *Info) inspectType(band gdal.RasterBand) error {
@@ -106,7 +123,11 @@ func (info *Info) inspectValues(band gdal.RasterBand) error {
 	if offset, ok := band.GetOffset(); ok {
 		info.Offset = offset
 	}
-	metres, ok := metresPerUnit(band.GetUnitType())
+	unit := band.GetUnitType()
+	if unit == "" && !info.CRS.Geographic && info.CRS.MetresPerUnit != 1 {
+		return fmt.Errorf("%w: none is stated, and its places do not count metres; state the unit of the heights", ErrUnit)
+	}
+	metres, ok := metresPerUnit(unit)
 	if !ok {
 		return fmt.Errorf("%w %q: metres and feet are read", ErrUnit, band.GetUnitType())
 	}

@@ -97,6 +97,54 @@ func TestUnknownUnit(t *testing.T) {
 	}
 }
 
+// Heights of no stated unit over places in feet may be in feet: they are
+// refused instead of taken for metres.
+func TestUnstatedUnitOverFeet(t *testing.T) {
+	f := plainTIFF(t)
+	f.wkt = epsgWKT(t, 2229) // NAD83 / California zone 5 (ftUS)
+	if _, err := NewLibrary().Open(f.write(t)); !errors.Is(err, ErrUnit) {
+		t.Errorf("unstated: got %v, want ErrUnit", err)
+	}
+	for unit, want := range map[string]float64{"m": 100, "us-ft": 100 * 1200.0 / 3937} {
+		f.unit = unit
+		if got := whole(t, open(t, f.write(t)))[0]; math.Abs(float64(got)-want) > 1e-4 {
+			t.Errorf("%s: got %g, want %g", unit, got, want)
+		}
+	}
+}
+
+// A sparse file leaves blocks out that nothing was written to. They are void,
+// whether a nodata value is declared or not; a written 0 is a height.
+func TestBlocksThatASparseFileLeavesOut(t *testing.T) {
+	nodata := -9999.0
+	for name, declared := range map[string]*float64{"declared nodata": &nodata, "no nodata": nil} {
+		t.Run(name, func(t *testing.T) {
+			f := plainTIFF(t)
+			f.width, f.height, f.nodata = 48, 40, declared
+			f.options = []string{"SPARSE_OK=TRUE", "TILED=YES", "BLOCKXSIZE=16", "BLOCKYSIZE=16"}
+			f.filled = [4]int{16, 16, 16, 16} // the block in the middle
+			f.values = make([]float64, 16*16)
+			for i := range f.values {
+				f.values[i] = float64(i % 2) // zeros among them
+			}
+			got := whole(t, open(t, f.write(t)))
+			for i, h := range got {
+				column, row := i%48, i/48
+				inside := column >= 16 && column < 32 && row >= 16 && row < 32
+				if inside != (h == h) || inside && h != float32(column%2) {
+					t.Fatalf("column %d, row %d: got %g, want a height inside alone (%t)", column, row, h, inside)
+				}
+			}
+			window := make([]float32, 4*3)
+			must(t, open(t, f.write(t)).Read(14, 15, 4, 3, window))
+			nan := float32(math.NaN())
+			if diff := alike(window, []float32{nan, nan, nan, nan, nan, nan, 0, 1, nan, nan, 0, 1}, 0); diff != "" {
+				t.Errorf("a window over the corner: %s", diff)
+			}
+		})
+	}
+}
+
 func TestTypes(t *testing.T) {
 	for name, kind := range map[string]gdal.DataType{
 		"Int16": gdal.Int16, "UInt16": gdal.UInt16, "Int32": gdal.Int32, "UInt32": gdal.UInt32, "Float32": gdal.Float32, "Float64": gdal.Float64,

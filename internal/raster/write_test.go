@@ -26,6 +26,8 @@ type tiff struct {
 	unit                 string
 	point                bool // pixel-is-point
 	options              []string
+	filled               [4]int // the window that values fill: x, y, width, height; all 0 is the whole
+	mask                 bool   // with a mask of its own, beside the values
 }
 
 // plainTIFF is 6 x 4 pixels of 10 m in UTM zone 30N, heights 100 to 123 m.
@@ -70,10 +72,20 @@ func (f tiff) write(t testing.TB) string {
 	if f.point {
 		must(t, out.SetMetadataItem("AREA_OR_POINT", "Point", ""))
 	}
+	if f.mask {
+		gdal.CPLSetConfigOption("GDAL_TIFF_INTERNAL_MASK", "YES")
+		defer gdal.CPLSetConfigOption("GDAL_TIFF_INTERNAL_MASK", "")
+		const perDataset = 2
+		must(t, out.CreateMaskBand(perDataset))
+	}
 	if f.values == nil {
 		f.values = counting(f.width*f.height, 100)
 	}
-	must(t, band.IO(gdal.Write, 0, 0, f.width, f.height, f.values, f.width, f.height, 0, 0))
+	x, y, width, height := 0, 0, f.width, f.height
+	if f.filled != [4]int{} {
+		x, y, width, height = f.filled[0], f.filled[1], f.filled[2], f.filled[3]
+	}
+	must(t, band.IO(gdal.Write, x, y, width, height, f.values, width, height, 0, 0))
 	return path
 }
 

@@ -42,7 +42,17 @@ func NewMetrics() *Metrics {
 
 // Request counts one answered request. route is its template.
 func (m *Metrics) Request(method, route string, status int, took time.Duration) {
-	m.requests.WithLabelValues(method, route, strconv.Itoa(status)).Observe(took.Seconds())
+	m.requests.WithLabelValues(boundedMethod(method), route, strconv.Itoa(status)).Observe(took.Seconds())
+}
+
+// boundedMethod keeps callers from making up methods, and with them series
+// without end.
+func boundedMethod(method string) string {
+	switch method {
+	case http.MethodGet, http.MethodHead, http.MethodPost, http.MethodPut, http.MethodPatch, http.MethodDelete, http.MethodOptions:
+		return method
+	}
+	return "other"
 }
 
 // Assessment counts one link judged.

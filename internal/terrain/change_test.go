@@ -106,6 +106,26 @@ func TestVersionOfAChangedFile(t *testing.T) {
 	}
 }
 
+// A file that was away for a while is listed as such, and is as good as before
+// once it is back.
+func TestFileThatComesBack(t *testing.T) {
+	folder := t.TempDir()
+	square(20, 10, constant(1)).write(t, folder, "a.asc")
+	terrain := loaded(t, folder)
+	path := filepath.Join(folder, "a.asc")
+	must(t, os.Rename(path, path+".away"))
+	if r := listed(t, terrain)[0]; r.Problem == "" || r.Version != "" {
+		t.Errorf("away: got version %q, problem %q, want a problem alone", r.Version, r.Problem)
+	}
+	must(t, os.Rename(path+".away", path))
+	if r := listed(t, terrain)[0]; r.Problem != "" || r.Version == "" {
+		t.Errorf("back: got version %q, problem %q, want a version alone", r.Version, r.Problem)
+	}
+	if got := spot(t, terrain, metresFrom(t, terrain)(0, 0)); got != 1 {
+		t.Errorf("back: got %g, want 1", got)
+	}
+}
+
 // A version is the hash of the content, wherever it lies and whenever it was
 // written; an edit of one byte, or of the .prj that places a grid, changes it.
 func TestVersions(t *testing.T) {

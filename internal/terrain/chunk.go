@@ -30,8 +30,8 @@ const chunkPixels = 256 << 10
 // decoded once.
 func chunkSize(info raster.Info) (width, height int) {
 	width, height = info.BlockWidth, info.BlockHeight
-	if width < 256 {
-		width *= (256 + width - 1) / width
+	for width < 256 && 2*width*height <= chunkPixels {
+		width += info.BlockWidth
 	}
 	if pixels := width * height; pixels < chunkPixels {
 		height *= (chunkPixels + pixels - 1) / pixels

@@ -15,6 +15,7 @@ import (
 
 	"github.com/paulmach/orb"
 
+	"ridgehop/internal/raster"
 	"ridgehop/profile"
 )
 
@@ -152,6 +153,22 @@ func TestOpenFilesAreBounded(t *testing.T) {
 		if got := openIn(folder); got != 0 {
 			t.Errorf("got %d files open after closing, want 0", got)
 		}
+	}
+}
+
+// Whoever waits for a place among the open files may give up.
+func TestWaitingForAPlaceEndsWithTheContext(t *testing.T) {
+	folder := t.TempDir()
+	square(10, 10, constant(1)).write(t, folder, "a.asc")
+	terrain := loadedWith(t, Options{OpenRasters: 1}, folder)
+	e := terrain.byName["a.asc"]
+	err := terrain.handles.with(context.Background(), e, func(*raster.Dataset) error {
+		ctx, cancel := context.WithCancel(context.Background())
+		cancel()
+		return terrain.handles.with(ctx, e, func(*raster.Dataset) error { return nil })
+	})
+	if !errors.Is(err, context.Canceled) {
+		t.Errorf("got %v, want context.Canceled", err)
 	}
 }
 

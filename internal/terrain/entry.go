@@ -7,6 +7,8 @@ import (
 	"fmt"
 	"io"
 	"os"
+	"path"
+	"slices"
 	"strings"
 	"sync"
 
@@ -17,16 +19,31 @@ import (
 // entry is one file found in the folders, and where it lies.
 type entry struct {
 	profile.Raster
-	info    raster.Info
-	path    string
-	bytes   int64
-	version func() (string, error)
+	info  raster.Info
+	path  string
+	bytes int64
+
+	mu    sync.Mutex // guards known
+	known string     // the version, once it is known
 }
 
 func newEntry(path, name string) *entry {
-	e := &entry{Raster: profile.Raster{Name: name, Kind: kindOf(name)}, path: path}
-	e.version = sync.OnceValues(e.contentVersion)
-	return e
+	return &entry{Raster: profile.Raster{Name: name, Kind: kindOf(name)}, path: path}
+}
+
+// version is contentVersion, computed once. A failure is tried again the next
+// time.
+func (e *entry) version() (string, error) {
+	e.mu.Lock()
+	defer e.mu.Unlock()
+	if e.known != "" {
+		return e.known, nil
+	}
+	version, err := e.contentVersion()
+	if err == nil {
+		e.known = version
+	}
+	return version, err
 }
 
 // describe copies what the raster declares to where callers see it.
@@ -88,19 +105,26 @@ func copyFile(to io.Writer, path string) error {
 	return err
 }
 
-// kindOf reads the kind from the file's name, where producers write it by
-// custom: "dtm" for bare earth, "dsm" for surfaces. "dem" and anything else
-// say nothing about it. Common practice, no source.
+// kindOf reads the kind from the file's name, or else from the folders that it
+// lies in, where producers write it by custom: "dtm" for bare earth, "dsm" for
+// surfaces. "dem" and anything else say nothing about it, nor do both words at
+// once. Common practice, no source.
 func kindOf(name string) profile.Kind {
-	for _, word := range strings.FieldsFunc(strings.ToLower(name), func(r rune) bool {
-		return !(r >= 'a' && r <= 'z')
-	}) {
-		switch word {
-		case "dtm":
-			return profile.KindGround
-		case "dsm":
-			return profile.KindSurface
-		}
+	folders, file := path.Split(name)
+	if kind := kindIn(file); kind != profile.KindUnstated {
+		return kind
+	}
+	return kindIn(folders)
+}
+
+func kindIn(text string) profile.Kind {
+	words := strings.FieldsFunc(strings.ToLower(text), func(r rune) bool { return !(r >= 'a' && r <= 'z') })
+	ground, surface := slices.Contains(words, "dtm"), slices.Contains(words, "dsm")
+	switch {
+	case ground && !surface:
+		return profile.KindGround
+	case surface && !ground:
+		return profile.KindSurface
 	}
 	return profile.KindUnstated
 }

@@ -42,6 +42,8 @@ func TestUnusableFilesAreListed(t *testing.T) {
 	write("good.vrt", "not looked at")
 	must(t, os.Mkdir(filepath.Join(folder, "folder.tif"), 0o755))
 	grid{columns: 4, rows: 4, left: 5000, top: 5000, pixel: 10, height: constant(1)}.write(t, folder, "nowhere.asc")
+	grid{columns: 4, rows: 4, left: 1e12, top: 5000, pixel: 10, system: "32630", height: constant(1)}.write(t, folder, "far.asc")
+	grid{columns: 4, rows: 4, left: 5000, top: 5000, pixel: 10, system: "2303", height: constant(1)}.write(t, folder, "untied.asc")
 
 	var log bytes.Buffer
 	terrain, err := Load(context.Background(), raster.NewLibrary(), []string{folder}, Options{}, slog.New(slog.NewTextHandler(&log, nil)))
@@ -54,6 +56,8 @@ func TestUnusableFilesAreListed(t *testing.T) {
 		"empty.tif":   "empty (0 bytes)",
 		"notes.tif":   "`notes.tif' not recognized",
 		"N50W003.hgt": "cannot be read",
+		"far.asc":     "no usable coordinate reference system: WGS 84 / UTM zone 30N: ",
+		"untied.asc":  "no usable coordinate reference system: Qornoq 1927 / Greenland zone 4 west: ",
 		"nowhere.asc": "it spans longitudes 5000 to 5040 and latitudes 4960 to 5000",
 	}
 	rasters := listed(t, terrain)
@@ -198,7 +202,7 @@ func TestChunkSizes(t *testing.T) {
 		{"large tiles", [2]int{512, 512}, 512, 512},
 		{"odd tiles", [2]int{100, 100}, 300, 900},
 		{"one wide row", [2]int{100_000, 1}, 100_000, 3},
-		{"one column", [2]int{1, 1000}, 256, 2000},
+		{"one column", [2]int{1, 1000}, 132, 2000},
 	}
 	for _, c := range cases {
 		width, height := chunkSize(raster.Info{BlockWidth: c.block[0], BlockHeight: c.block[1]})

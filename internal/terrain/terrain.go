@@ -28,8 +28,8 @@ type Terrain struct {
 	systems map[string]*projectors // by the CRS's WKT
 }
 
-// Rasters lists every file found: usable ones, and unusable ones with the
-// reason. The first call reads each usable file whole, for its version, and
+// Rasters lists every file found, by name: usable ones, and unusable ones with
+// the reason. The first call reads each usable file whole, for its version, and
 // stops when ctx ends.
 func (t *Terrain) Rasters(ctx context.Context) ([]profile.Raster, error) {
 	out := make([]profile.Raster, 0, len(t.entries))
@@ -46,6 +46,7 @@ func (t *Terrain) Rasters(ctx context.Context) ([]profile.Raster, error) {
 		}
 		out = append(out, r)
 	}
+	slices.SortStableFunc(out, func(a, b profile.Raster) int { return strings.Compare(a.Name, b.Name) })
 	return out, nil
 }
 

@@ -204,10 +204,34 @@ func TestSurfaceAndGroundStayApart(t *testing.T) {
 	}
 }
 
+// Tiles that do not lie on one grid, or overlap by more than a column, are not
+// laid together: each keeps its own pixels to its edge, and the first by name
+// decides where both have one.
+func TestTilesOffTheGrid(t *testing.T) {
+	whole := square(20, 10, constant(1))
+	shifted, wide := whole.cut(10, 0, 10, 20), whole.cut(8, 0, 12, 20)
+	shifted.left += 4
+	wide.height, shifted.height = constant(2), constant(2)
+	for name, right := range map[string]grid{"shifted by 4 m": shifted, "overlapping by two columns": wide} {
+		terrain := loadedGrids(t, map[string]grid{"a.asc": whole.cut(0, 0, 10, 20), "b.asc": right})
+		if n := len(terrain.mosaics); n != 2 {
+			t.Errorf("%s: got %d mosaics, want 2", name, n)
+		}
+		at := metresFrom(t, terrain)
+		for east, want := range map[float64]float64{-50: 1, -2: 1, 6: 2, 50: 2} {
+			if got := spot(t, terrain, at(east, 3)); !near(got, want, 1e-9) {
+				t.Errorf("%s, %g m east: got %g, want %g", name, east, got, want)
+			}
+		}
+	}
+}
+
 func TestKindOf(t *testing.T) {
 	for name, want := range map[string]profile.Kind{
 		"town_dtm_1m.tif": profile.KindGround, "DTM/N51.tif": profile.KindGround, "uk-DSM.tif": profile.KindSurface,
-		"town_dem.tif": profile.KindUnstated, "N51W001.hgt": profile.KindUnstated, "dtmx.tif": profile.KindUnstated, "": profile.KindUnstated,
+		"DSM/town_dtm.tif": profile.KindGround, "dsm/dtm/N51.tif": profile.KindUnstated, "dsm_minus_dtm.tif": profile.KindUnstated,
+		"dtm/dsm_minus_dtm.tif": profile.KindGround,
+		"town_dem.tif":          profile.KindUnstated, "N51W001.hgt": profile.KindUnstated, "dtmx.tif": profile.KindUnstated, "": profile.KindUnstated,
 	} {
 		if got := kindOf(name); got != want {
 			t.Errorf("%q: got %s, want %s", name, got, want)
