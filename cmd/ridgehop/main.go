@@ -34,6 +34,7 @@ type commands struct {
 	Serve   serveCommand   `cmd:"" help:"Serve the API, the drawings and the page of the contract over HTTP."`
 	Assess  assessCommand  `cmd:"" help:"Judge the link that a JSON file, or standard input, describes."`
 	Rasters rastersCommand `cmd:"" help:"List the elevation rasters of the folders: usable or not, and why."`
+	Pattern patternCommand `cmd:"" help:"Turn an antenna's pattern from CSV into the JSON of a description."`
 	Version versionCommand `cmd:"" help:"Print the version of the program and of what it computes with."`
 }
 
