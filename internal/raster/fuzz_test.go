@@ -133,6 +133,8 @@ func TestMutatedFiles(t *testing.T) {
 	}
 }
 
+// FuzzOpen needs -fuzzminimizetime=1x: shrinking what the fuzzer finds through
+// GDAL takes it minutes.
 func FuzzOpen(f *testing.F) {
 	names := seeds(f)
 	for i, s := range names {
