@@ -15,7 +15,8 @@ var ErrPoint = errors.New("not a place on earth")
 // Line is the geodesic from one point to another. The zero value is a line of
 // no length at longitude 0, latitude 0.
 type Line struct {
-	a           orb.Point
+	a, b        orb.Point
+	ends        bool // b is known
 	lengthM     float64
 	azimuthADeg float64
 	azimuthBDeg float64
@@ -27,7 +28,7 @@ func NewLine(a, b orb.Point) (Line, error) {
 	if err := errors.Join(checkPoint(a), checkPoint(b)); err != nil {
 		return Line{}, err
 	}
-	l := Line{a: a}
+	l := Line{a: a, b: b, ends: true}
 	var arrival float64
 	geodesic.WGS84.Inverse(a.Lat(), a.Lon(), b.Lat(), b.Lon(), &l.lengthM, &l.azimuthADeg, &arrival)
 	l.azimuthADeg = compass(l.azimuthADeg)
@@ -49,6 +50,13 @@ func LineFrom(a orb.Point, azimuthDeg, lengthM float64) Line {
 	return Line{a: a, lengthM: lengthM, azimuthADeg: azimuthDeg, azimuthBDeg: math.NaN()}
 }
 
+// To is the line with b, which is known to be its end: At gives b itself there
+// instead of solving for it.
+func (l Line) To(b orb.Point) Line {
+	l.b, l.ends = b, true
+	return l
+}
+
 // LengthM is the length of the geodesic in metres.
 func (l Line) LengthM() float64 { return l.lengthM }
 
@@ -63,7 +71,15 @@ func (l Line) AzimuthBDeg() float64 { return l.azimuthBDeg }
 // do not jump at the antimeridian: they lie within 180 degrees of a's, and may
 // run beyond 180 or -180. Only a pole on the line makes them jump.
 func (l Line) At(distanceM float64) orb.Point {
-	p := Direct(l.a, l.azimuthADeg, distanceM)
+	var p orb.Point
+	switch {
+	case distanceM == 0:
+		return l.a
+	case l.ends && distanceM == l.lengthM:
+		p = l.b
+	default:
+		p = Direct(l.a, l.azimuthADeg, distanceM)
+	}
 	p[0] = l.a.Lon() + math.Remainder(p.Lon()-l.a.Lon(), 360)
 	return p
 }

@@ -12,7 +12,7 @@ import (
 
 // Sample implements profile.Terrain.
 func (t *Terrain) Sample(ctx context.Context, path profile.Path, how profile.Sampling, into *profile.Profile) error {
-	line := geodesy.LineFrom(path.A, path.AzimuthADeg, path.LengthM)
+	line := geodesy.LineFrom(path.A, path.AzimuthADeg, path.LengthM).To(path.B)
 	crossed, err := t.crossed(line, how.Rasters)
 	if err != nil {
 		return err
