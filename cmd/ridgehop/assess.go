@@ -112,7 +112,16 @@ func requestError(err error) error {
 	return err
 }
 
+// writeDrawing draws the assessment as a service would have kept it, so that
+// both give the same bytes.
 func writeDrawing(path string, judged *assess.Assessment) error {
+	record, err := judged.Record()
+	if err != nil {
+		return err
+	}
+	if judged, err = assess.FromRecord(record); err != nil {
+		return err
+	}
 	var picture bytes.Buffer
 	if err := drawing.SVG(&picture, judged); err != nil {
 		return err

@@ -5,21 +5,30 @@ import (
 	"encoding/binary"
 	"encoding/gob"
 	"encoding/json"
+	"errors"
 	"fmt"
+	"math"
+	"slices"
 
 	"ridgehop/profile"
 )
 
-// record is an assessment as it is kept: the figures by name, the arrays of
-// the profile as plain bytes, and no distances where the spacing gives them.
+// record is an assessment as it is kept: the figures by name, and the arrays of
+// the profile in few bytes. Heights keep the precision of a raster's pixels,
+// better than a millimetre.
 type record struct {
 	Request    []byte     // as JSON: gob does not tell a zero that is meant from one that is not
 	Assessment Assessment // without its request and the arrays of its profile
-	Samples    int
-	Distance   []byte // empty if the samples are evenly spaced
-	Ground     []byte
-	Cover      []byte // empty if none is counted
-	Source     []byte
+	Distance   []float64  // empty if the samples are evenly spaced
+	Ground     []byte     // float32, little endian
+	Cover      []byte     // the same; empty if none is counted
+	Sources    []run
+}
+
+// run is a stretch of samples that rest on one source; -1 is a void.
+type run struct {
+	Samples int
+	Source  int16
 }
 
 // Record is the assessment as bytes, for a store to keep. A later version of
@@ -27,7 +36,10 @@ type record struct {
 // given another meaning.
 func (a *Assessment) Record() ([]byte, error) {
 	p := &a.Profile
-	r := record{Assessment: *a, Samples: len(p.DistanceM)}
+	r := record{Assessment: *a, Ground: packed(p.GroundM), Cover: packed(p.CoverM), Sources: runs(p.SourceIndex)}
+	if !even(p) {
+		r.Distance = p.DistanceM
+	}
 	r.Assessment.Profile.DistanceM, r.Assessment.Profile.GroundM = nil, nil
 	r.Assessment.Profile.CoverM, r.Assessment.Profile.SourceIndex = nil, nil
 	r.Assessment.Request = Request{}
@@ -35,10 +47,6 @@ func (a *Assessment) Record() ([]byte, error) {
 	if r.Request, err = json.Marshal(a.Request); err != nil {
 		return nil, fmt.Errorf("assessment %s as a record: %w", a.ID, err)
 	}
-	if !even(p) {
-		r.Distance = plain(p.DistanceM)
-	}
-	r.Ground, r.Cover, r.Source = plain(p.GroundM), plain(p.CoverM), plain(p.SourceIndex)
 	var out bytes.Buffer
 	if err := gob.NewEncoder(&out).Encode(r); err != nil {
 		return nil, fmt.Errorf("assessment %s as a record: %w", a.ID, err)
@@ -56,35 +64,53 @@ func FromRecord(kept []byte) (*Assessment, error) {
 		return nil, fmt.Errorf("record of an assessment: %w", err)
 	}
 	p := &r.Assessment.Profile
-	if r.Samples < 0 || r.Samples > profile.MaxSamples {
-		return nil, fmt.Errorf("record of an assessment: %d samples", r.Samples)
+	p.GroundM, p.CoverM, p.DistanceM = unpacked(r.Ground), unpacked(r.Cover), r.Distance
+	n := len(p.GroundM)
+	if len(p.DistanceM) == 0 {
+		p.DistanceM = make([]float64, n)
+		fill(p, r.Assessment.Link.Path.LengthM)
 	}
-	p.DistanceM = make([]float64, r.Samples)
-	p.GroundM = make([]float64, r.Samples)
-	p.SourceIndex = make([]int16, r.Samples)
-	fill(p, r.Assessment.Link.Path.LengthM)
-	if len(r.Cover) > 0 {
-		p.CoverM = make([]float64, r.Samples)
+	for _, stretch := range r.Sources {
+		if stretch.Samples < 0 || stretch.Samples > n-len(p.SourceIndex) {
+			return nil, errors.New("record of an assessment: more sources than samples")
+		}
+		p.SourceIndex = append(p.SourceIndex, slices.Repeat([]int16{stretch.Source}, stretch.Samples)...)
 	}
-	for _, array := range []struct {
-		kept []byte
-		into any
-	}{{r.Distance, p.DistanceM}, {r.Ground, p.GroundM}, {r.Cover, p.CoverM}, {r.Source, p.SourceIndex}} {
-		if len(array.kept) == 0 {
-			continue
-		}
-		if _, err := binary.Decode(array.kept, binary.LittleEndian, array.into); err != nil {
-			return nil, fmt.Errorf("record of an assessment: %w", err)
-		}
+	if len(p.DistanceM) != n || len(p.SourceIndex) != n || len(p.CoverM) != 0 && len(p.CoverM) != n {
+		return nil, errors.New("record of an assessment: arrays of unequal length")
 	}
 	return &r.Assessment, nil
 }
 
-// plain is an array's numbers one after the other.
-func plain[T float64 | int16](values []T) []byte {
-	out, err := binary.Append(nil, binary.LittleEndian, values)
-	if err != nil {
-		return nil // never: the sizes are fixed
+// packed writes heights as float32, one after the other.
+func packed(heights []float64) []byte {
+	out := make([]byte, 0, 4*len(heights))
+	for _, h := range heights {
+		out = binary.LittleEndian.AppendUint32(out, math.Float32bits(float32(h)))
+	}
+	return out
+}
+
+func unpacked(kept []byte) []float64 {
+	if len(kept) == 0 {
+		return nil
+	}
+	out := make([]float64, len(kept)/4)
+	for i := range out {
+		out[i] = float64(math.Float32frombits(binary.LittleEndian.Uint32(kept[4*i:])))
+	}
+	return out
+}
+
+// runs counts how many samples after one another rest on each source.
+func runs(sources []int16) []run {
+	var out []run
+	for _, s := range sources {
+		if n := len(out); n > 0 && out[n-1].Source == s {
+			out[n-1].Samples++
+			continue
+		}
+		out = append(out, run{Samples: 1, Source: s})
 	}
 	return out
 }

@@ -54,7 +54,11 @@ func TestRecordRoundTrip(t *testing.T) {
 			if err != nil {
 				t.Fatal(err)
 			}
-			same := cmp.Options{cmpopts.EquateNaNs(), cmpopts.EquateEmpty()}
+			// Heights are kept as float32, distances and figures exactly.
+			same := cmp.Options{cmpopts.EquateNaNs(), cmpopts.EquateEmpty(), cmpopts.EquateApprox(0, 1e-4)}
+			if diff := cmp.Diff(want.Profile.DistanceM, got.Profile.DistanceM); diff != "" {
+				t.Errorf("distances (-want +got):\n%s", diff)
+			}
 			if diff := cmp.Diff(want, got, same); diff != "" {
 				t.Errorf("(-want +got):\n%s", diff)
 			}
@@ -89,11 +93,14 @@ func TestFromBrokenRecord(t *testing.T) {
 // taken for a number of samples that no profile has.
 func TestFromRecordWithWrongArrays(t *testing.T) {
 	for name, r := range map[string]record{
-		"more samples than heights":   {Samples: 3, Ground: plain([]float64{1, 2}), Source: plain([]int16{0, 0, 0})},
-		"more samples than any path":  {Samples: profile.MaxSamples + 1},
-		"fewer than none":             {Samples: -1},
-		"more samples than distances": {Samples: 2, Distance: []byte{1}, Ground: plain([]float64{1, 2}), Source: plain([]int16{0, 0})},
+		"sources of more samples":  {Ground: packed([]float64{1, 2}), Sources: []run{{3, 0}}},
+		"sources of fewer samples": {Ground: packed([]float64{1, 2}), Sources: []run{{1, 0}}},
+		"a run of less than none":  {Ground: packed([]float64{1, 2}), Sources: []run{{-1, 0}, {3, 0}}},
+		"more samples than any":    {Sources: []run{{1 << 60, 0}}},
+		"other distances":          {Ground: packed([]float64{1, 2}), Sources: []run{{2, 0}}, Distance: []float64{1}},
+		"other cover":              {Ground: packed([]float64{1, 2}), Sources: []run{{2, 0}}, Cover: packed([]float64{1})},
 	} {
+		r.Request = []byte("{}")
 		var kept bytes.Buffer
 		if err := gob.NewEncoder(&kept).Encode(r); err != nil {
 			t.Fatal(err)
