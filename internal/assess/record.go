@@ -17,12 +17,22 @@ import (
 // the profile in few bytes. Heights keep the precision of a raster's pixels,
 // better than a millimetre.
 type record struct {
-	Request    []byte     // as JSON: gob does not tell a zero that is meant from one that is not
-	Assessment Assessment // without its request and the arrays of its profile
-	Distance   []float64  // empty if the samples are evenly spaced
-	Ground     []byte     // float32, little endian
-	Cover      []byte     // the same; empty if none is counted
-	Sources    []run
+	Request            []byte // as JSON: gob does not tell a zero that is meant from one that is not
+	ID, Engine         string
+	Link               profile.Link
+	GroundAM, GroundBM float64
+	Judgement          profile.Assessment
+	Cautions           []Caution
+	// Radio is the radio half as a record of its own, so that an assessment
+	// without one does not carry the description of its types.
+	Radio []byte
+
+	SpacingM, PixelM float64
+	Rasters          []profile.Source
+	Distance         []float64 // empty if the samples are evenly spaced
+	Ground           []byte    // float32, little endian
+	Cover            []byte    // the same; empty if none is counted
+	Sources          []run
 }
 
 // run is a stretch of samples that rest on one source; -1 is a void.
@@ -36,50 +46,79 @@ type run struct {
 // given another meaning.
 func (a *Assessment) Record() ([]byte, error) {
 	p := &a.Profile
-	r := record{Assessment: *a, Ground: packed(p.GroundM), Cover: packed(p.CoverM), Sources: runs(p.SourceIndex)}
+	r := record{
+		ID: a.ID, Engine: a.Engine, Link: a.Link, GroundAM: a.GroundAM, GroundBM: a.GroundBM,
+		Judgement: a.Judgement, Cautions: a.Cautions,
+		SpacingM: p.SpacingM, PixelM: p.PixelM, Rasters: p.Sources,
+		Ground: packed(p.GroundM), Cover: packed(p.CoverM), Sources: runs(p.SourceIndex),
+	}
 	if !even(p) {
 		r.Distance = p.DistanceM
 	}
-	r.Assessment.Profile.DistanceM, r.Assessment.Profile.GroundM = nil, nil
-	r.Assessment.Profile.CoverM, r.Assessment.Profile.SourceIndex = nil, nil
-	r.Assessment.Request = Request{}
 	var err error
-	if r.Request, err = json.Marshal(a.Request); err != nil {
+	if r.Request, err = json.Marshal(a.Request); err == nil && a.Radio != nil {
+		r.Radio, err = encoded(a.Radio)
+	}
+	if err != nil {
 		return nil, fmt.Errorf("assessment %s as a record: %w", a.ID, err)
 	}
+	return encoded(r)
+}
+
+func encoded(v any) ([]byte, error) {
 	var out bytes.Buffer
-	if err := gob.NewEncoder(&out).Encode(r); err != nil {
-		return nil, fmt.Errorf("assessment %s as a record: %w", a.ID, err)
-	}
-	return out.Bytes(), nil
+	err := gob.NewEncoder(&out).Encode(v)
+	return out.Bytes(), err
 }
 
 // FromRecord is the assessment that Record wrote.
 func FromRecord(kept []byte) (*Assessment, error) {
 	var r record
-	if err := gob.NewDecoder(bytes.NewReader(kept)).Decode(&r); err != nil {
+	if err := decoded(kept, &r); err != nil {
+		return nil, err
+	}
+	a := &Assessment{
+		ID: r.ID, Engine: r.Engine, Link: r.Link, GroundAM: r.GroundAM, GroundBM: r.GroundBM,
+		Judgement: r.Judgement, Cautions: r.Cautions,
+	}
+	if err := json.Unmarshal(r.Request, &a.Request); err != nil {
 		return nil, fmt.Errorf("record of an assessment: %w", err)
 	}
-	if err := json.Unmarshal(r.Request, &r.Assessment.Request); err != nil {
-		return nil, fmt.Errorf("record of an assessment: %w", err)
+	if len(r.Radio) > 0 {
+		a.Radio = &RadioAnswer{}
+		if err := decoded(r.Radio, a.Radio); err != nil {
+			return nil, err
+		}
 	}
-	p := &r.Assessment.Profile
+	return a, r.restore(&a.Profile, a.Link.Path.LengthM)
+}
+
+func decoded(kept []byte, into any) error {
+	if err := gob.NewDecoder(bytes.NewReader(kept)).Decode(into); err != nil {
+		return fmt.Errorf("record of an assessment: %w", err)
+	}
+	return nil
+}
+
+// restore lays the arrays out again.
+func (r *record) restore(p *profile.Profile, lengthM float64) error {
+	p.SpacingM, p.PixelM, p.Sources = r.SpacingM, r.PixelM, r.Rasters
 	p.GroundM, p.CoverM, p.DistanceM = unpacked(r.Ground), unpacked(r.Cover), r.Distance
 	n := len(p.GroundM)
 	if len(p.DistanceM) == 0 {
 		p.DistanceM = make([]float64, n)
-		fill(p, r.Assessment.Link.Path.LengthM)
+		fill(p, lengthM)
 	}
 	for _, stretch := range r.Sources {
 		if stretch.Samples < 0 || stretch.Samples > n-len(p.SourceIndex) {
-			return nil, errors.New("record of an assessment: more sources than samples")
+			return errors.New("record of an assessment: more sources than samples")
 		}
 		p.SourceIndex = append(p.SourceIndex, slices.Repeat([]int16{stretch.Source}, stretch.Samples)...)
 	}
 	if len(p.DistanceM) != n || len(p.SourceIndex) != n || len(p.CoverM) != 0 && len(p.CoverM) != n {
-		return nil, errors.New("record of an assessment: arrays of unequal length")
+		return errors.New("record of an assessment: arrays of unequal length")
 	}
-	return &r.Assessment, nil
+	return nil
 }
 
 // packed writes heights as float32, one after the other.
