@@ -257,7 +257,7 @@ func TestProjectionOverTheAntimeridian(t *testing.T) {
 	g := grid{columns: 500, rows: 200, left: 120e3, top: 1_120e3, pixel: 400, system: "32601"}
 	g.height = func(column, row int) float64 { return float64(column) + float64(row)/4 }
 	terrain := loadedGrids(t, map[string]grid{"a.asc": g})
-	projector, err := terrain.library.NewProjector(terrain.mosaics[0].crs)
+	projector, err := terrain.gdal.NewProjector(terrain.mosaics[0].crs)
 	must(t, err)
 	defer projector.Close()
 	for _, ends := range [][2]orb.Point{{{179.8, 9.8}, {-179.7, 9.9}}, {{-179.7, 9.9}, {179.8, 9.8}}} {

@@ -11,8 +11,8 @@ import (
 // handles opens rasters when they are first read and keeps a bounded number of
 // them open. Each is used by one goroutine at a time.
 type handles struct {
-	library *raster.Library
-	places  chan struct{} // one token for each handle that may be in use
+	gdal   *raster.Library
+	places chan struct{} // one token for each handle that may be in use
 
 	mu   sync.Mutex
 	open int      // in use and idle together
@@ -25,7 +25,7 @@ type handle struct {
 }
 
 func newHandles(library *raster.Library, most int) *handles {
-	return &handles{library: library, places: make(chan struct{}, most)}
+	return &handles{gdal: library, places: make(chan struct{}, most)}
 }
 
 // with runs use with an open handle of the raster, waiting while all allowed
@@ -40,7 +40,7 @@ func (h *handles) with(ctx context.Context, e *entry, use func(*raster.Dataset) 
 	dataset := h.takeIdle(e)
 	if dataset == nil {
 		var err error
-		if dataset, err = h.library.Open(e.path); err != nil {
+		if dataset, err = h.gdal.Open(e.path); err != nil {
 			h.forget()
 			return err
 		}

@@ -29,7 +29,7 @@ func Load(ctx context.Context, library *raster.Library, folders []string, option
 	if options.OpenRasters == 0 {
 		options.OpenRasters = 64
 	}
-	t := &Terrain{library: library, byName: map[string]*entry{}, systems: map[string]*projectors{}, handles: newHandles(library, options.OpenRasters)}
+	t := &Terrain{gdal: library, byName: map[string]*entry{}, systems: map[string]*projectors{}, handles: newHandles(library, options.OpenRasters)}
 	var err error
 	if t.chunks, err = newChunks(options.CacheBytes, t.handles); err != nil {
 		return nil, err
@@ -77,7 +77,7 @@ func (t *Terrain) scan(ctx context.Context, folder string, log *slog.Logger) ([]
 			return nil
 		}
 		if t.systems[e.info.CRS.WKT] == nil {
-			t.systems[e.info.CRS.WKT] = &projectors{library: t.library}
+			t.systems[e.info.CRS.WKT] = &projectors{gdal: t.gdal}
 		}
 		t.byName[e.Name] = e
 		usable = append(usable, e)
@@ -108,7 +108,7 @@ func (t *Terrain) inspect(e *entry) error {
 		return errors.New("cannot be read")
 	}
 	e.Modified, e.bytes = stat.ModTime(), stat.Size()
-	dataset, err := t.library.Open(e.path)
+	dataset, err := t.gdal.Open(e.path)
 	if err != nil {
 		return err
 	}
@@ -133,7 +133,7 @@ func (t *Terrain) extent(info raster.Info) (orb.Bound, float64, error) {
 		}
 		return edges, pixelMetres(info.CRS, g, edges.Center().Lat()), nil
 	}
-	projector, err := t.library.NewProjector(info.CRS)
+	projector, err := t.gdal.NewProjector(info.CRS)
 	if err != nil {
 		return orb.Bound{}, 0, err
 	}

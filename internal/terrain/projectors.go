@@ -9,9 +9,9 @@ import (
 // projectors lends out the projectors of one CRS: each is used by one
 // goroutine at a time, and they are few.
 type projectors struct {
-	library *raster.Library
-	mu      sync.Mutex
-	idle    []*raster.Projector
+	gdal *raster.Library
+	mu   sync.Mutex
+	idle []*raster.Projector
 }
 
 // with runs use with a projector of crs.
@@ -32,7 +32,7 @@ func (p *projectors) take(crs raster.CRS) (*raster.Projector, error) {
 		p.idle = p.idle[:n-1]
 		return own, nil
 	}
-	return p.library.NewProjector(crs)
+	return p.gdal.NewProjector(crs)
 }
 
 func (p *projectors) give(own *raster.Projector) {

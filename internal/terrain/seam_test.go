@@ -116,7 +116,7 @@ func TestHeightsAreBilinear(t *testing.T) {
 			pixelM := c.whole.pixel * 55e3 // of longitude at 60 degrees, the shorter side
 			if c.whole.system != "" {
 				pixelM = c.whole.pixel
-				projector, err := terrain.library.NewProjector(terrain.mosaics[0].crs)
+				projector, err := terrain.gdal.NewProjector(terrain.mosaics[0].crs)
 				must(t, err)
 				defer projector.Close()
 				project = func(p orb.Point) (float64, float64) {

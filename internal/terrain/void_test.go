@@ -24,7 +24,7 @@ func square(side int, pixel float64, height func(column, row int) float64) grid 
 // metresFrom finds the place of a point of the grid of square.
 func metresFrom(t testing.TB, terrain *Terrain) func(east, north float64) orb.Point {
 	t.Helper()
-	projector, err := terrain.library.NewProjector(described(t, "32630"))
+	projector, err := terrain.gdal.NewProjector(described(t, "32630"))
 	must(t, err)
 	t.Cleanup(projector.Close)
 	return func(east, north float64) orb.Point {
