@@ -19,7 +19,7 @@ func (s *sheet) strip() {
 		return // nothing is known, or all of the path lies off the strip's top
 	}
 	s.y += 36
-	s.text(marginLeft, s.y, face{size: 22, bold: true}, "Room under the line, in first Fresnel radii (F1)")
+	s.text(marginLeft, s.y, face{size: 22, bold: true}, "Clearance, in first Fresnel radii (F1)")
 	s.text(marginRight, s.y, face{size: 20, fill: quiet, anchor: atEnd}, kFactor(v.drawn.K))
 	r := stripScale{box: box{v.plot.left, v.plot.right, s.y + 18, s.y + 18 + stripHeight}, high: high}
 	if v.drawn.MinRatio < 0 {

@@ -42,7 +42,7 @@ func near(a, b float64) bool { return a-b < 1e-9 && b-a < 1e-9 }
 
 func TestStripOnlyWhereItShows(t *testing.T) {
 	for name, want := range map[string]bool{"clear": false, "marginal": true, "obstructed": true, "unknown_end": false} {
-		if got := texts(t, name); want != slices.Contains(splitLines(got), "Room under the line, in first Fresnel radii (F1)") {
+		if got := texts(t, name); want != slices.Contains(splitLines(got), "Clearance, in first Fresnel radii (F1)") {
 			t.Errorf("%s: got the strip %v, want %v", name, !want, want)
 		}
 	}
