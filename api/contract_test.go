@@ -129,3 +129,22 @@ func FuzzDecodeAssessmentRequest(f *testing.F) {
 		}
 	})
 }
+
+// The page explains each field: in its own words, or by the document that it
+// leads to.
+func TestEveryFieldIsExplained(t *testing.T) {
+	contract, err := NewContract()
+	if err != nil {
+		t.Fatal(err)
+	}
+	for _, s := range contract.view().Schemas {
+		if s.Description == "" {
+			t.Errorf("%s has no description", s.Name)
+		}
+		for _, f := range s.Fields {
+			if f.Description == "" && f.Ref == "" {
+				t.Errorf("%s.%s has no description", s.Name, f.Name)
+			}
+		}
+	}
+}

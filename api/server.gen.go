@@ -373,13 +373,16 @@ func (e GetAssessmentParamsInclude) Valid() bool {
 	}
 }
 
-// AimReport defines model for AimReport.
+// AimReport Where both antennas point.
 type AimReport struct {
+	// A Where one antenna points, what it covers, and what an error costs. Degrees.
 	A EndAim `json:"a"`
+
+	// B Where one antenna points, what it covers, and what an error costs. Degrees.
 	B EndAim `json:"b"`
 }
 
-// Antenna defines model for Antenna.
+// Antenna One model of antenna.
 type Antenna struct {
 	// Name Unique in the register.
 	Name string `json:"name"`
@@ -424,23 +427,25 @@ type AntennaClass string
 // AntennaPolarisations defines model for Antenna.Polarisations.
 type AntennaPolarisations string
 
-// AntennaEntry defines model for AntennaEntry.
+// AntennaEntry One antenna in the register.
 type AntennaEntry struct {
 	// Origin Where it comes from. Only own ones can be taken away.
-	Origin  AntennaEntryOrigin `json:"origin"`
-	Antenna Antenna            `json:"antenna"`
+	Origin AntennaEntryOrigin `json:"origin"`
+
+	// Antenna One model of antenna.
+	Antenna Antenna `json:"antenna"`
 }
 
 // AntennaEntryOrigin Where it comes from. Only own ones can be taken away.
 type AntennaEntryOrigin string
 
-// AntennaList defines model for AntennaList.
+// AntennaList The register of antennas.
 type AntennaList struct {
 	// Antennas By origin.
 	Antennas []AntennaEntry `json:"antennas"`
 }
 
-// Assessment defines model for Assessment.
+// Assessment One link judged. It never changes.
 type Assessment struct {
 	// Id The assessment's id: a hash of the question, the rasters' versions and the engine's version.
 	Id string `json:"id"`
@@ -456,8 +461,12 @@ type Assessment struct {
 
 	// Cautions What whoever acts on this should know.
 	Cautions []Note `json:"cautions"`
-	Path     Path   `json:"path"`
-	Ends     Ends   `json:"ends"`
+
+	// Path The path between the ends.
+	Path Path `json:"path"`
+
+	// Ends Both ends, as they were placed.
+	Ends Ends `json:"ends"`
 
 	// Clearance How each criterion fares.
 	Clearance []Clearance `json:"clearance"`
@@ -466,19 +475,30 @@ type Assessment struct {
 	Obstructions []Obstruction `json:"obstructions"`
 
 	// Raise The least extra antenna height that meets every criterion. Null where none up to the cap does, or where missing data keeps it from being known.
-	Raise       Raise        `json:"raise"`
-	Diffraction Diffraction  `json:"diffraction"`
-	Terrain     Terrain      `json:"terrain"`
-	Radio       *RadioReport `json:"radio,omitempty"`
+	Raise Raise `json:"raise"`
+
+	// Diffraction The diffraction loss of the path.
+	Diffraction Diffraction `json:"diffraction"`
+
+	// Terrain What the heights came from, and how they were sampled.
+	Terrain Terrain `json:"terrain"`
+
+	// Radio Whether the link carries traffic, with what margin, aimed where.
+	Radio *RadioReport `json:"radio,omitempty"`
 
 	// Samples The arrays behind the answer, one entry a sample from A to B. Null is a place without a height.
 	Samples *Samples `json:"samples,omitempty"`
-	Links   Links    `json:"links"`
+
+	// Links Where to read more.
+	Links Links `json:"links"`
 }
 
-// AssessmentRequest defines model for AssessmentRequest.
+// AssessmentRequest One link to be judged.
 type AssessmentRequest struct {
+	// A One end of the link.
 	A EndRequest `json:"a"`
+
+	// B One end of the link.
 	B EndRequest `json:"b"`
 
 	// CoverHeightM Height of trees and buildings to count on the terrain between the ends, metres. Not added where a surface raster holds them already.
@@ -523,16 +543,22 @@ type Availability struct {
 	RainMethod string `json:"rain_method"`
 
 	// RainEdition Edition of P.530.
-	RainEdition int32  `json:"rain_edition"`
-	AToB        Outage `json:"a_to_b"`
-	BToA        Outage `json:"b_to_a"`
-	Both        Outage `json:"both"`
+	RainEdition int32 `json:"rain_edition"`
+
+	// AToB The time lost at a fade margin.
+	AToB Outage `json:"a_to_b"`
+
+	// BToA The time lost at a fade margin.
+	BToA Outage `json:"b_to_a"`
+
+	// Both The time lost at a fade margin.
+	Both Outage `json:"both"`
 
 	// Modulations Of both directions, at the worse margin.
 	Modulations []ModulationAvailability `json:"modulations"`
 }
 
-// Budget defines model for Budget.
+// Budget The budget of one direction.
 type Budget struct {
 	// Lines They add up to the received level.
 	Lines []BudgetLine `json:"lines"`
@@ -557,10 +583,12 @@ type Budget struct {
 
 	// TargetMarginDb Its margin, the fade margin.
 	TargetMarginDb *float64 `json:"target_margin_db"`
-	Overload       Overload `json:"overload"`
+
+	// Overload The unfaded level against what the receiver takes.
+	Overload Overload `json:"overload"`
 }
 
-// BudgetLine defines model for BudgetLine.
+// BudgetLine One line of a budget.
 type BudgetLine struct {
 	// Code Stable, for programs.
 	Code string `json:"code"`
@@ -581,22 +609,34 @@ type BudgetLineUnit string
 // Choice The least antennas and power that do, and what a narrower beam would spare. Both ends aimed at each other.
 type Choice struct {
 	// WithAvailability The options meet the target's availability too.
-	WithAvailability bool          `json:"with_availability"`
-	Least            *Option       `json:"least,omitempty"`
-	LeastAtA         *Option       `json:"least_at_a,omitempty"`
-	LeastAtB         *Option       `json:"least_at_b,omitempty"`
-	Narrow           *Option       `json:"narrow,omitempty"`
-	Spared           *SparedReport `json:"spared,omitempty"`
+	WithAvailability bool `json:"with_availability"`
+
+	// Least One way to equip both ends.
+	Least *Option `json:"least,omitempty"`
+
+	// LeastAtA One way to equip both ends.
+	LeastAtA *Option `json:"least_at_a,omitempty"`
+
+	// LeastAtB One way to equip both ends.
+	LeastAtB *Option `json:"least_at_b,omitempty"`
+
+	// Narrow One way to equip both ends.
+	Narrow *Option `json:"narrow,omitempty"`
+
+	// Spared What the narrow beam spares at both ends.
+	Spared *SparedReport `json:"spared,omitempty"`
 
 	// ShortDb What the best candidate lacks at full power where none does.
-	ShortDb      *float64           `json:"short_db"`
+	ShortDb *float64 `json:"short_db"`
+
+	// Polarisation Which polarisation suits rain and neighbours.
 	Polarisation PolarisationAdvice `json:"polarisation"`
 
 	// Missing Why there is no option.
 	Missing []Note `json:"missing"`
 }
 
-// Clearance defines model for Clearance.
+// Clearance How one criterion fares.
 type Clearance struct {
 	// K The k-factor.
 	K float64 `json:"k"`
@@ -667,7 +707,7 @@ type ClimateRainEdition int32
 // obstruction. `f1_60` is 0.6 of it at k 4/3 (common practice, no source).
 type CriteriaSet string
 
-// Criterion defines model for Criterion.
+// Criterion One clearance criterion.
 type Criterion struct {
 	// F1Fraction Clearance required, as a fraction of the first Fresnel radius.
 	F1Fraction float64 `json:"f1_fraction"`
@@ -676,7 +716,7 @@ type Criterion struct {
 	K float64 `json:"k"`
 }
 
-// Diffraction defines model for Diffraction.
+// Diffraction The diffraction loss of the path.
 type Diffraction struct {
 	// Method ITU-R P.526-16 section 4.5.
 	Method DiffractionMethod `json:"method"`
@@ -686,7 +726,7 @@ type Diffraction struct {
 // DiffractionMethod ITU-R P.526-16 section 4.5.
 type DiffractionMethod string
 
-// DiffractionLoss defines model for DiffractionLoss.
+// DiffractionLoss The loss at one k-factor.
 type DiffractionLoss struct {
 	// K The k-factor.
 	K float64 `json:"k"`
@@ -695,7 +735,7 @@ type DiffractionLoss struct {
 	LossDb *float64 `json:"loss_db"`
 }
 
-// End defines model for End.
+// End One end, as it was placed.
 type End struct {
 	// Name As asked.
 	Name string `json:"name"`
@@ -713,7 +753,7 @@ type End struct {
 	AntennaAmslM *float64 `json:"antenna_amsl_m"`
 }
 
-// EndAim defines model for EndAim.
+// EndAim Where one antenna points, what it covers, and what an error costs. Degrees.
 type EndAim struct {
 	// AzimuthDeg To the far end, from true north.
 	AzimuthDeg *float64 `json:"azimuth_deg"`
@@ -776,7 +816,7 @@ type EndAim struct {
 	Sway3dbDeg *float64 `json:"sway_3db_deg"`
 }
 
-// EndOption defines model for EndOption.
+// EndOption How one end is equipped.
 type EndOption struct {
 	// Antenna Its name.
 	Antenna string `json:"antenna"`
@@ -803,7 +843,7 @@ type EndOption struct {
 	MarginDb *float64 `json:"margin_db"`
 }
 
-// EndRequest defines model for EndRequest.
+// EndRequest One end of the link.
 type EndRequest struct {
 	// AntennaHeightM Height of the antenna's centre above what `height_above` says, metres.
 	AntennaHeightM float64 `json:"antenna_height_m"`
@@ -821,9 +861,12 @@ type EndRequest struct {
 	Name *string `json:"name,omitempty"`
 }
 
-// Ends defines model for Ends.
+// Ends Both ends, as they were placed.
 type Ends struct {
+	// A One end, as it was placed.
 	A End `json:"a"`
+
+	// B One end, as it was placed.
 	B End `json:"b"`
 }
 
@@ -842,7 +885,7 @@ type Exposure struct {
 	Source string `json:"source"`
 }
 
-// ExposureReport defines model for ExposureReport.
+// ExposureReport Informative distances at both ends.
 type ExposureReport struct {
 	// A Informative, no statement about safety or law.
 	A Exposure `json:"a"`
@@ -851,7 +894,7 @@ type ExposureReport struct {
 	B Exposure `json:"b"`
 }
 
-// FieldError defines model for FieldError.
+// FieldError One field at fault.
 type FieldError struct {
 	// Pointer The field, as a JSON pointer (RFC 6901); empty is the whole document.
 	Pointer string `json:"pointer"`
@@ -860,7 +903,7 @@ type FieldError struct {
 	Detail string `json:"detail"`
 }
 
-// Health defines model for Health.
+// Health Whether the service is well.
 type Health struct {
 	// Status The sum of the checks.
 	Status HealthStatus  `json:"status"`
@@ -870,7 +913,7 @@ type Health struct {
 // HealthStatus The sum of the checks.
 type HealthStatus string
 
-// HealthCheck defines model for HealthCheck.
+// HealthCheck One thing checked.
 type HealthCheck struct {
 	// Name What was checked.
 	Name string `json:"name"`
@@ -882,13 +925,16 @@ type HealthCheck struct {
 	Detail *string `json:"detail,omitempty"`
 }
 
-// Heard defines model for Heard.
+// Heard What it hears of both ends.
 type Heard struct {
+	// FromA What it hears of one end.
 	FromA HeardEnd `json:"from_a"`
+
+	// FromB What it hears of one end.
 	FromB HeardEnd `json:"from_b"`
 }
 
-// HeardEnd defines model for HeardEnd.
+// HeardEnd What it hears of one end.
 type HeardEnd struct {
 	// InBeam It lies inside the half-power beam.
 	InBeam bool `json:"in_beam"`
@@ -903,7 +949,7 @@ type HeardEnd struct {
 // HeightAbove What the antenna height is measured from. `roof` is the top of the surface at that point.
 type HeightAbove string
 
-// Links defines model for Links.
+// Links Where to read more.
 type Links struct {
 	// Self This assessment.
 	Self string `json:"self"`
@@ -912,7 +958,7 @@ type Links struct {
 	Svg string `json:"svg"`
 }
 
-// Margin defines model for Margin.
+// Margin What one modulation has to spare.
 type Margin struct {
 	// Modulation Its name.
 	Modulation string `json:"modulation"`
@@ -933,7 +979,7 @@ type Margin struct {
 	Usable bool `json:"usable"`
 }
 
-// Modulation defines model for Modulation.
+// Modulation One working point of a radio.
 type Modulation struct {
 	// Name What it is called.
 	Name string `json:"name"`
@@ -951,7 +997,7 @@ type Modulation struct {
 	MaxPowerDbm *float64 `json:"max_power_dbm,omitempty"`
 }
 
-// ModulationAvailability defines model for ModulationAvailability.
+// ModulationAvailability The availability of one modulation.
 type ModulationAvailability struct {
 	// Modulation Its name.
 	Modulation string `json:"modulation"`
@@ -969,7 +1015,7 @@ type ModulationAvailability struct {
 // ModulationAvailabilityBound How the rain and total figures stand to the truth.
 type ModulationAvailabilityBound string
 
-// Month defines model for Month.
+// Month The climate normals of one month.
 type Month struct {
 	// RainMm Mean total of the month, mm.
 	RainMm float64 `json:"rain_mm"`
@@ -978,16 +1024,22 @@ type Month struct {
 	TemperatureC float64 `json:"temperature_c"`
 }
 
-// NeighbourReport defines model for NeighbourReport.
+// NeighbourReport What one neighbour hears of the link, as asked and with either choice.
 type NeighbourReport struct {
 	// Name As given.
-	Name   string `json:"name"`
-	Given  Heard  `json:"given"`
-	Least  *Heard `json:"least,omitempty"`
+	Name string `json:"name"`
+
+	// Given What it hears of both ends.
+	Given Heard `json:"given"`
+
+	// Least What it hears of both ends.
+	Least *Heard `json:"least,omitempty"`
+
+	// Narrow What it hears of both ends.
 	Narrow *Heard `json:"narrow,omitempty"`
 }
 
-// NeighbourRequest defines model for NeighbourRequest.
+// NeighbourRequest Another site that may hear the link.
 type NeighbourRequest struct {
 	// Name What people call it.
 	Name *string `json:"name,omitempty"`
@@ -1008,7 +1060,7 @@ type NeighbourRequest struct {
 	Polarisation *Polarisation `json:"polarisation,omitempty"`
 }
 
-// Note defines model for Note.
+// Note Something said, a code for programs and a sentence for people.
 type Note struct {
 	// Code Stable, for programs.
 	Code string `json:"code"`
@@ -1017,7 +1069,7 @@ type Note struct {
 	Detail string `json:"detail"`
 }
 
-// Obstruction defines model for Obstruction.
+// Obstruction One stretch that misses a criterion.
 type Obstruction struct {
 	// K The k-factor.
 	K float64 `json:"k"`
@@ -1041,13 +1093,16 @@ type Obstruction struct {
 	ShortM float64 `json:"short_m"`
 }
 
-// Option defines model for Option.
+// Option One way to equip both ends.
 type Option struct {
+	// A How one end is equipped.
 	A EndOption `json:"a"`
+
+	// B How one end is equipped.
 	B EndOption `json:"b"`
 }
 
-// Outage defines model for Outage.
+// Outage The time lost at a fade margin.
 type Outage struct {
 	// Known The total is known.
 	Known bool `json:"known"`
@@ -1089,7 +1144,7 @@ type Outage struct {
 // OutageBound How the rain and total figures stand to the truth.
 type OutageBound string
 
-// Overload defines model for Overload.
+// Overload The unfaded level against what the receiver takes.
 type Overload struct {
 	// MaxInputDbm What the receiver takes.
 	MaxInputDbm float64 `json:"max_input_dbm"`
@@ -1107,7 +1162,7 @@ type Overload struct {
 	EnhancementAtMost bool `json:"enhancement_at_most"`
 }
 
-// Path defines model for Path.
+// Path The path between the ends.
 type Path struct {
 	// LengthM Path length on WGS 84, metres.
 	LengthM float64 `json:"length_m"`
@@ -1125,7 +1180,7 @@ type Path struct {
 	TiltBDeg *float64 `json:"tilt_b_deg"`
 }
 
-// PatternPoint defines model for PatternPoint.
+// PatternPoint One row of a pattern table.
 type PatternPoint struct {
 	// AngleDeg Off the axis, degrees.
 	AngleDeg float64 `json:"angle_deg"`
@@ -1152,7 +1207,7 @@ type PatternSourceReference string
 // Polarisation Polarisation of the link.
 type Polarisation string
 
-// PolarisationAdvice defines model for PolarisationAdvice.
+// PolarisationAdvice Which polarisation suits rain and neighbours.
 type PolarisationAdvice struct {
 	// RainVerticalDb Rain attenuation exceeded 0.01 % of the year, vertical.
 	RainVerticalDb *float64 `json:"rain_vertical_db"`
@@ -1197,7 +1252,7 @@ type Problem struct {
 	Errors *[]FieldError `json:"errors,omitempty"`
 }
 
-// ProfilePoint defines model for ProfilePoint.
+// ProfilePoint One point of a profile that the caller brings.
 type ProfilePoint struct {
 	// CoverM Height of trees or buildings above the terrain there, metres.
 	CoverM *float64 `json:"cover_m,omitempty"`
@@ -1209,7 +1264,7 @@ type ProfilePoint struct {
 	GroundM float64 `json:"ground_m"`
 }
 
-// Radio defines model for Radio.
+// Radio One model of radio.
 type Radio struct {
 	// Name Unique in the register.
 	Name string `json:"name"`
@@ -1239,42 +1294,52 @@ type Radio struct {
 	Modulations []Modulation `json:"modulations"`
 }
 
-// RadioEntry defines model for RadioEntry.
+// RadioEntry One radio in the register.
 type RadioEntry struct {
 	// Origin Where it comes from. Only own ones can be taken away.
 	Origin RadioEntryOrigin `json:"origin"`
-	Radio  Radio            `json:"radio"`
+
+	// Radio One model of radio.
+	Radio Radio `json:"radio"`
 }
 
 // RadioEntryOrigin Where it comes from. Only own ones can be taken away.
 type RadioEntryOrigin string
 
-// RadioList defines model for RadioList.
+// RadioList The register of radios.
 type RadioList struct {
 	// Radios By origin.
 	Radios []RadioEntry `json:"radios"`
 }
 
-// RadioReport defines model for RadioReport.
+// RadioReport Whether the link carries traffic, with what margin, aimed where.
 type RadioReport struct {
 	// Meets Both directions meet the target, without overload and with the far end in both beams.
 	Meets bool `json:"meets"`
 
 	// Reasons Why not.
 	Reasons []Note `json:"reasons"`
-	AToB    Budget `json:"a_to_b"`
-	BToA    Budget `json:"b_to_a"`
+
+	// AToB The budget of one direction.
+	AToB Budget `json:"a_to_b"`
+
+	// BToA The budget of one direction.
+	BToA Budget `json:"b_to_a"`
 
 	// Availability Percentages of time, of the average worst month or the average year as their names say.
 	Availability Availability `json:"availability"`
-	Aim          AimReport    `json:"aim"`
+
+	// Aim Where both antennas point.
+	Aim AimReport `json:"aim"`
 
 	// Choice The least antennas and power that do, and what a narrower beam would spare. Both ends aimed at each other.
 	Choice *Choice `json:"choice,omitempty"`
 
 	// Neighbours What each neighbour hears.
 	Neighbours []NeighbourReport `json:"neighbours"`
-	Exposure   ExposureReport    `json:"exposure"`
+
+	// Exposure Informative distances at both ends.
+	Exposure ExposureReport `json:"exposure"`
 
 	// Warnings About the limits that the operator entered. They decide nothing.
 	Warnings []Note `json:"warnings"`
@@ -1325,7 +1390,7 @@ type Raise struct {
 	CapM float64 `json:"cap_m"`
 }
 
-// Raster defines model for Raster.
+// Raster One raster found.
 type Raster struct {
 	// Name The file's path below its folder.
 	Name string `json:"name"`
@@ -1379,7 +1444,7 @@ type Raster struct {
 // RasterKind `ground` is bare earth, `surface` includes roofs and trees, `unstated` is not known, `profile` is heights that the caller brought.
 type RasterKind string
 
-// RasterList defines model for RasterList.
+// RasterList The rasters found.
 type RasterList struct {
 	Rasters []Raster `json:"rasters"`
 }
@@ -1408,7 +1473,7 @@ type Samples struct {
 	F1M []float64 `json:"f1_m"`
 }
 
-// Spared defines model for Spared.
+// Spared What it spares at one end, dB.
 type Spared struct {
 	// MadeDb Less noise made outside the wider beam, in the mean.
 	MadeDb *float64 `json:"made_db"`
@@ -1417,9 +1482,12 @@ type Spared struct {
 	HeardDb *float64 `json:"heard_db"`
 }
 
-// SparedReport defines model for SparedReport.
+// SparedReport What the narrow beam spares at both ends.
 type SparedReport struct {
+	// A What it spares at one end, dB.
 	A Spared `json:"a"`
+
+	// B What it spares at one end, dB.
 	B Spared `json:"b"`
 }
 
@@ -1438,11 +1506,15 @@ type Target struct {
 // TerminalRequest One end, a radio and an antenna, by name or described here, and how they are set up.
 type TerminalRequest struct {
 	// Radio Name of a radio in the register.
-	Radio      *string `json:"radio,omitempty"`
-	RadioModel *Radio  `json:"radio_model,omitempty"`
+	Radio *string `json:"radio,omitempty"`
+
+	// RadioModel One model of radio.
+	RadioModel *Radio `json:"radio_model,omitempty"`
 
 	// Antenna Name of an antenna in the register.
-	Antenna      *string  `json:"antenna,omitempty"`
+	Antenna *string `json:"antenna,omitempty"`
+
+	// AntennaModel One model of antenna.
 	AntennaModel *Antenna `json:"antenna_model,omitempty"`
 
 	// Polarisation Polarisation of the link.
@@ -1467,7 +1539,7 @@ type TerminalRequest struct {
 	AttenuatorDb *float64 `json:"attenuator_db,omitempty"`
 }
 
-// Terrain defines model for Terrain.
+// Terrain What the heights came from, and how they were sampled.
 type Terrain struct {
 	// Rasters What the heights came from.
 	Rasters []TerrainSource `json:"rasters"`
@@ -1482,7 +1554,7 @@ type Terrain struct {
 	VoidShare float64 `json:"void_share"`
 }
 
-// TerrainSource defines model for TerrainSource.
+// TerrainSource One raster that gave heights.
 type TerrainSource struct {
 	// Name The raster's name.
 	Name string `json:"name"`

@@ -92,6 +92,12 @@ func (s *sheet) equipment(letter string, t assess.TerminalRequest) {
 	if t.Polarisation != "" {
 		parts = append(parts, string(t.Polarisation))
 	}
+	if t.AzimuthDeg != nil {
+		parts = append(parts, "aimed at "+fixed(*t.AzimuthDeg, 1)+"°")
+	}
+	if t.TiltDeg != nil {
+		parts = append(parts, "tilted "+fixed(*t.TiltDeg, 1)+"°")
+	}
 	s.y += 30
 	s.name(marginLeft, s.y, face{size: 20}, "At "+letter+": "+strings.Join(parts, "; "), marginRight-marginLeft)
 }
