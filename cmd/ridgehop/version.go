@@ -33,6 +33,6 @@ type versionCommand struct{}
 // Run prints them.
 func (versionCommand) Run(s streams) error {
 	_, err := fmt.Fprintf(s.out, "ridgehop %s, engine %s, GDAL %s, %s\n",
-		programVersion(), assess.EngineVersion, raster.NewLibrary().Version(), runtime.Version())
+		programVersion(), assess.EngineVersion, raster.NewGDAL().Version(), runtime.Version())
 	return err
 }

@@ -40,7 +40,7 @@ func rollingTerrain(tb testing.TB) *terrain.Terrain {
 	if err := os.WriteFile(filepath.Join(folder, "N00E007.hgt"), tile, 0o600); err != nil {
 		tb.Fatal(err)
 	}
-	loaded, err := terrain.Load(context.Background(), raster.NewLibrary(), []string{folder}, terrain.Options{}, slog.New(slog.DiscardHandler))
+	loaded, err := terrain.Load(context.Background(), raster.NewGDAL(), []string{folder}, terrain.Options{}, slog.New(slog.DiscardHandler))
 	if err != nil {
 		tb.Fatal(err)
 	}

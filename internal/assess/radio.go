@@ -63,7 +63,7 @@ func (a *Assessment) radioLink(ws *profile.Workspace) (radio.Link, error) {
 			Located: path.Located, AzimuthADeg: path.AzimuthADeg, AzimuthBDeg: path.AzimuthBDeg,
 			TiltADeg: a.Judgement.TiltADeg, TiltBDeg: a.Judgement.TiltBDeg,
 			AntennaAM: a.Link.AntennaAM, AntennaBM: a.Link.AntennaBM, GroundAM: a.GroundAM, GroundBM: a.GroundBM,
-			MeanTerrainM: a.meanTerrainM(), LatitudeDeg: path.Middle().Lat(), DiffractionDB: diffraction,
+			MeanTerrainM: a.meanTerrainM(), DiffractionDB: diffraction,
 		},
 		A: r.A.terminal(), B: r.B.terminal(), Target: r.Target, Climate: r.Climate.known(),
 		Neighbours: a.neighbours(),

@@ -2,7 +2,6 @@ package radio
 
 import (
 	"math"
-	"time"
 
 	"ridgehop/internal/itu/p676"
 )
@@ -19,8 +18,6 @@ type Link struct {
 	// Climate is what is known of the weather and air; unknown parts leave
 	// their answers out and say so.
 	Climate Climate
-	// Date is the day for which magnetic azimuths are wanted.
-	Date time.Time
 	// Limits are the operator's own.
 	Limits []Limit
 	// Neighbours are other sites that the link might disturb.
@@ -38,7 +35,6 @@ type PathFigures struct {
 	AntennaAM, AntennaBM     float64 // above mean sea level
 	GroundAM, GroundBM       float64
 	MeanTerrainM             float64 // of the profile, above mean sea level
-	LatitudeDeg              float64 // of the middle
 	DiffractionDB            float64 // at the median k; NaN if unknown
 }
 
@@ -75,7 +71,6 @@ type Climate struct {
 	RainRateMMH  float64 // exceeded 0.01 % of the average year
 	RainEdition  int     // of P.530: 17 or 19; 0 is 19
 	DryOrCold    bool    // which of P.841's two rain climates
-	Source       string  // where the figures come from, in words
 	TemperatureK float64 // of the air; NaN is 288.15
 	PressureHPA  float64 // of dry air; NaN is 1013.25
 	VapourGM3    float64 // water vapour density; NaN is 7.5

@@ -54,7 +54,7 @@ func testLink() Link {
 		FrequencyGHz: 18, LengthM: 10_000, A: testTerminal(), B: testTerminal(),
 		Path: PathFigures{
 			Located: true, AzimuthADeg: 40, AzimuthBDeg: 220.1, TiltADeg: 0.2, TiltBDeg: -0.26,
-			AntennaAM: 120, AntennaBM: 160, GroundAM: 100, GroundBM: 130, MeanTerrainM: 90, LatitudeDeg: 52,
+			AntennaAM: 120, AntennaBM: 160, GroundAM: 100, GroundBM: 130, MeanTerrainM: 90,
 		},
 		Target:     Target{CapacityMbps: 150, MarginDB: 10, AvailabilityPercent: 99.99},
 		Climate:    climate,

@@ -23,7 +23,7 @@ type Dataset struct {
 // georeference, coordinate reference system. No pixel is read. The error says
 // what is wrong and what would be right, and wraps one of the package's
 // sentinels.
-func (*Library) Open(path string) (*Dataset, error) {
+func (*GDAL) Open(path string) (*Dataset, error) {
 	driver, err := driverFor(path)
 	if err != nil {
 		return nil, err

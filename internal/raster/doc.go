@@ -3,6 +3,6 @@
 // windows of heights in metres, and projects longitudes and latitudes to a
 // raster's own coordinates. Errors carry GDAL's own words.
 //
-// A Library is safe for concurrent use. A Dataset or a Projector is used by
+// A GDAL is safe for concurrent use. A Dataset or a Projector is used by
 // one goroutine at a time.
 package raster

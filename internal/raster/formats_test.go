@@ -213,7 +213,7 @@ func TestSidecarsAreNotRead(t *testing.T) {
 }
 
 func TestLibraryVersion(t *testing.T) {
-	if got := NewLibrary().Version(); !strings.Contains(got, ".") {
+	if got := NewGDAL().Version(); !strings.Contains(got, ".") {
 		t.Errorf("got %q, want a release number", got)
 	}
 }

@@ -41,7 +41,7 @@ func seeds(t testing.TB) []seed {
 
 // useAll opens a file and, where it is fit, reads corner pixels and builds the
 // projector: all that is done with a file before its first path.
-func useAll(t testing.TB, library *Library, path string) {
+func useAll(t testing.TB, library *GDAL, path string) {
 	d, err := library.Open(path)
 	if err != nil {
 		return
@@ -110,7 +110,7 @@ func TestMutatedFiles(t *testing.T) {
 		rounds = 60
 		limit  = time.Second // generous: a whole file takes milliseconds, one of 65,535 bands 0.1 s
 	)
-	library := NewLibrary()
+	library := NewGDAL()
 	folders := t.TempDir()
 	r := rand.New(rand.NewPCG(1, 2026))
 	for _, s := range seeds(t) {
@@ -140,7 +140,7 @@ func FuzzOpen(f *testing.F) {
 	for i, s := range names {
 		f.Add(uint8(i), s.content)
 	}
-	library := NewLibrary()
+	library := NewGDAL()
 	f.Fuzz(func(t *testing.T, which uint8, content []byte) {
 		name := names[int(which)%len(names)].name
 		useAll(t, library, put(t, t.TempDir(), name, content))

@@ -17,14 +17,14 @@ import (
 	"github.com/lukeroth/gdal"
 )
 
-// Library is GDAL as this process uses it. GDAL keeps its settings for the
-// whole process, so one Library is made at the start and handed around.
-type Library struct{}
+// GDAL is the library as this process uses it. GDAL keeps its settings for the
+// whole process, so one value is made at the start and handed around.
+type GDAL struct{}
 
-// NewLibrary sets GDAL up: errors are returned instead of printed, no sidecar
+// NewGDAL sets GDAL up: errors are returned instead of printed, no sidecar
 // statistics are read or written, no folder is listed on opening a file, and
 // PROJ stays off the network.
-func NewLibrary() *Library {
+func NewGDAL() *GDAL {
 	for key, value := range map[string]string{
 		"GDAL_PAM_ENABLED":                  "NO",
 		"GDAL_DISABLE_READDIR_ON_OPEN":      "EMPTY_DIR",
@@ -35,11 +35,11 @@ func NewLibrary() *Library {
 		gdal.CPLSetConfigOption(key, value)
 	}
 	C.ridgehop_quiet()
-	return &Library{}
+	return &GDAL{}
 }
 
 // Version is the release of the GDAL that this binary was built against.
-func (*Library) Version() string { return gdal.RELEASE_NAME }
+func (*GDAL) Version() string { return gdal.RELEASE_NAME }
 
 // guarded runs one GDAL call on one operating-system thread and, where the
 // call reports failure, returns GDAL's own message, which GDAL keeps for that

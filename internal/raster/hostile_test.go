@@ -109,7 +109,7 @@ func TestTinyFileThatDeclaresMuch(t *testing.T) {
 	for _, c := range cases {
 		t.Run(c.name, func(t *testing.T) {
 			start, before := time.Now(), peakMemory(t)
-			d, err := NewLibrary().Open(c.path)
+			d, err := NewGDAL().Open(c.path)
 			if err == nil {
 				d.Close()
 			}
@@ -259,7 +259,7 @@ func TestRefusedFiles(t *testing.T) {
 	}
 	for _, c := range cases {
 		t.Run(c.name, func(t *testing.T) {
-			d, err := NewLibrary().Open(c.path)
+			d, err := NewGDAL().Open(c.path)
 			if err == nil {
 				d.Close()
 			}
@@ -308,7 +308,7 @@ func TestRefusedNames(t *testing.T) {
 		"made\x00.tif",
 		".tif",
 	} {
-		d, err := NewLibrary().Open(name)
+		d, err := NewGDAL().Open(name)
 		if err == nil {
 			d.Close()
 		}
@@ -326,7 +326,7 @@ func TestReadOfAFileCutShort(t *testing.T) {
 	content, err := os.ReadFile(f.write(t))
 	must(t, err)
 	path := writeFile(t, "cut.tif", content[:len(content)/2])
-	d, err := NewLibrary().Open(path)
+	d, err := NewGDAL().Open(path)
 	if err != nil {
 		// GDAL puts the directory in front: the file must open.
 		t.Fatal(err)

@@ -58,7 +58,7 @@ type Projector struct {
 // NewProjector prepares the change between WGS 84 and crs. Datum shifts use
 // the grids that PROJ finds on this machine and its next best method
 // otherwise. The error is ErrCRS.
-func (*Library) NewProjector(crs CRS) (*Projector, error) {
+func (*GDAL) NewProjector(crs CRS) (*Projector, error) {
 	definition := C.CString(crs.WKT)
 	defer C.free(unsafe.Pointer(definition))
 	p := &Projector{name: crs.Name}

@@ -24,7 +24,7 @@ func crs(t testing.TB, code int) CRS {
 
 func projector(t testing.TB, c CRS) *Projector {
 	t.Helper()
-	p, err := NewLibrary().NewProjector(c)
+	p, err := NewGDAL().NewProjector(c)
 	must(t, err)
 	t.Cleanup(p.Close)
 	return p
@@ -259,12 +259,12 @@ func TestDescribeCRS(t *testing.T) {
 
 func TestProjectorRefuses(t *testing.T) {
 	t.Run("a definition that cannot be read", func(t *testing.T) {
-		if _, err := NewLibrary().NewProjector(CRS{Name: "mine", WKT: "nonsense"}); !errors.Is(err, ErrCRS) {
+		if _, err := NewGDAL().NewProjector(CRS{Name: "mine", WKT: "nonsense"}); !errors.Is(err, ErrCRS) {
 			t.Errorf("got %v, want ErrCRS", err)
 		}
 	})
 	t.Run("a system that PROJ ties to nothing", func(t *testing.T) {
-		_, err := NewLibrary().NewProjector(crs(t, 2303)) // Qornoq 1927 / Greenland zone 4 west
+		_, err := NewGDAL().NewProjector(crs(t, 2303)) // Qornoq 1927 / Greenland zone 4 west
 		if want := "Qornoq 1927 / Greenland zone 4 west: Cannot find coordinate operations"; !errors.Is(err, ErrCRS) || !strings.Contains(err.Error(), want) {
 			t.Errorf("got %v, want ErrCRS with %q", err, want)
 		}
@@ -297,7 +297,7 @@ func TestProjectorRefuses(t *testing.T) {
 
 // One projector and one dataset a goroutine, many goroutines, all at once.
 func TestAtOnce(t *testing.T) {
-	library := NewLibrary()
+	library := NewGDAL()
 	path := plainTIFF(t).write(t)
 	utm := crs(t, 32638)
 	var wg sync.WaitGroup

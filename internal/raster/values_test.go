@@ -91,7 +91,7 @@ func TestScaleOffsetAndUnit(t *testing.T) {
 func TestUnknownUnit(t *testing.T) {
 	f := plainTIFF(t)
 	f.unit = "fathom"
-	_, err := NewLibrary().Open(f.write(t))
+	_, err := NewGDAL().Open(f.write(t))
 	if !errors.Is(err, ErrUnit) {
 		t.Errorf("got %v, want ErrUnit", err)
 	}
@@ -102,7 +102,7 @@ func TestUnknownUnit(t *testing.T) {
 func TestUnstatedUnitOverFeet(t *testing.T) {
 	f := plainTIFF(t)
 	f.wkt = epsgWKT(t, 2229) // NAD83 / California zone 5 (ftUS)
-	if _, err := NewLibrary().Open(f.write(t)); !errors.Is(err, ErrUnit) {
+	if _, err := NewGDAL().Open(f.write(t)); !errors.Is(err, ErrUnit) {
 		t.Errorf("unstated: got %v, want ErrUnit", err)
 	}
 	for unit, want := range map[string]float64{"m": 100, "us-ft": 100 * 1200.0 / 3937} {

@@ -204,7 +204,7 @@ func writeUSGSDEM(t testing.TB) string {
 // open opens a file that is fit, and closes it with the test.
 func open(t testing.TB, path string) *Dataset {
 	t.Helper()
-	d, err := NewLibrary().Open(path)
+	d, err := NewGDAL().Open(path)
 	if err != nil {
 		t.Fatalf("got %v, want the file open", err)
 	}

@@ -54,7 +54,7 @@ func BenchmarkColdPath(b *testing.B) {
 // an open file, and nothing else.
 func BenchmarkGDALWindow(b *testing.B) {
 	folder, path, _ := benchmarkTile(b)
-	d, err := raster.NewLibrary().Open(filepath.Join(folder, "N50W003.hgt"))
+	d, err := raster.NewGDAL().Open(filepath.Join(folder, "N50W003.hgt"))
 	must(b, err)
 	defer d.Close()
 	g := d.Info().Grid

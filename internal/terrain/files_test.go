@@ -134,7 +134,7 @@ func loaded(t testing.TB, folders ...string) *Terrain {
 
 func loadedWith(t testing.TB, options Options, folders ...string) *Terrain {
 	t.Helper()
-	terrain, err := Load(context.Background(), raster.NewLibrary(), folders, options, slog.New(slog.DiscardHandler))
+	terrain, err := Load(context.Background(), raster.NewGDAL(), folders, options, slog.New(slog.DiscardHandler))
 	must(t, err)
 	t.Cleanup(terrain.Close)
 	return terrain

@@ -11,7 +11,7 @@ import (
 // handles opens rasters when they are first read and keeps a bounded number of
 // them open. Each is used by one goroutine at a time.
 type handles struct {
-	gdal   *raster.Library
+	gdal   *raster.GDAL
 	places chan struct{} // one token for each handle that may be in use
 
 	mu   sync.Mutex
@@ -24,7 +24,7 @@ type handle struct {
 	dataset *raster.Dataset
 }
 
-func newHandles(library *raster.Library, most int) *handles {
+func newHandles(library *raster.GDAL, most int) *handles {
 	return &handles{gdal: library, places: make(chan struct{}, most)}
 }
 

@@ -22,7 +22,7 @@ import (
 // that is not fit is kept in Rasters with the reason, and logged; it never
 // stops the loading. A folder that cannot be listed is an error. Files are
 // closed again: they are opened when a path first needs them.
-func Load(ctx context.Context, library *raster.Library, folders []string, options Options, log *slog.Logger) (*Terrain, error) {
+func Load(ctx context.Context, library *raster.GDAL, folders []string, options Options, log *slog.Logger) (*Terrain, error) {
 	if options.CacheBytes == 0 {
 		options.CacheBytes = 512 << 20
 	}

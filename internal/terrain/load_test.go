@@ -46,7 +46,7 @@ func TestUnusableFilesAreListed(t *testing.T) {
 	grid{columns: 4, rows: 4, left: 5000, top: 5000, pixel: 10, system: "2303", height: constant(1)}.write(t, folder, "untied.asc")
 
 	var log bytes.Buffer
-	terrain, err := Load(context.Background(), raster.NewLibrary(), []string{folder}, Options{}, slog.New(slog.NewTextHandler(&log, nil)))
+	terrain, err := Load(context.Background(), raster.NewGDAL(), []string{folder}, Options{}, slog.New(slog.NewTextHandler(&log, nil)))
 	must(t, err)
 	defer terrain.Close()
 	wants := map[string]string{
@@ -123,7 +123,7 @@ func TestRastersTellWhatTheyAre(t *testing.T) {
 }
 
 func TestFolders(t *testing.T) {
-	library, log := raster.NewLibrary(), slog.New(slog.DiscardHandler)
+	library, log := raster.NewGDAL(), slog.New(slog.DiscardHandler)
 	folder := t.TempDir()
 	square(10, 10, constant(1)).write(t, folder, "a.asc")
 	link := filepath.Join(t.TempDir(), "link")

@@ -71,7 +71,7 @@ func TestRealRastersPointByPoint(t *testing.T) {
 	for file, voids := range map[string]bool{"srtm3_N46E008.tif": true, "srtm3_S36E149.tif": false, "glo30_losangeles_egm2008.tif": false} {
 		t.Run(file, func(t *testing.T) {
 			path := filepath.Join(folder, file)
-			d, err := raster.NewLibrary().Open(path)
+			d, err := raster.NewGDAL().Open(path)
 			must(t, err)
 			info := d.Info()
 			d.Close()

@@ -9,7 +9,7 @@ import (
 // projectors lends out the projectors of one CRS: each is used by one
 // goroutine at a time, and they are few.
 type projectors struct {
-	gdal *raster.Library
+	gdal *raster.GDAL
 	mu   sync.Mutex
 	idle []*raster.Projector
 }

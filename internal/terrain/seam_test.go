@@ -27,7 +27,7 @@ func seamCases(t testing.TB) []seamCase {
 	inDegrees := grid{columns: 64, rows: 48, left: -4, top: 57, pixel: 1.0 / 256, height: rough}
 	// Its middle lies on the central meridian of the zone, 3 degrees west.
 	inMetres := grid{columns: 64, rows: 48, left: 500_000 - 32*30, top: 6_200_000 + 24*30, pixel: 30, system: "32630", height: rough}
-	projector, err := raster.NewLibrary().NewProjector(described(t, "32630"))
+	projector, err := raster.NewGDAL().NewProjector(described(t, "32630"))
 	must(t, err)
 	defer projector.Close()
 	x, y := []float64{500_000}, []float64{6_200_000}
@@ -176,7 +176,7 @@ func TestSeamOfRealTiles(t *testing.T) {
 // wholeFile reads a raster through internal/raster alone.
 func wholeFile(t testing.TB, path string) func(column, row int) float64 {
 	t.Helper()
-	d, err := raster.NewLibrary().Open(path)
+	d, err := raster.NewGDAL().Open(path)
 	must(t, err)
 	defer d.Close()
 	info := d.Info()

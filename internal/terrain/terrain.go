@@ -19,7 +19,7 @@ type Options struct {
 
 // Terrain is a collection of rasters. Load makes one; Close frees it.
 type Terrain struct {
-	gdal    *raster.Library
+	gdal    *raster.GDAL
 	entries []*entry // everything found, usable or not
 	byName  map[string]*entry
 	mosaics []*mosaic

@@ -101,7 +101,7 @@ func TestTrackInProjections(t *testing.T) {
 		{"NAD83 degrees", "4269", -160, -60, 20, 80, geographicMetres},
 		{"NAD83 degrees over the antimeridian", "4269", 175, 185, 50, 72, geographicMetres},
 	}
-	library := raster.NewLibrary()
+	library := raster.NewGDAL()
 	for _, c := range cases {
 		t.Run(c.name, func(t *testing.T) {
 			crs := described(t, c.system)
@@ -141,7 +141,7 @@ func described(t testing.TB, system string) raster.CRS {
 	t.Helper()
 	folder := t.TempDir()
 	grid{columns: 2, rows: 2, left: 1, top: 1, pixel: 1, system: system, height: constant(0)}.write(t, folder, "one.asc")
-	d, err := raster.NewLibrary().Open(filepath.Join(folder, "one.asc"))
+	d, err := raster.NewGDAL().Open(filepath.Join(folder, "one.asc"))
 	must(t, err)
 	defer d.Close()
 	return d.Info().CRS
