@@ -19,10 +19,13 @@ type Terrain interface {
 
 // Sampling says how a path is sampled.
 type Sampling struct {
-	// SpacingM is the wanted step in metres; 0 leaves it to the finest pixel
-	// on the path, of which it is then a fraction. The step used divides the path evenly and is never larger.
+	// SpacingM is the wanted step in metres; the step used divides the path
+	// evenly and is never larger. 0 is the exact mode: a sample wherever the path
+	// crosses a line between pixel centres, and the surface between two of them
+	// as it is, so that nothing hides there.
 	SpacingM float64
-	// Rasters limits the terrain to the rasters of these names; empty is all.
+	// Rasters limits the terrain to the rasters, or the sources, of these
+	// names; empty is all.
 	Rasters []string
 }
 
@@ -55,6 +58,10 @@ const (
 	KindGround Kind = "ground"
 	// KindSurface includes roofs and trees.
 	KindSurface Kind = "surface"
+	// KindCanopy is the height of trees above the ground.
+	KindCanopy Kind = "canopy"
+	// KindBuildings is the height of buildings above the ground.
+	KindBuildings Kind = "buildings"
 	// KindUnstated is a raster whose producer's choice is not known here.
 	KindUnstated Kind = "unstated"
 	// KindProfile is heights that the caller brought.
@@ -69,8 +76,19 @@ type Source struct {
 	// DataDate is when the content was last changed, as far as is known: an
 	// RFC 3339 date, or empty.
 	DataDate string
-	// Samples is how many samples of the profile rest on it.
+	// Samples is how many samples of the profile rest on it, for the ground or
+	// for the cover.
 	Samples int
+	// VerticalDatum names what the raster's heights count from; empty where
+	// that is not stated, and for heights above ground.
+	VerticalDatum string
+	// ErrorM is the 1-sigma vertical error in metres, >= 0. Errors d metres
+	// apart are correlated by exp(-d/CorrelationM). ErrorAssumed means that
+	// nobody stated them.
+	ErrorM, CorrelationM float64
+	ErrorAssumed         bool
+	// Attribution and Licence are what the data's owner asks to be shown.
+	Attribution, Licence string
 }
 
 // Profile is the terrain sampled along a path. DistanceM, GroundM and, where
@@ -83,9 +101,28 @@ type Profile struct {
 	// CoverM is the height of trees and buildings above the terrain height,
 	// >= 0; empty where none is counted.
 	CoverM []float64
-	// SourceIndex points into Sources; -1 at a void.
-	SourceIndex []int16
-	Sources     []Source
+	// SourceIndex points into Sources; -1 at a void. CoverIndex is that of the
+	// cover, -1 where no source gave any; empty where CoverM is.
+	SourceIndex, CoverIndex []int16
+	Sources                 []Source
+	// BendPerM is how the top of the profile runs between samples: from sample
+	// i to the next, at distance d, terrain and cover reach
+	//
+	//	the straight line between both + BendPerM[i] (d - d_i) (d_i+1 - d)
+	//
+	// which is what bilinear interpolation is along a straight line in a cell
+	// of the grid. One entry a sample, the last is 0; empty means straight.
+	BendPerM []float64
+	// OwnAM and OwnBM are how far from A, and from B, what the antenna stands
+	// on reaches, in metres: no sample there is judged. 0 where there is none.
+	OwnAM, OwnBM float64
+	// VerticalDatum names what the heights count from; empty if not known.
+	VerticalDatum string
+	// DatumDoubts lists sources that could not be brought to VerticalDatum.
+	DatumDoubts []DatumDoubt
+	// Unreachable lists sources that lie under the path but could not be
+	// reached: what they would have given is void.
+	Unreachable []Unreachable
 	// SpacingM is the step between samples, or the widest one if uneven.
 	SpacingM float64
 	// PixelM is the finest pixel on the path, in metres; 0 if not known.
@@ -93,6 +130,20 @@ type Profile struct {
 	// AOutside and BOutside say that no raster at all reaches that end, which
 	// is another thing than a raster with a void there.
 	AOutside, BOutside bool
+}
+
+// DatumDoubt is a source whose heights are used as they stand, though they
+// count from another datum than the profile's.
+type DatumDoubt struct {
+	Source string
+	From   string // empty where the source states none
+	// SizeM is how large the difference may be, in metres.
+	SizeM float64
+}
+
+// Unreachable is a remote source that did not answer.
+type Unreachable struct {
+	Source, Reason string
 }
 
 // Resize gives the profile n samples, reusing its memory. Cover and sources
@@ -104,9 +155,10 @@ func (p *Profile) Resize(n int) {
 		p.SourceIndex = make([]int16, n)
 	}
 	p.SourceIndex = p.SourceIndex[:n]
-	p.CoverM = p.CoverM[:0]
-	p.Sources = p.Sources[:0]
+	p.CoverM, p.CoverIndex, p.BendPerM = p.CoverM[:0], p.CoverIndex[:0], p.BendPerM[:0]
+	p.Sources, p.DatumDoubts, p.Unreachable = p.Sources[:0], p.DatumDoubts[:0], p.Unreachable[:0]
 	p.AOutside, p.BOutside = false, false
+	p.OwnAM, p.OwnBM, p.VerticalDatum = 0, 0, ""
 }
 
 func resized(s []float64, n int) []float64 {
