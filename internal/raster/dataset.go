@@ -17,6 +17,8 @@ type Dataset struct {
 	raw  gdal.Dataset
 	info Info
 	rows int // of a text grid, from the top: those whose place in the file GDAL knows
+
+	remote *remote // nil for a plain file
 }
 
 // Open opens the file and checks what it declares: size, block, type,
@@ -37,19 +39,25 @@ func (*GDAL) Open(path string) (*Dataset, error) {
 		}
 	}
 	d := &Dataset{path: path}
-	err = guarded(path, func() error {
-		raw, openErr := gdal.OpenEx(path, gdal.OFReadOnly|gdal.OFRaster|gdal.OFVerbose_Error, []string{driver}, nil, nil)
-		d.raw = raw
-		return openErr
-	})
-	if err != nil {
-		return nil, fmt.Errorf("%w: %w", ErrUnreadable, err)
-	}
-	if d.info, err = inspect(d.raw, driver); err != nil {
+	if err := d.open(driver); err != nil {
 		d.Close()
 		return nil, err
 	}
 	return d, nil
+}
+
+// open opens the file with the one driver and checks what it declares.
+func (d *Dataset) open(driver string) error {
+	err := guarded(d.path, func() error {
+		raw, openErr := gdal.OpenEx(d.path, gdal.OFReadOnly|gdal.OFRaster|gdal.OFVerbose_Error, []string{driver}, nil, nil)
+		d.raw = raw
+		return openErr
+	})
+	if err != nil {
+		return fmt.Errorf("%w: %w", ErrUnreadable, err)
+	}
+	d.info, err = inspect(d.raw, driver)
+	return err
 }
 
 // plainFile keeps GDAL's virtual file systems and sub-dataset names out: only
@@ -94,6 +102,14 @@ func (d *Dataset) Read(x, y, width, height int, heights []float32) error {
 	if !inside || len(heights) != width*height {
 		return fmt.Errorf("%w: window %d,%d %dx%d of a %dx%d raster", ErrUnreadable, x, y, width, height, d.info.Width, d.info.Height)
 	}
+	if d.remote == nil {
+		return d.fill(x, y, width, height, heights)
+	}
+	return d.remote.reading(func() error { return d.fill(x, y, width, height, heights) })
+}
+
+// fill reads a window that lies inside.
+func (d *Dataset) fill(x, y, width, height int, heights []float32) error {
 	err := guarded(d.path, func() error {
 		if err := d.reach(y); err != nil {
 			return err
