@@ -15,8 +15,10 @@ type Link struct {
 	// AntennaAM and AntennaBM are the antenna heights above mean sea level in
 	// metres; NaN where the ground under an antenna is void.
 	AntennaAM, AntennaBM float64
-	Criteria             []Criterion // 1 to 8
-	RaiseCapM            float64     // 0 is DefaultRaiseCapM
+	// HeightAFrom and HeightBFrom say what they were counted from.
+	HeightAFrom, HeightBFrom HeightFrom
+	Criteria                 []Criterion // 1 to 8
+	RaiseCapM                float64     // 0 is DefaultRaiseCapM
 }
 
 // Assessment is the judgement of one link.
@@ -30,6 +32,14 @@ type Assessment struct {
 	Raise        Raise
 	Diffraction  []Diffraction
 	VoidShare    float64
+	// Confidence is the probability, 0 to 1, that every criterion holds, given
+	// the vertical errors of what the heights rest on; NaN where it is not
+	// known, over voids.
+	Confidence float64
+	// ExtraHeight is the least extra antenna height that makes it
+	// ClearConfidence: zero where it is already, NaN where none up to the cap
+	// of Raise does or nothing is known.
+	ExtraHeight ExtraHeight
 }
 
 // Workspace is memory that a worker keeps from one assessment to the next. Its
@@ -37,6 +47,10 @@ type Assessment struct {
 type Workspace struct {
 	distanceKM, surfaceM, needs, behind []float64
 	short                               []shortSample
+	reaches                             []reach
+	near                                []int
+	chain                               judgedChain
+	places                              []place
 }
 
 // ErrLink means a link that Assess cannot judge: the caller should have
@@ -45,6 +59,14 @@ var ErrLink = errors.New("not a link that can be judged")
 
 // Assess judges the link over the profile. The result refers to neither. The
 // error is ErrLink with what is wrong.
+//
+// A profile with bends, that of the exact mode, is first given, in place, the few
+// samples more at which the extremes lie: the least clearance over F1 at each
+// criterion, what a missed one asks of each raise, and whatever misses one
+// unseen between two samples. All that follows, and whoever reads the profile
+// later, works on samples. Nothing is added where they are there already.
+// Samples of an antenna's own stretch are not judged; if no other is left, the
+// verdict is Unknown.
 func Assess(link *Link, p *Profile, ws *Workspace) (Assessment, error) {
 	if err := link.check(p); err != nil {
 		return Assessment{}, err
@@ -53,9 +75,14 @@ func Assess(link *Link, p *Profile, ws *Workspace) (Assessment, error) {
 	if capM == 0 {
 		capM = DefaultRaiseCapM
 	}
+	placed := !math.IsNaN(link.AntennaAM) && !math.IsNaN(link.AntennaBM)
 	voids := p.Voids()
-	out := Assessment{VoidShare: float64(voids) / float64(len(p.GroundM))}
-	if math.IsNaN(link.AntennaAM) || math.IsNaN(link.AntennaBM) {
+	if len(p.BendPerM) != 0 && placed {
+		refine(link, p, ws, voids > 0)
+	}
+	nan := math.NaN()
+	out := Assessment{VoidShare: p.VoidShare(), Confidence: nan, ExtraHeight: ExtraHeight{AM: nan, BM: nan, BothM: nan}}
+	if !placed {
 		return out.groundless(link, p, capM), nil
 	}
 	g := newGeometry(link, p)
@@ -68,12 +95,16 @@ func Assess(link *Link, p *Profile, ws *Workspace) (Assessment, error) {
 		}
 	}
 	out.Verdict, out.Reasons = judge(out.Clearance, p, voids)
+	out.Raise = Raise{AM: nan, BM: nan, BothM: nan, CapM: capM}
 	if voids > 0 {
-		out.Raise = Raise{AM: math.NaN(), BM: math.NaN(), BothM: math.NaN(), CapM: capM}
 		out.Diffraction = unknownDiffraction(link.Criteria, nil)
 		return out, nil
 	}
-	out.Raise = g.raise(link.Criteria, out.Clearance, ws, capM)
+	if g.first <= g.last {
+		out.Raise = g.raise(link.Criteria, out.Clearance, ws, capM)
+	}
+	g.judgeConfidence(link, &out, ws)
+	out.doubt()
 	var err error
 	out.Diffraction, err = g.diffraction(link, ws, make([]Diffraction, 0, len(link.Criteria)))
 	if err != nil {
@@ -89,6 +120,8 @@ func (link *Link) check(p *Profile) error {
 		return fmt.Errorf("%w: %d samples; at least 3 are needed", ErrLink, n)
 	case len(p.GroundM) != n || (len(p.CoverM) != 0 && len(p.CoverM) != n):
 		return fmt.Errorf("%w: samples of unequal number", ErrLink)
+	case len(p.BendPerM) != 0 && !p.bendsWhole(n):
+		return fmt.Errorf("%w: bends or sources of another number than samples", ErrLink)
 	case len(link.Criteria) == 0 || len(link.Criteria) > maxCriteria:
 		return fmt.Errorf("%w: %d criteria; 1 to %d are judged", ErrLink, len(link.Criteria), maxCriteria)
 	case !(link.Path.LengthM >= MinLengthM && link.Path.LengthM <= MaxLengthM):
@@ -122,8 +155,8 @@ func (a Assessment) groundless(link *Link, p *Profile, capM float64) Assessment 
 	if math.IsNaN(link.AntennaBM) {
 		a.Reasons = append(a.Reasons, Reason{Code: ReasonVoidAtEnd, End: "b"})
 	}
-	if voids := p.Voids(); voids > 0 {
-		a.Reasons = append(a.Reasons, voidReason(p, voids))
+	if p.Voids() > 0 {
+		a.Reasons = append(a.Reasons, voidReason(p))
 	}
 	return a
 }

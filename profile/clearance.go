@@ -14,11 +14,11 @@ type Clearance struct {
 	// or its smaller one where the obstruction is isolated.
 	F1Fraction float64
 	Isolated   bool
-	// Met is true if every sample between the ends is known and reaches the
-	// fraction.
+	// Met is true if every sample is known and every one that is judged reaches
+	// the fraction.
 	Met bool
 	// MinRatio is the least clearance over first Fresnel radius among the
-	// known samples between the ends; NaN if none is known. AtM is where,
+	// known samples that are judged; NaN if there is none. AtM is where,
 	// ClearanceM and F1M the clearance and first Fresnel radius there.
 	MinRatio, AtM, ClearanceM, F1M float64
 }
@@ -36,10 +36,14 @@ type geometry struct {
 	aM      float64 // antenna height at A, above sea level
 	slope   float64 // of the line between the antennas
 	f1Scale float64 // wavelength over path length: F1^2 = f1Scale * d1 * d2
+	// first and last are the samples that are judged; none if first > last.
+	first, last int
 }
 
 func newGeometry(link *Link, p *Profile) geometry {
+	first, last := p.judged(link.Path.LengthM)
 	return geometry{
+		first: first, last: last,
 		p:       p,
 		lengthM: link.Path.LengthM,
 		aM:      link.AntennaAM,
@@ -73,7 +77,7 @@ func (g *geometry) at(i int, bulge float64) (clearanceM, f1M float64) {
 // samples keeps its state on the stack.
 const maxCriteria = 8
 
-// clearances makes the one pass over the samples between the ends, for every
+// clearances makes the one pass over the samples that are judged, for every
 // criterion at once, and finds the least clearance over F1 of each.
 func (g *geometry) clearances(criteria []Criterion, out []Clearance) []Clearance {
 	var bulge, least [maxCriteria]float64
@@ -81,9 +85,8 @@ func (g *geometry) clearances(criteria []Criterion, out []Clearance) []Clearance
 	for c := range criteria {
 		bulge[c], least[c] = bulgeFactor(criteria[c].K), math.Inf(1)
 	}
-	n := len(g.p.DistanceM)
 	bulges, leasts, wheres := bulge[:len(criteria)], least[:len(criteria)], where[:len(criteria)]
-	for i := 1; i < n-1; i++ {
+	for i := g.first; i <= g.last; i++ {
 		d1 := g.p.DistanceM[i]
 		w := d1 * (g.lengthM - d1)
 		flat := g.aM + g.slope*d1 - g.topM(i)
@@ -131,7 +134,7 @@ func (g *geometry) settle(criteria []Criterion, found []Clearance, voids bool) {
 func (g *geometry) spanM(criterion Criterion) float64 {
 	first, last := -1, -1
 	bulge := bulgeFactor(criterion.K)
-	for i := 1; i < len(g.p.DistanceM)-1; i++ {
+	for i := g.first; i <= g.last; i++ {
 		clearanceM, f1M := g.at(i, bulge)
 		if !short(clearanceM/f1M, criterion.F1Fraction) {
 			continue

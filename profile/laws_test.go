@@ -191,7 +191,7 @@ func TestCoverNeverRaisesClearance(t *testing.T) {
 		covered := s.clone()
 		covered.p.SourceIndex = make([]int16, len(s.p.GroundM))
 		covered.p.Sources = []Source{{Name: "one"}}
-		covered.p.AddCover(rapid.Float64Range(0, 50).Draw(t, "cover"), func(Source) bool { return false })
+		covered.p.AddCover(Cover{StatedM: rapid.Float64Range(0, 50).Draw(t, "cover")})
 		s.p.CoverM = nil
 		neverWorse(t, covered, s)
 		higher := covered.clone()

@@ -24,7 +24,7 @@ func (g *geometry) obstructions(c Clearance, out []Obstruction) []Obstruction {
 	bulge := bulgeFactor(c.K)
 	open := false
 	worst := math.Inf(1)
-	for i := 1; i < len(g.p.DistanceM)-1; i++ {
+	for i := g.first; i <= g.last; i++ {
 		clearanceM, f1M := g.at(i, bulge)
 		ratio := clearanceM / f1M
 		if !short(ratio, c.F1Fraction) {

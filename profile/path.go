@@ -35,6 +35,9 @@ const (
 	MinLengthM = 1.0
 	// MaxSamples bounds the samples of one profile.
 	MaxSamples = 20000
+	// MaxExactSamples bounds those of the exact mode, of which MaxSamples are
+	// kept once the path is judged.
+	MaxExactSamples = 500_000
 	// MinIntervals is the least number of steps of a path whose spacing the
 	// caller leaves open, so that a path shorter than a pixel is still judged
 	// between its ends.

@@ -36,9 +36,9 @@ func (g *geometry) raise(criteria []Criterion, found []Clearance, ws *Workspace,
 			continue
 		}
 		g.gatherShort(criteria[i], ws)
-		r.AM = max(r.AM, g.need(criteria[i], atA, ws))
-		r.BM = max(r.BM, g.need(criteria[i], atB, ws))
-		r.BothM = max(r.BothM, g.need(criteria[i], atBoth, ws))
+		r.AM = g.need(criteria[i], atA, ws, r.AM)
+		r.BM = g.need(criteria[i], atB, ws, r.BM)
+		r.BothM = g.need(criteria[i], atBoth, ws, r.BothM)
 	}
 	for _, m := range []*float64{&r.AM, &r.BM, &r.BothM} {
 		if *m > capM {
@@ -61,7 +61,7 @@ type shortSample struct {
 func (g *geometry) gatherShort(c Criterion, ws *Workspace) {
 	bulge := bulgeFactor(c.K)
 	ws.short = ws.short[:0]
-	for i := 1; i < len(g.p.DistanceM)-1; i++ {
+	for i := g.first; i <= g.last; i++ {
 		clearanceM, f1M := g.at(i, bulge)
 		if missing := c.F1Fraction*f1M - clearanceM; missing > ratioTolerance*f1M {
 			d := g.p.DistanceM[i]
@@ -73,8 +73,9 @@ func (g *geometry) gatherShort(c Criterion, ws *Workspace) {
 }
 
 // need is the least raise through the lever that meets one criterion, by
-// whichever of its fractions is met first.
-func (g *geometry) need(c Criterion, l lever, ws *Workspace) float64 {
+// whichever of its fractions is met first, or what is needed already if that is
+// more.
+func (g *geometry) need(c Criterion, l lever, ws *Workspace, already float64) float64 {
 	ws.needs = resized(ws.needs, len(ws.short))
 	full, isolated := 0.0, 0.0
 	for i := range ws.short {
@@ -84,10 +85,16 @@ func (g *geometry) need(c Criterion, l lever, ws *Workspace) float64 {
 		full = max(full, ws.needs[i])
 		isolated = max(isolated, s.isolatedM*perMetre)
 	}
-	if !(c.IsolatedF1Fraction < c.F1Fraction) || isolated >= full {
-		return full
+	if !(c.IsolatedF1Fraction < c.F1Fraction) || isolated >= full || already >= full {
+		return max(full, already)
 	}
-	return min(full, max(isolated, shrink(ws, isolatedSpanM(g.lengthM))))
+	spanM := isolatedSpanM(g.lengthM)
+	least := min(full, max(isolated, shrink(ws, spanM)))
+	if len(g.p.BendPerM) == 0 {
+		return max(least, already)
+	}
+	r := newRefiner(*g, ws)
+	return max(already, r.shrinkBetween(c, straight{l(0), (l(1) - l(0)) / g.lengthM}, spanM, max(least, already), full))
 }
 
 // shrink is the least raise after which the samples that still miss the full

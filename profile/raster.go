@@ -33,4 +33,14 @@ type Raster struct {
 	HasNoData    bool
 	PixelIsPoint bool
 	Modified     time.Time
+	// Source is the name of the catalogue's entry that it belongs to; empty
+	// where it was found in a plain folder. Sources of a higher Priority are
+	// asked first.
+	Source   string
+	Priority int
+	// The rest is what Source says of a raster; see there.
+	VerticalDatum        string
+	ErrorM, CorrelationM float64
+	ErrorAssumed         bool
+	Attribution, Licence string
 }

@@ -17,8 +17,14 @@ type scene struct {
 
 func (s scene) reference() reference { return reference{s.link, &s.p} }
 
-// assess judges the scene, which must be fit.
+// assess judges the scene, which must be fit and stays as it is.
 func (s scene) assess(t rapid.TB) Assessment {
+	s = s.clone()
+	return s.refined(t)
+}
+
+// refined judges the scene and leaves in it the samples that were inserted.
+func (s *scene) refined(t rapid.TB) Assessment {
 	t.Helper()
 	a, err := Assess(&s.link, &s.p, &Workspace{})
 	if err != nil {
@@ -30,6 +36,8 @@ func (s scene) assess(t rapid.TB) Assessment {
 func (s scene) clone() scene {
 	s.link.Criteria = slices.Clone(s.link.Criteria)
 	s.p.DistanceM, s.p.GroundM, s.p.CoverM = slices.Clone(s.p.DistanceM), slices.Clone(s.p.GroundM), slices.Clone(s.p.CoverM)
+	s.p.BendPerM, s.p.SourceIndex, s.p.CoverIndex = slices.Clone(s.p.BendPerM), slices.Clone(s.p.SourceIndex), slices.Clone(s.p.CoverIndex)
+	s.p.Sources = slices.Clone(s.p.Sources)
 	return s
 }
 
@@ -49,6 +57,10 @@ func (s scene) mirrored() scene {
 	for i, d := range m.p.DistanceM {
 		m.p.DistanceM[i] = s.link.Path.LengthM - d
 	}
+	if last := len(m.p.BendPerM) - 1; last > 0 {
+		slices.Reverse(m.p.BendPerM[:last]) // of the intervals, one fewer than samples
+	}
+	m.p.OwnAM, m.p.OwnBM = s.p.OwnBM, s.p.OwnAM
 	return m
 }
 

@@ -123,6 +123,9 @@ type Profile struct {
 	// Unreachable lists sources that lie under the path but could not be
 	// reached: what they would have given is void.
 	Unreachable []Unreachable
+	// LeftOut names sources of trees and buildings that lie under the path and
+	// were not counted, since a surface model speaks there.
+	LeftOut []string
 	// SpacingM is the step between samples, or the widest one if uneven.
 	SpacingM float64
 	// PixelM is the finest pixel on the path, in metres; 0 if not known.
@@ -157,6 +160,7 @@ func (p *Profile) Resize(n int) {
 	p.SourceIndex = p.SourceIndex[:n]
 	p.CoverM, p.CoverIndex, p.BendPerM = p.CoverM[:0], p.CoverIndex[:0], p.BendPerM[:0]
 	p.Sources, p.DatumDoubts, p.Unreachable = p.Sources[:0], p.DatumDoubts[:0], p.Unreachable[:0]
+	p.LeftOut = p.LeftOut[:0]
 	p.AOutside, p.BOutside = false, false
 	p.OwnAM, p.OwnBM, p.VerticalDatum = 0, 0, ""
 }
@@ -177,28 +181,4 @@ func (p *Profile) Voids() int {
 		}
 	}
 	return n
-}
-
-// VoidShare is the share of the samples without a height, 0 to 1.
-func (p *Profile) VoidShare() float64 {
-	if len(p.GroundM) == 0 {
-		return 0
-	}
-	return float64(p.Voids()) / float64(len(p.GroundM))
-}
-
-// AddCover counts metres of cover on every sample but those for which skip,
-// given the sample's source, says no. The two ends carry none: an antenna
-// stands above what covers its own place.
-func (p *Profile) AddCover(metres float64, skip func(Source) bool) {
-	p.CoverM = resized(p.CoverM, len(p.GroundM))
-	for i := range p.CoverM {
-		p.CoverM[i] = metres
-		if s := p.SourceIndex[i]; s >= 0 && skip(p.Sources[s]) {
-			p.CoverM[i] = 0
-		}
-	}
-	if n := len(p.CoverM); n > 0 {
-		p.CoverM[0], p.CoverM[n-1] = 0, 0
-	}
 }

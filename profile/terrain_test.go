@@ -11,20 +11,56 @@ import (
 )
 
 func TestAddCover(t *testing.T) {
-	p := Profile{
-		GroundM:     []float64{1, 2, 3, math.NaN(), 5, 6},
-		SourceIndex: []int16{0, 0, 1, -1, 0, 1},
-		Sources:     []Source{{Kind: KindGround}, {Kind: KindSurface}},
+	nan := math.NaN()
+	sources := []Source{{Kind: KindGround}, {Kind: KindSurface}, {Kind: KindCanopy}, {Kind: KindBuildings}, {Kind: KindUnstated}}
+	cases := []struct {
+		name          string
+		ground, cover int16 // of the samples between the ends
+		coverM        float64
+		say           Cover
+		want          float64
+	}{
+		{"stated over bare earth", 0, -1, 0, Cover{StatedM: 12}, 12},
+		{"stated over a void", -1, -1, 0, Cover{StatedM: 12}, 12},
+		{"stated over who knows what", 4, -1, 0, Cover{StatedM: 12}, 12},
+		{"not where a surface holds it already", 1, -1, 0, Cover{StatedM: 12}, 0},
+		{"nor where one stands above bare earth", 0, 1, 3, Cover{StatedM: 12}, 3},
+		{"the taller of canopy and stated, not both", 0, 2, 9, Cover{StatedM: 12}, 12},
+		{"the taller the other way", 0, 2, 15, Cover{StatedM: 12}, 15},
+		{"beside a lower building", 0, 3, 8, Cover{StatedM: 12}, 12},
+		{"trees grow", 0, 2, 15, Cover{GrowthM: 2}, 17},
+		{"stated ones too", 0, -1, 0, Cover{StatedM: 12, GrowthM: 2}, 14},
+		{"buildings do not", 0, 3, 20, Cover{GrowthM: 2}, 20},
+		{"save where trees outgrow them", 0, 3, 13, Cover{StatedM: 12, GrowthM: 2}, 14},
+		{"bare earth does not", 0, -1, 0, Cover{GrowthM: 2}, 0},
+		{"what a surface shows on bare earth may", 0, 1, 5, Cover{GrowthM: 2}, 7},
+		{"but not the difference of two models", 0, 1, 0.4, Cover{GrowthM: 2}, 0.4},
+		{"a surface alone may hold trees anywhere", 1, -1, 0, Cover{GrowthM: 2}, 2},
 	}
-	p.AddCover(12, func(s Source) bool { return s.Kind == KindSurface })
-	// Nothing at the ends, nothing where the surface holds it already.
-	if diff := cmp.Diff([]float64{0, 12, 0, 12, 12, 0}, p.CoverM); diff != "" {
-		t.Errorf("(-want +got):\n%s", diff)
+	for _, c := range cases {
+		t.Run(c.name, func(t *testing.T) {
+			p := Profile{
+				GroundM: []float64{1, 2, 3}, SourceIndex: []int16{c.ground, c.ground, c.ground}, Sources: sources,
+			}
+			if c.ground < 0 {
+				p.GroundM[1] = nan
+			}
+			if c.cover >= 0 {
+				p.CoverM, p.CoverIndex = []float64{7, c.coverM, 7}, []int16{c.cover, c.cover, c.cover}
+			}
+			p.AddCover(c.say)
+			end := 0.0 // what covers its own place an antenna stands above
+			if c.cover >= 0 {
+				end = 7
+			}
+			if diff := cmp.Diff([]float64{end, c.want, end}, p.CoverM); diff != "" {
+				t.Errorf("(-want +got):\n%s", diff)
+			}
+		})
 	}
-	empty := Profile{}
-	empty.AddCover(12, nil)
-	if len(empty.CoverM) != 0 {
-		t.Errorf("got cover %v on no samples", empty.CoverM)
+	bare := Profile{GroundM: []float64{1, 2, 3}, SourceIndex: []int16{0, 0, 0}, Sources: sources}
+	if bare.AddCover(Cover{}); len(bare.CoverM) != 0 {
+		t.Errorf("got cover %v where none was said", bare.CoverM)
 	}
 }
 

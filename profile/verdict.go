@@ -10,10 +10,11 @@ type Verdict string
 
 // The verdicts.
 const (
-	// Clear: every criterion is met.
+	// Clear: every criterion is met, with a confidence of ClearConfidence.
 	Clear Verdict = "clear"
-	// Marginal: a criterion is missed but the line between the antennas is
-	// open at every k judged, so that a radio with margin may still carry it.
+	// Marginal: every criterion is met with less confidence, or one is missed
+	// but the line between the antennas is open at every k judged, so that a
+	// radio with margin may still carry it.
 	Marginal Verdict = "marginal"
 	// Obstructed: terrain or cover cuts the line itself at a k judged.
 	Obstructed Verdict = "obstructed"
@@ -33,6 +34,8 @@ const (
 	ReasonVoidOnPath      ReasonCode = "void_on_path"
 	ReasonVoidAtEnd       ReasonCode = "void_at_end"
 	ReasonRadioWillDecide ReasonCode = "radio_will_decide"
+	ReasonConfidenceLow   ReasonCode = "confidence_low"
+	ReasonNothingBetween  ReasonCode = "nothing_between"
 )
 
 // Reason is one reason, kept as figures so that its sentence is only written
@@ -44,6 +47,9 @@ type Reason struct {
 	FromM     float64   // first void sample
 	ToM       float64   // last void sample
 	End       string    // "a" or "b"
+	// Confidence and ExtraM, the least extra height at both ends that would do,
+	// are for ReasonConfidenceLow.
+	Confidence, ExtraM float64
 	// Sentence is the detail of a reason that another room gives; empty for
 	// the codes above.
 	Sentence string
@@ -69,10 +75,31 @@ func (r Reason) Detail() string {
 		return fmt.Sprintf("No height is known for %.1f %% of the path, between %.0f m and %.0f m from A.", 100*r.Share, r.FromM, r.ToM)
 	case ReasonVoidAtEnd:
 		return fmt.Sprintf("No ground height is known at end %s, so its antenna cannot be placed.", r.End)
+	case ReasonConfidenceLow:
+		return r.confidenceDetail()
+	case ReasonNothingBetween:
+		return "Between what the antennas stand on nothing is left to judge."
 	case ReasonRadioWillDecide:
 		return "The line is open but the Fresnel zone is not: whether the link carries traffic depends on the radio's margin."
 	}
 	return string(r.Code)
+}
+
+func (r Reason) confidenceDetail() string {
+	text := fmt.Sprintf("Given the errors of the heights, every criterion holds with a probability of %.0f %%, less than the %.0f %% of a clear path", math.Floor(100*r.Confidence), 100*ClearConfidence)
+	if math.IsNaN(r.ExtraM) {
+		return text + "."
+	}
+	return text + fmt.Sprintf("; %.1f m more at both ends would do.", math.Ceil(10*r.ExtraM)/10)
+}
+
+// doubt takes clear back where the heights are not known well enough.
+func (a *Assessment) doubt() {
+	if a.Verdict != Clear || a.Confidence >= ClearConfidence {
+		return
+	}
+	a.Verdict = Marginal
+	a.Reasons = append(a.Reasons, Reason{Code: ReasonConfidenceLow, Confidence: a.Confidence, ExtraM: a.ExtraHeight.BothM})
 }
 
 // judge decides the verdict from the clearances and voids. A known obstruction
@@ -95,12 +122,14 @@ func judge(found []Clearance, p *Profile, voids int) (Verdict, []Reason) {
 		}
 	}
 	if voids > 0 {
-		reasons = append(reasons, voidReason(p, voids))
+		reasons = append(reasons, voidReason(p))
 	}
 	switch {
 	case cut:
 		return Obstructed, reasons
-	case voids > 0 || len(reasons) == 0:
+	case len(reasons) == 0:
+		return Unknown, append(reasons, Reason{Code: ReasonNothingBetween})
+	case voids > 0:
 		return Unknown, reasons
 	case missed:
 		return Marginal, append(reasons, Reason{Code: ReasonRadioWillDecide})
@@ -108,8 +137,8 @@ func judge(found []Clearance, p *Profile, voids int) (Verdict, []Reason) {
 	return Clear, reasons
 }
 
-func voidReason(p *Profile, voids int) Reason {
-	r := Reason{Code: ReasonVoidOnPath, Share: float64(voids) / float64(len(p.GroundM)), FromM: math.NaN()}
+func voidReason(p *Profile) Reason {
+	r := Reason{Code: ReasonVoidOnPath, Share: p.VoidShare(), FromM: math.NaN()}
 	for i, h := range p.GroundM {
 		if !math.IsNaN(h) {
 			continue

@@ -91,6 +91,7 @@ func TestVoids(t *testing.T) {
 	for _, c := range cases {
 		t.Run(c.name, func(t *testing.T) {
 			c.want.Verdict, c.want.Clearance, c.want.Raise, c.want.Diffraction = Unknown, nothing, noRaise, unknown
+			c.want.Confidence, c.want.ExtraHeight = nan, ExtraHeight{AM: nan, BM: nan, BothM: nan}
 			if diff := equal(c.want, plain(4000, c.aM, c.bM, criteria, c.heights...).assess(t)); diff != "" {
 				t.Errorf("(-want +got):\n%s", diff)
 			}

@@ -14,7 +14,7 @@ import (
 // EngineVersion names the way in which answers are computed. It changes
 // whenever the same question over the same rasters may be answered otherwise,
 // and with it every id.
-const EngineVersion = "2"
+const EngineVersion = "3"
 
 // Assessment is one link judged, with all that an answer or a drawing needs.
 // It never changes.
@@ -33,17 +33,24 @@ type Assessment struct {
 	Cautions []Caution
 }
 
-// identify computes the id: a hash of the canonical request, the versions of
-// the rasters that it rests on, how they were sampled, and the engine's version.
+// identify computes the id: a hash of the canonical request, the rasters that it
+// rests on with their versions and what is stated of them, how they were
+// sampled, and the engine's version.
 func (a *Assessment) identify() error {
 	var asked bytes.Buffer
 	if err := json.NewEncoder(&asked).Encode(a.Request); err != nil {
 		return fmt.Errorf("canonical request: %w", err)
 	}
 	for _, s := range a.Profile.Sources {
-		fmt.Fprintf(&asked, "%s %s\n", s.Name, s.Version)
+		fmt.Fprintf(&asked, "%s %s %s %s %v %v\n", s.Name, s.Version, s.Kind, s.VerticalDatum, s.ErrorM, s.CorrelationM)
 	}
-	fmt.Fprintf(&asked, "%d samples, step %v, pixel %v\n", len(a.Profile.DistanceM), a.Profile.SpacingM, a.Profile.PixelM)
+	for _, u := range a.Profile.Unreachable {
+		fmt.Fprintf(&asked, "without %s\n", u.Source)
+	}
+	p := &a.Profile
+	fmt.Fprintf(&asked, "%d samples, step %v, pixel %v\n", len(p.DistanceM), p.SpacingM, p.PixelM)
+	// A geoid grid has no version: what it makes of the ends stands for it.
+	fmt.Fprintf(&asked, "datum %s, ends at %v and %v\n", p.VerticalDatum, a.GroundAM, a.GroundBM)
 	fmt.Fprintf(&asked, "engine %s\n", a.Engine)
 	sum := sha256.Sum256(asked.Bytes())
 	digest := base32.StdEncoding.WithPadding(base32.NoPadding).EncodeToString(sum[:])

@@ -12,10 +12,14 @@ import (
 // the points in between let the earth's bulge count there too.
 const broughtStepM = 30.0
 
-// broughtProfile fills into with the caller's points, stretched to lengthM,
-// and points between them. Between the ends every sample counts coverM of cover
-// at least.
-func broughtProfile(points []Point, lengthM, spacingM, coverM float64, into *profile.Profile) error {
+// broughtCorrelationM is how far errors of a caller's heights reach, where the
+// caller says how large they are: surveyed points are measured one by one, but
+// from few instrument stations. Common practice, no source.
+const broughtCorrelationM = 100.0
+
+// broughtProfile fills into with the caller's points, stretched to lengthM, and
+// points between them.
+func broughtProfile(points []Point, lengthM, spacingM float64, into *profile.Profile) error {
 	step := broughtStepM
 	if spacingM > 0 {
 		step = spacingM
@@ -38,9 +42,6 @@ func broughtProfile(points []Point, lengthM, spacingM, coverM float64, into *pro
 		at = between(points[i], points[i+1], stretch, step, into, at)
 	}
 	put(into, at, lengthM, points[last].GroundM, points[last].CoverM)
-	for i := 1; i < at; i++ {
-		into.CoverM[i] = max(into.CoverM[i], coverM)
-	}
 	into.Sources = append(into.Sources, profile.Source{Name: "profile", Version: "as given", Kind: profile.KindProfile, Samples: count})
 	return nil
 }

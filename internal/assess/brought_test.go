@@ -95,7 +95,7 @@ func TestDensification(t *testing.T) {
 		lengthM := points[len(points)-1].DistanceM
 		widest = min(widest, lengthM/16)
 		var p profile.Profile
-		if err := broughtProfile(points, lengthM, spacingM, 0, &p); err != nil {
+		if err := broughtProfile(points, lengthM, spacingM, &p); err != nil {
 			t.Fatal(err)
 		}
 		step := 0.0

@@ -18,9 +18,9 @@ func TestCoverByKindOfRaster(t *testing.T) {
 		cover    float64
 		cautions []string
 	}{
-		{profile.KindGround, 25, []string{"obstacle_height_uncertainty", "vertical_datum"}},
-		{profile.KindUnstated, 25, []string{"raster_kind_unstated", "obstacle_height_uncertainty", "vertical_datum"}},
-		{profile.KindSurface, 0, []string{"cover_not_added", "height_above_surface", "obstacle_height_uncertainty", "vertical_datum"}},
+		{profile.KindGround, 25, []string{"obstacle_height_uncertainty", "vertical_datum_unstated"}},
+		{profile.KindUnstated, 25, []string{"raster_kind_unstated", "obstacle_height_uncertainty", "vertical_datum_unstated"}},
+		{profile.KindSurface, 0, []string{"cover_not_added", "height_above_surface", "obstacle_height_uncertainty", "vertical_datum_unstated"}},
 	} {
 		t.Run(string(c.kind), func(t *testing.T) {
 			r := tenKM()
@@ -145,13 +145,13 @@ func TestInvalidAntennaHeights(t *testing.T) {
 func TestCautions(t *testing.T) {
 	quiet := func() (Request, profile.Profile) {
 		return Request{FrequencyGHz: 13, A: End{HeightAbove: AboveRoof}, B: End{HeightAbove: AboveSeaLevel}}, profile.Profile{
-			Sources: []profile.Source{{Kind: profile.KindGround}}, SpacingM: 7.5, PixelM: 30,
+			Sources: []profile.Source{{Kind: profile.KindGround}}, SourceIndex: []int16{0}, SpacingM: 7.5, PixelM: 30,
 		}
 	}
 	kinds := func(p *profile.Profile, kinds ...profile.Kind) {
-		p.Sources = nil
-		for _, k := range kinds {
-			p.Sources = append(p.Sources, profile.Source{Kind: k})
+		p.Sources, p.SourceIndex, p.GroundM = nil, nil, make([]float64, len(kinds))
+		for i, k := range kinds {
+			p.Sources, p.SourceIndex = append(p.Sources, profile.Source{Kind: k}), append(p.SourceIndex, int16(i))
 		}
 	}
 	cases := []struct {
@@ -159,31 +159,43 @@ func TestCautions(t *testing.T) {
 		spoil func(*Request, *profile.Profile)
 		want  []string
 	}{
-		{"bare earth", func(*Request, *profile.Profile) {}, []string{"vertical_datum"}},
+		{"bare earth", func(*Request, *profile.Profile) {}, []string{"vertical_datum_unstated"}},
 		{"no raster at all", func(_ *Request, p *profile.Profile) { kinds(p) }, nil},
 		{"brought", func(_ *Request, p *profile.Profile) { kinds(p, profile.KindProfile) }, nil},
-		{"surface", func(_ *Request, p *profile.Profile) { kinds(p, profile.KindSurface) }, []string{"vertical_datum"}},
+		{"surface", func(_ *Request, p *profile.Profile) { kinds(p, profile.KindSurface) }, []string{"vertical_datum_unstated"}},
 		{"surface and cover", func(r *Request, p *profile.Profile) {
 			kinds(p, profile.KindSurface)
 			r.CoverHeightM = 10
-		}, []string{"cover_not_added", "vertical_datum"}},
-		{"bare earth and cover", func(r *Request, _ *profile.Profile) { r.CoverHeightM = 10 }, []string{"vertical_datum"}},
-		{"unstated", func(_ *Request, p *profile.Profile) { kinds(p, profile.KindUnstated) }, []string{"raster_kind_unstated", "vertical_datum"}},
+		}, []string{"cover_not_added", "vertical_datum_unstated"}},
+		{"bare earth and cover", func(r *Request, _ *profile.Profile) { r.CoverHeightM = 10 }, []string{"vertical_datum_unstated"}},
+		{"unstated", func(_ *Request, p *profile.Profile) { kinds(p, profile.KindUnstated) }, []string{"raster_kind_unstated", "vertical_datum_unstated"}},
 		{"two kinds", func(r *Request, p *profile.Profile) {
 			kinds(p, profile.KindGround, profile.KindSurface, profile.KindGround)
 			r.CoverHeightM = 10
-		}, []string{"cover_not_added", "raster_kinds_mixed", "vertical_datum"}},
-		{"two rasters of one kind", func(_ *Request, p *profile.Profile) { kinds(p, profile.KindSurface, profile.KindSurface) }, []string{"vertical_datum"}},
+		}, []string{"cover_not_added", "raster_kinds_mixed", "vertical_datum_unstated"}},
+		{"two rasters of one kind", func(_ *Request, p *profile.Profile) { kinds(p, profile.KindSurface, profile.KindSurface) }, []string{"vertical_datum_unstated"}},
 		{"a surface, and a height above ground", func(r *Request, p *profile.Profile) {
 			kinds(p, profile.KindSurface)
 			r.B.HeightAbove = AboveGround
-		}, []string{"height_above_surface", "vertical_datum"}},
-		{"the floor of water", func(_ *Request, p *profile.Profile) { p.GroundM = []float64{3, math.NaN(), -60} }, []string{"below_sea_level", "vertical_datum"}},
-		{"a dry polder", func(_ *Request, p *profile.Profile) { p.GroundM = []float64{-7, 2} }, []string{"vertical_datum"}},
-		{"steps a little wider than a quarter", func(_ *Request, p *profile.Profile) { p.SpacingM = 7.7 }, []string{"vertical_datum"}},
-		{"wider steps", func(_ *Request, p *profile.Profile) { p.SpacingM = 8 }, []string{"coarse_spacing", "vertical_datum"}},
-		{"pixels not known", func(_ *Request, p *profile.Profile) { p.SpacingM, p.PixelM = 1000, 0 }, []string{"vertical_datum"}},
-		{"above 13 GHz", func(r *Request, _ *profile.Profile) { r.FrequencyGHz = 13.01 }, []string{"obstacle_height_uncertainty", "vertical_datum"}},
+		}, []string{"height_above_surface", "vertical_datum_unstated"}},
+		{"the floor of water", func(_ *Request, p *profile.Profile) { p.GroundM = []float64{3, math.NaN(), -60} }, []string{"below_sea_level", "vertical_datum_unstated"}},
+		{"a dry polder", func(_ *Request, p *profile.Profile) { p.GroundM = []float64{-7, 2} }, []string{"vertical_datum_unstated"}},
+		{"steps a little wider than a quarter", func(r *Request, p *profile.Profile) { r.SpacingM, p.SpacingM = 8, 7.7 }, []string{"vertical_datum_unstated"}},
+		{"wider steps", func(r *Request, p *profile.Profile) { r.SpacingM, p.SpacingM = 8, 8 }, []string{"coarse_spacing", "vertical_datum_unstated"}},
+		{"pixels not known", func(r *Request, p *profile.Profile) { r.SpacingM, p.SpacingM, p.PixelM = 1000, 1000, 0 }, []string{"vertical_datum_unstated"}},
+		{"the exact mode, whose samples lie where they matter", func(_ *Request, p *profile.Profile) { p.SpacingM = 42 }, []string{"vertical_datum_unstated"}},
+		{"a datum that could not be resolved", func(_ *Request, p *profile.Profile) {
+			p.VerticalDatum, p.DatumDoubts = "egm96", []profile.DatumDoubt{{Source: "a", From: "ellipsoid", SizeM: 48}}
+		}, []string{"vertical_datum_unresolved"}},
+		{"a datum", func(_ *Request, p *profile.Profile) { p.Sources[0].VerticalDatum = "egm96" }, nil},
+		{"an error that nobody stated", func(_ *Request, p *profile.Profile) { p.Sources[0].ErrorAssumed = true }, []string{"vertical_datum_unstated", "vertical_error_assumed"}},
+		{"an own building", func(_ *Request, p *profile.Profile) { p.OwnBM = 12 }, []string{"own_building", "vertical_datum_unstated"}},
+		{"buildings beside a surface", func(_ *Request, p *profile.Profile) { p.LeftOut = []string{"town/houses.geojson"} }, []string{"cover_left_out", "vertical_datum_unstated"}},
+		{"growth on a surface", func(r *Request, p *profile.Profile) {
+			kinds(p, profile.KindSurface)
+			r.CoverGrowthMPerYear, r.CoverGrowthYears = 0.3, 10
+		}, []string{"growth_on_surface", "vertical_datum_unstated"}},
+		{"above 13 GHz", func(r *Request, _ *profile.Profile) { r.FrequencyGHz = 13.01 }, []string{"obstacle_height_uncertainty", "vertical_datum_unstated"}},
 	}
 	for _, c := range cases {
 		t.Run(c.name, func(t *testing.T) {
@@ -203,17 +215,28 @@ func TestCautions(t *testing.T) {
 }
 
 func TestCautionSentences(t *testing.T) {
-	r := Request{FrequencyGHz: 38, CoverHeightM: 12.5}
-	p := profile.Profile{SpacingM: 123.456, PixelM: 30.9, Sources: []profile.Source{{Kind: profile.KindSurface}, {Kind: profile.KindUnstated}, {Kind: profile.KindGround}}}
+	r := Request{FrequencyGHz: 38, CoverHeightM: 12.5, SpacingM: 124}
+	p := profile.Profile{
+		SpacingM: 123.456, PixelM: 30.9, SourceIndex: []int16{0, 1, 2}, VerticalDatum: "egm2008", OwnAM: 17.4,
+		Sources: []profile.Source{
+			{Kind: profile.KindSurface}, {Kind: profile.KindUnstated},
+			{Name: "dtm", Kind: profile.KindGround, ErrorM: 4, CorrelationM: 500, ErrorAssumed: true},
+		},
+		DatumDoubts: []profile.DatumDoubt{{Source: "dtm", SizeM: 107}}, LeftOut: []string{"town/houses.geojson", "town/woods.tif"},
+	}
 	want := []Caution{
 		{"cover_not_added", "Cover of 12.5 m was not added where a surface raster holds it already."},
 		{"raster_kind_unstated", "The rasters do not say whether their heights include roofs and trees; the public global models largely do. An antenna height above ground may then count from a roof."},
 		{"raster_kinds_mixed", "Part of the path rests on bare earth and part on a surface with roofs and trees."},
+		{"cover_left_out", "Heights of town/houses.geojson, town/woods.tif were not counted, since a surface model speaks there and holds them already: counted with it they would count twice."},
 		{"coarse_spacing", "Samples are 123 m apart but pixels 30.9 m: a ridge may lie unseen between samples."},
 		{"obstacle_height_uncertainty", "Above about 13 GHz the Fresnel zone is narrow: add the uncertainty of the obstacle heights (P.530-19 2.2.2)."},
-		{"vertical_datum", "Heights are used as the rasters state them; sources on different vertical datums are not yet brought to one."},
+		{"own_building", "What the antennas stand on is not judged: up to 17 m from A and 0 m from B."},
+		{"vertical_datum_unresolved", "Heights of dtm count from a datum that is not stated and could not be brought to egm2008: they may be off by up to about 107 m."},
+		{"vertical_error_assumed", "No vertical error is stated for dtm: the confidence assumes 4 m (1 sigma), correlated over 500 m."},
 	}
-	if diff := cmp.Diff(want, r.cautions(&p)); diff != "" {
+	a := Assessment{Request: r, Profile: p}
+	if diff := cmp.Diff(want, a.particular()); diff != "" {
 		t.Errorf("(-want +got):\n%s", diff)
 	}
 }

@@ -29,10 +29,16 @@ type record struct {
 
 	SpacingM, PixelM float64
 	Rasters          []profile.Source
-	Distance         []float64 // empty if the samples are evenly spaced
+	Distance         []float64 // of records of engine 2 and earlier; as the next
+	Places           []byte    // distances in tenths of a millimetre, uint32, little endian; empty if the samples are evenly spaced
 	Ground           []byte    // float32, little endian
 	Cover            []byte    // the same; empty if none is counted
 	Sources          []run
+	Covers           []run // like Sources, of the cover
+	OwnAM, OwnBM     float64
+	VerticalDatum    string
+	DatumDoubts      []profile.DatumDoubt
+	Unreachable      []profile.Unreachable
 }
 
 // run is a stretch of samples that rest on one source; -1 is a void.
@@ -50,10 +56,11 @@ func (a *Assessment) Record() ([]byte, error) {
 		ID: a.ID, Engine: a.Engine, Link: a.Link, GroundAM: a.GroundAM, GroundBM: a.GroundBM,
 		Judgement: a.Judgement, Cautions: a.Cautions,
 		SpacingM: p.SpacingM, PixelM: p.PixelM, Rasters: p.Sources,
-		Ground: packed(p.GroundM), Cover: packed(p.CoverM), Sources: runs(p.SourceIndex),
+		Ground: packed(p.GroundM), Cover: packed(p.CoverM), Sources: runs(p.SourceIndex), Covers: runs(p.CoverIndex),
+		OwnAM: p.OwnAM, OwnBM: p.OwnBM, VerticalDatum: p.VerticalDatum, DatumDoubts: p.DatumDoubts, Unreachable: p.Unreachable,
 	}
 	if !even(p) {
-		r.Distance = p.DistanceM
+		r.Places = packedPlaces(p.DistanceM)
 	}
 	var err error
 	if r.Request, err = json.Marshal(a.Request); err == nil && a.Radio != nil {
@@ -105,20 +112,39 @@ func (r *record) restore(p *profile.Profile, lengthM float64) error {
 	p.SpacingM, p.PixelM, p.Sources = r.SpacingM, r.PixelM, r.Rasters
 	p.GroundM, p.CoverM, p.DistanceM = unpacked(r.Ground), unpacked(r.Cover), r.Distance
 	n := len(p.GroundM)
-	if len(p.DistanceM) == 0 {
+	switch {
+	case len(r.Places) > 0:
+		p.DistanceM = unpackedPlaces(r.Places, lengthM)
+	case len(p.DistanceM) == 0:
 		p.DistanceM = make([]float64, n)
 		fill(p, lengthM)
 	}
-	for _, stretch := range r.Sources {
-		if stretch.Samples < 0 || stretch.Samples > n-len(p.SourceIndex) {
-			return errors.New("record of an assessment: more sources than samples")
-		}
-		p.SourceIndex = append(p.SourceIndex, slices.Repeat([]int16{stretch.Source}, stretch.Samples)...)
+	p.OwnAM, p.OwnBM, p.VerticalDatum = r.OwnAM, r.OwnBM, r.VerticalDatum
+	p.DatumDoubts, p.Unreachable = r.DatumDoubts, r.Unreachable
+	var err error
+	if p.SourceIndex, err = unrun(r.Sources, n); err != nil {
+		return err
 	}
-	if len(p.DistanceM) != n || len(p.SourceIndex) != n || len(p.CoverM) != 0 && len(p.CoverM) != n {
+	if p.CoverIndex, err = unrun(r.Covers, n); err != nil {
+		return err
+	}
+	covers := len(p.CoverM) == 0 || len(p.CoverM) == n
+	if len(p.DistanceM) != n || len(p.SourceIndex) != n || !covers || len(p.CoverIndex) != 0 && len(p.CoverIndex) != n {
 		return errors.New("record of an assessment: arrays of unequal length")
 	}
 	return nil
+}
+
+// unrun lays runs out again, one entry a sample.
+func unrun(runs []run, n int) ([]int16, error) {
+	var out []int16
+	for _, stretch := range runs {
+		if stretch.Samples < 0 || stretch.Samples > n-len(out) {
+			return nil, errors.New("record of an assessment: more sources than samples")
+		}
+		out = append(out, slices.Repeat([]int16{stretch.Source}, stretch.Samples)...)
+	}
+	return out, nil
 }
 
 // packed writes heights as float32, one after the other.
@@ -137,6 +163,28 @@ func unpacked(kept []byte) []float64 {
 	out := make([]float64, len(kept)/4)
 	for i := range out {
 		out[i] = float64(math.Float32frombits(binary.LittleEndian.Uint32(kept[4*i:])))
+	}
+	return out
+}
+
+// placesPerM is how finely distances are kept: the longest path still fits.
+const placesPerM = 1e4
+
+func packedPlaces(distances []float64) []byte {
+	out := make([]byte, 0, 4*len(distances))
+	for _, d := range distances {
+		out = binary.LittleEndian.AppendUint32(out, uint32(math.Round(d*placesPerM)))
+	}
+	return out
+}
+
+func unpackedPlaces(kept []byte, lengthM float64) []float64 {
+	out := make([]float64, len(kept)/4)
+	for i := range out {
+		out[i] = float64(binary.LittleEndian.Uint32(kept[4*i:])) / placesPerM
+	}
+	if n := len(out); n > 0 {
+		out[n-1] = lengthM
 	}
 	return out
 }

@@ -29,15 +29,22 @@ type Request struct {
 	// where Criteria lists them.
 	CriteriaSet CriteriaSet `json:"criteria_set"`
 	Criteria    []Criterion `json:"criteria,omitempty"`
-	// SpacingM is the step along the path; 0 follows the finest pixel.
+	// SpacingM is the step along the path; 0 is the exact mode of
+	// profile.Sampling.
 	SpacingM float64 `json:"spacing_m"`
 	// Rasters limits the terrain to these rasters; empty is all.
 	Rasters []string `json:"rasters,omitempty"`
 	// CoverHeightM is counted on top of the terrain between the ends, where
 	// the raster does not hold the cover already.
 	CoverHeightM float64 `json:"cover_height_m"`
+	// CoverGrowthMPerYear and CoverGrowthYears say how much higher trees will
+	// be than the data shows.
+	CoverGrowthMPerYear float64 `json:"cover_growth_m_per_year,omitempty"`
+	CoverGrowthYears    float64 `json:"cover_growth_years,omitempty"`
 	// Profile brings the caller's own heights instead of rasters.
 	Profile []Point `json:"profile,omitempty"`
+	// ProfileErrorM is the 1-sigma vertical error of those heights.
+	ProfileErrorM float64 `json:"profile_error_m,omitempty"`
 	// Radio asks whether the link carries traffic; nil judges the path alone.
 	Radio *RadioRequest `json:"radio,omitempty"`
 }

@@ -4,7 +4,6 @@ import (
 	"context"
 	"errors"
 	"fmt"
-	"math"
 	"sync"
 
 	"ridgehop/internal/radio"
@@ -57,17 +56,39 @@ func (s *Service) judge(ctx context.Context, request Request, a *Assessment, ws 
 	if err := s.sample(ctx, path, a); err != nil {
 		return err
 	}
+	a.Profile.AddCover(a.Request.cover())
 	if err := a.place(path); err != nil {
 		return err
 	}
+	a.markOwnBuildings()
 	if a.Judgement, err = profile.Assess(&a.Link, &a.Profile, ws); err != nil {
 		return err
 	}
 	a.doubtCoarseSpacing()
-	if a.Request.Radio == nil {
-		return nil
+	a.doubtUnreachable()
+	if a.Request.Radio != nil {
+		if err := s.judgeRadio(ctx, a, ws); err != nil {
+			return err
+		}
 	}
-	return s.judgeRadio(ctx, a, ws)
+	a.thin()
+	return nil
+}
+
+// thin keeps as many samples as an answer may have, those that decided among
+// them.
+func (a *Assessment) thin() {
+	if len(a.Profile.DistanceM) <= profile.MaxSamples {
+		return
+	}
+	var keep []float64
+	for _, c := range a.Judgement.Clearance {
+		keep = append(keep, c.AtM)
+	}
+	for _, o := range a.Judgement.Obstructions {
+		keep = append(keep, o.FromM, o.PeakAtM, o.ToM)
+	}
+	profile.Thin(&a.Profile, profile.MaxSamples, keep)
 }
 
 // ReasonCoarseSpacing says that the samples lie too far apart to see every
@@ -78,7 +99,7 @@ const ReasonCoarseSpacing profile.ReasonCode = "spacing_too_coarse"
 // whole pixels: a ridge between two samples would not have been seen.
 func (a *Assessment) doubtCoarseSpacing() {
 	p, j := &a.Profile, &a.Judgement
-	if p.PixelM == 0 || p.SpacingM <= p.PixelM || j.Verdict != profile.Clear {
+	if a.Request.SpacingM == 0 || p.PixelM == 0 || p.SpacingM <= p.PixelM || j.Verdict != profile.Clear {
 		return
 	}
 	j.Verdict = profile.Unknown
@@ -86,11 +107,38 @@ func (a *Assessment) doubtCoarseSpacing() {
 		"Samples are %.3g m apart over pixels of %.3g m, so a ridge may lie unseen between them: a clear path takes a spacing of a pixel or less.", p.SpacingM, p.PixelM)})
 }
 
+// ReasonUnreachable says that a remote source which may decide did not answer.
+const ReasonUnreachable profile.ReasonCode = "raster_unreachable"
+
+// doubtUnreachable makes unknown what a source that did not answer might have
+// judged otherwise. What obstructs the path all the same is known.
+func (a *Assessment) doubtUnreachable() {
+	j := &a.Judgement
+	for _, u := range a.Profile.Unreachable {
+		j.Reasons = append(j.Reasons, profile.Reason{Code: ReasonUnreachable, Sentence: fmt.Sprintf(
+			"Raster %s lies under the path but could not be read (%s): ask again when it can.", u.Source, u.Reason)})
+	}
+	if len(a.Profile.Unreachable) > 0 && j.Verdict != profile.Obstructed {
+		j.Verdict = profile.Unknown
+	}
+}
+
+// cover is what the caller says of trees and buildings.
+func (r Request) cover() profile.Cover {
+	return profile.Cover{StatedM: r.CoverHeightM, GrowthM: r.CoverGrowthMPerYear * r.CoverGrowthYears}
+}
+
 // sample fills the profile from the caller's points or from the terrain.
 func (s *Service) sample(ctx context.Context, path profile.Path, a *Assessment) error {
 	r := &a.Request
 	if len(r.Profile) > 0 {
-		return broughtProfile(r.Profile, path.LengthM, r.SpacingM, r.CoverHeightM, &a.Profile)
+		if err := broughtProfile(r.Profile, path.LengthM, r.SpacingM, &a.Profile); err != nil {
+			return err
+		}
+		if r.ProfileErrorM > 0 {
+			a.Profile.Sources[0].ErrorM, a.Profile.Sources[0].CorrelationM = r.ProfileErrorM, broughtCorrelationM
+		}
+		return nil
 	}
 	err := s.terrain.Sample(ctx, path, profile.Sampling{SpacingM: r.SpacingM, Rasters: r.Rasters}, &a.Profile)
 	switch {
@@ -111,9 +159,6 @@ func (s *Service) sample(ctx context.Context, path profile.Path, a *Assessment) 
 			f.add(end.pointer, "longitude %g, latitude %g lies outside every raster%s", end.e.Lon, end.e.Lat, ofThose(r.Rasters))
 		}
 	}
-	if r.CoverHeightM > 0 {
-		a.Profile.AddCover(r.CoverHeightM, func(s profile.Source) bool { return s.Kind == profile.KindSurface })
-	}
 	return f.err()
 }
 
@@ -122,56 +167,4 @@ func ofThose(rasters []string) string {
 		return " of those named"
 	}
 	return " that is loaded"
-}
-
-// place sets the link: the antennas above sea level, and the criteria.
-func (a *Assessment) place(path profile.Path) error {
-	last := len(a.Profile.GroundM) - 1
-	a.GroundAM, a.GroundBM = a.Profile.GroundM[0], a.Profile.GroundM[last]
-	criteria, err := a.Request.criteria(path.LengthM)
-	if err != nil {
-		return err
-	}
-	a.Link = profile.Link{
-		Path: path, FrequencyGHz: a.Request.FrequencyGHz, Polarisation: a.Request.Polarisation, Criteria: criteria,
-	}
-	var f findings
-	a.Link.AntennaAM = a.amsl(a.Request.A, 0, "/a", &f)
-	a.Link.AntennaBM = a.amsl(a.Request.B, last, "/b", &f)
-	return f.err()
-}
-
-// amsl is the height above sea level of the antenna of the end at sample i.
-func (a *Assessment) amsl(e End, i int, pointer string, f *findings) float64 {
-	ground := a.Profile.GroundM[i]
-	switch e.HeightAbove {
-	case AboveSeaLevel:
-		if e.AntennaHeightM < ground {
-			f.add(pointer+"/antenna_height_m", "is %g m above sea level, which is %.1f m below the ground there (%.1f m)",
-				e.AntennaHeightM, ground-e.AntennaHeightM, ground)
-		}
-		return e.AntennaHeightM
-	case AboveRoof:
-		return ground + a.roofM(i, pointer, f) + e.AntennaHeightM
-	case AboveGround:
-	}
-	return ground + e.AntennaHeightM
-}
-
-// roofM is how far the top of the surface stands above the terrain height at
-// sample i. A surface raster's height is that top itself.
-func (a *Assessment) roofM(i int, pointer string, f *findings) float64 {
-	source := a.Profile.SourceIndex[i]
-	if source < 0 {
-		return math.NaN()
-	}
-	switch a.Profile.Sources[source].Kind {
-	case profile.KindProfile:
-		return a.Profile.CoverM[i]
-	case profile.KindGround:
-		f.add(pointer+"/height_above", "is roof, but raster %s is bare earth and knows no roofs: give the height above ground",
-			a.Profile.Sources[source].Name)
-	case profile.KindSurface, profile.KindUnstated:
-	}
-	return 0
 }

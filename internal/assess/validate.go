@@ -19,6 +19,9 @@ const (
 	MaxCoverM         = 200.0
 	MinK              = 0.05
 	MaxK              = 100.0
+	MaxGrowthMPerYear = 5.0
+	MaxGrowthYears    = 50.0
+	MaxErrorM         = 100.0
 	MaxF1Fraction     = 3.0
 	MaxCriteria       = 8
 	MaxNameRunes      = 100
@@ -63,6 +66,9 @@ func (r Request) validate(f *findings) {
 		f.within("/spacing_m", r.SpacingM, 0.01, profile.MaxLengthM, " m")
 	}
 	f.within("/cover_height_m", r.CoverHeightM, 0, MaxCoverM, " m")
+	f.within("/cover_growth_m_per_year", r.CoverGrowthMPerYear, 0, MaxGrowthMPerYear, " m a year")
+	f.within("/cover_growth_years", r.CoverGrowthYears, 0, MaxGrowthYears, " years")
+	f.within("/profile_error_m", r.ProfileErrorM, 0, MaxErrorM, " m")
 	r.validateProfile(f)
 }
 
@@ -122,6 +128,9 @@ func (r Request) validateCriteria(f *findings) {
 
 func (r Request) validateProfile(f *findings) {
 	if r.Profile == nil {
+		if r.ProfileErrorM != 0 {
+			f.add("/profile_error_m", "is that of a profile, and none is brought: the rasters state their own")
+		}
 		return
 	}
 	if n := len(r.Profile); n < 2 || n > profile.MaxSamples {

@@ -2,11 +2,14 @@ package terrain
 
 import (
 	"context"
+	"encoding/binary"
 	"fmt"
+	"math"
 
 	"github.com/maypok86/otter/v2"
 
 	"ridgehop/internal/raster"
+	"ridgehop/internal/terrain/blockstore"
 	"ridgehop/profile"
 )
 
@@ -44,9 +47,10 @@ func chunkSize(info raster.Info) (width, height int) {
 type chunks struct {
 	cache   *otter.Cache[chunkKey, *chunk]
 	handles *handles
+	disk    *blockstore.Store // of remote rasters; may be nil
 }
 
-func newChunks(bytes uint64, h *handles) (*chunks, error) {
+func newChunks(bytes uint64, h *handles, disk *blockstore.Store) (*chunks, error) {
 	cache, err := otter.New(&otter.Options[chunkKey, *chunk]{
 		MaximumWeight: bytes,
 		Weigher:       func(_ chunkKey, c *chunk) uint32 { return uint32(4 * len(c.heights)) }, // #nosec G115 -- at most 32 MiB
@@ -54,7 +58,7 @@ func newChunks(bytes uint64, h *handles) (*chunks, error) {
 	if err != nil {
 		return nil, fmt.Errorf("block cache: %w", err)
 	}
-	return &chunks{cache: cache, handles: h}, nil
+	return &chunks{cache: cache, handles: h, disk: disk}, nil
 }
 
 // at returns the chunk of the raster that holds its pixel (x, y).
@@ -83,11 +87,50 @@ func (c *chunks) read(ctx context.Context, key chunkKey) (*chunk, error) {
 	out.width = min(width, info.Width-out.x)
 	out.height = min(height, info.Height-out.y)
 	out.heights = make([]float32, out.width*out.height)
+	if c.fromDisk(key, out) {
+		return out, nil
+	}
 	err := c.handles.with(context.WithoutCancel(ctx), key.entry, func(d *raster.Dataset) error {
-		if err := key.entry.unchanged(); err != nil {
+		if err := d.Read(out.x, out.y, out.width, out.height, out.heights); err != nil {
 			return err
 		}
-		return d.Read(out.x, out.y, out.width, out.height, out.heights)
+		return key.entry.current(d)
 	})
+	if err == nil {
+		c.toDisk(key, out)
+	}
 	return out, err
+}
+
+// diskKey names a chunk of a remote raster's version; what it holds depends on
+// how chunks are cut, so the size is part of it.
+func (key chunkKey) diskKey(out *chunk) string {
+	return fmt.Sprintf("%s %s %d %d %d %d", key.entry.Name, key.entry.known, out.x, out.y, out.width, out.height)
+}
+
+// fromDisk fills the chunk from the disk, if it is there.
+func (c *chunks) fromDisk(key chunkKey, out *chunk) bool {
+	if c.disk == nil || !key.entry.remote {
+		return false
+	}
+	kept, ok := c.disk.Get(key.diskKey(out), nil)
+	if !ok || len(kept) != 4*len(out.heights) {
+		return false
+	}
+	for i := range out.heights {
+		out.heights[i] = math.Float32frombits(binary.LittleEndian.Uint32(kept[4*i:]))
+	}
+	return true
+}
+
+// toDisk keeps a chunk. A disk that takes nothing more costs speed, not answers.
+func (c *chunks) toDisk(key chunkKey, out *chunk) {
+	if c.disk == nil || !key.entry.remote {
+		return
+	}
+	raw := make([]byte, 0, 4*len(out.heights))
+	for _, h := range out.heights {
+		raw = binary.LittleEndian.AppendUint32(raw, math.Float32bits(h))
+	}
+	_ = c.disk.Put(key.diskKey(out), raw)
 }

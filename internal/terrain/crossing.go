@@ -1,7 +1,8 @@
 package terrain
 
 import (
-	"fmt"
+	"cmp"
+	"iter"
 	"math"
 	"slices"
 
@@ -9,27 +10,20 @@ import (
 
 	"ridgehop/internal/geodesy"
 	"ridgehop/internal/raster"
-	"ridgehop/profile"
 )
 
 // crossing is a mosaic that a path crosses and the path on its grid.
 type crossing struct {
 	mosaic *mosaic
 	track  track
+	legs   []leg
+	spans  []span  // where its rasters lie under the path
 	pixelM float64 // of the mosaic, finer side, where the path is
 }
 
-// crossed lists the mosaics whose rasters the line crosses, finest pixel
-// first. only limits it to the rasters of these names.
-func (t *Terrain) crossed(line geodesy.Line, only []string) ([]crossing, error) {
-	mosaics, err := t.selected(only)
-	if err != nil {
-		return nil, err
-	}
-	geographic, err := newTrack(line.LengthM(), geographicPlane(line))
-	if err != nil {
-		return nil, err
-	}
+// crossed lists the mosaics whose rasters the line crosses: of the highest
+// priority first, then of the finest pixel.
+func (t *Terrain) crossed(line geodesy.Line, geographic track, mosaics []*mosaic) ([]crossing, error) {
 	var out []crossing
 	around := geographic.bound()
 	for _, m := range mosaics {
@@ -46,33 +40,9 @@ func (t *Terrain) crossed(line geodesy.Line, only []string) ([]crossing, error) 
 		}
 	}
 	slices.SortStableFunc(out, func(a, b crossing) int {
-		switch {
-		case a.pixelM < b.pixelM:
-			return -1
-		case a.pixelM > b.pixelM:
-			return 1
-		}
-		return 0
+		return cmp.Or(cmp.Compare(b.mosaic.source.Priority, a.mosaic.source.Priority), cmp.Compare(a.pixelM, b.pixelM))
 	})
 	return out, nil
-}
-
-// selected is every mosaic, or those made of the named rasters alone.
-func (t *Terrain) selected(only []string) ([]*mosaic, error) {
-	if len(only) == 0 {
-		return t.mosaics, nil
-	}
-	var entries []*entry
-	for _, name := range only {
-		e, ok := t.byName[name]
-		if !ok {
-			return nil, fmt.Errorf("%w: %q", profile.ErrUnknownRaster, name)
-		}
-		if !slices.Contains(entries, e) {
-			entries = append(entries, e)
-		}
-	}
-	return t.lay(entries), nil
 }
 
 // turnsTo finds by how many turns of 360 degrees a path's longitudes must be
@@ -106,7 +76,8 @@ func (m *mosaic) cross(line geodesy.Line, geographic track, turns float64) (cros
 			return crossing{}, err
 		}
 	}
-	if !m.under(onGrid) {
+	c := crossing{mosaic: m, track: onGrid, legs: onGrid.legs(nil)}
+	if c.spans = m.spansUnder(c.legs); len(c.spans) == 0 {
 		return crossing{}, nil
 	}
 	middle := line.At(line.LengthM() / 2)
@@ -114,8 +85,8 @@ func (m *mosaic) cross(line geodesy.Line, geographic track, turns float64) (cros
 	u0, v0 := first.at(first.from)
 	u1, v1 := last.at(last.to)
 	units := math.Hypot((u1-u0)*m.grid.PixelX, (v1-v0)*m.grid.PixelY)
-	pixelM := onGround(pixelMetres(m.crs, m.grid, middle.Lat()), m.crs, units, line.LengthM())
-	return crossing{mosaic: m, track: onGrid, pixelM: pixelM}, nil
+	c.pixelM = onGround(pixelMetres(m.crs, m.grid, middle.Lat()), m.crs, units, line.LengthM())
+	return c, nil
 }
 
 // onGround corrects the size of a projected pixel where so many units of the
@@ -138,71 +109,46 @@ func pixelMetres(crs raster.CRS, g raster.Grid, lat float64) float64 {
 	return min(g.PixelX*math.Cos(lat*math.Pi/180), g.PixelY) * degree
 }
 
-// chordsPerPiece is how finely a piece is looked at when asking which tiles
-// lie under it. The chords of the shortest pieces bend less than a pixel.
-const chordsPerPiece = 16
-
-// under reports whether the track runs over any tile.
-func (m *mosaic) under(t track) bool {
-	for i := range t {
-		p := &t[i]
-		u0, v0 := p.at(p.from)
-		for k := 1; k <= chordsPerPiece; k++ {
-			u1, v1 := p.at(p.from + (p.to-p.from)*float64(k)/chordsPerPiece)
-			if m.underChord(u0, v0, u1, v1) {
-				return true
+// turns yields by how many columns a path at column u is to be moved to count
+// as the tiles do: the turn in which they begin, and the ones before and after,
+// since a path may run into a tile from the end of a turn, and a tile may reach
+// beyond it.
+func (m *mosaic) turns(u float64) iter.Seq[float64] {
+	return func(yield func(float64) bool) {
+		if m.turn == 0 {
+			yield(0)
+			return
+		}
+		shift := -float64(m.turn) * (math.Floor(u/float64(m.turn)) + 1)
+		for range 3 {
+			if !yield(shift) {
+				return
 			}
-			u0, v0 = u1, v1
+			shift += float64(m.turn)
 		}
 	}
-	return false
 }
 
-func (m *mosaic) underChord(u0, v0, u1, v1 float64) bool {
-	shift := 0.0
-	if m.turn != 0 {
-		// The turn in which the tiles begin, and the ones before and after: a
-		// chord may run into a tile from the end of a turn, and a tile may
-		// reach beyond it.
-		shift = -float64(m.turn) * (math.Floor(u0/float64(m.turn)) + 1)
-	}
-	for range 3 {
-		touched := cells(int(math.Floor(min(u0, u1)+shift)), int(math.Floor(min(v0, v1))),
-			int(math.Ceil(max(u0, u1)+shift)), int(math.Ceil(max(v0, v1))))
-		for c := range touched {
+// underPoint reports whether a tile lies under a point.
+func (m *mosaic) underPoint(u, v float64) bool {
+	for shift := range m.turns(u) {
+		at := cells(int(math.Floor(u+shift)), int(math.Floor(v)), int(math.Ceil(u+shift)), int(math.Ceil(v)))
+		for c := range at {
 			for _, n := range m.index[c] {
-				if m.tiles[n].touches(u0+shift, v0, u1+shift, v1) {
+				if m.tiles[n].holds(u+shift, v) {
 					return true
 				}
 			}
 		}
-		if m.turn == 0 {
-			break
-		}
-		shift += float64(m.turn)
 	}
 	return false
 }
 
-// touches reports whether a straight line between two points, in the mosaic's
-// pixel-centre coordinates, meets the tile's outer edges or what they enclose.
-func (t tile) touches(u0, v0, u1, v1 float64) bool {
-	near, far := 0.0, 1.0
-	for _, axis := range [2][4]float64{
-		{u0, u1 - u0, float64(t.i) - 0.5, float64(t.i+t.info.Width) - 0.5},
-		{v0, v1 - v0, float64(t.j) - 0.5, float64(t.j+t.info.Height) - 0.5},
-	} {
-		start, along, low, high := axis[0], axis[1], axis[2], axis[3]
-		if along == 0 {
-			if start < low || start > high {
-				return false
-			}
-			continue
-		}
-		enter, leave := (low-start)/along, (high-start)/along
-		near, far = max(near, min(enter, leave)), min(far, max(enter, leave))
-	}
-	return near <= far
+// holds reports whether a point, in the mosaic's pixel-centre coordinates, lies
+// within the tile's outer edges.
+func (t tile) holds(u, v float64) bool {
+	return u >= float64(t.i)-0.5 && u <= float64(t.i+t.info.Width)-0.5 &&
+		v >= float64(t.j)-0.5 && v <= float64(t.j+t.info.Height)-0.5
 }
 
 // bound is the box of a track's knots, widened by a hundredth of a degree for
@@ -220,3 +166,7 @@ func (t track) bound() orb.Bound {
 	}
 	return b.Pad(bend)
 }
+
+// chordsPerPiece is how finely a leg is looked at when asking which tiles lie
+// under it. The chords of the shortest pieces bend less than a pixel.
+const chordsPerPiece = 16

@@ -2,7 +2,12 @@ package terrain
 
 import (
 	"context"
+	"errors"
 	"math"
+	"slices"
+
+	"ridgehop/internal/raster"
+	"ridgehop/profile"
 )
 
 // cursor reads heights of one mosaic along one path. It keeps the chunk that
@@ -21,7 +26,8 @@ type cursor struct {
 	// and how far from it the last four pixels begin.
 	u0, v0, uEnd, vEnd float64
 
-	found []int32 // scratch
+	found []int32                // scratch
+	away  *[]profile.Unreachable // takes note of sources that do not answer
 }
 
 // pixel states of a lookup.
@@ -116,7 +122,7 @@ func (c *cursor) pixel(i, j int) (float32, int, error) {
 		if err := c.fetch(n, i, j); err != nil {
 			return 0, absent, err
 		}
-		if h, _ := c.atHand(i, j); h == h {
+		if h, ok := c.atHand(i, j); ok && h == h {
 			return h, known, nil
 		}
 		state = void
@@ -140,6 +146,11 @@ func (c *cursor) fetch(n int32, i, j int) error {
 		x -= c.m.turn * floorDiv(x, c.m.turn)
 	}
 	got, err := c.chunks.at(c.ctx, t.entry, x, j-t.j)
+	if unreachable(err) {
+		c.noteAway(t.entry, err)
+		c.columns, c.rows, c.uEnd, c.vEnd = 0, 0, 0, 0
+		return nil
+	}
 	if err != nil {
 		return err
 	}
@@ -149,4 +160,51 @@ func (c *cursor) fetch(n int32, i, j int) error {
 	c.u0, c.v0 = float64(c.i0), float64(c.j0)
 	c.uEnd, c.vEnd = float64(c.columns-1), float64(c.rows-1)
 	return nil
+}
+
+// cell is the four corners of the cell whose upper left one is pixel (i, j):
+// upper left, upper right, lower left, lower right; where all are known and lie
+// in the chunk at hand.
+func (c *cursor) cell(i, j int) (h [4]float64, tile int32, ok bool) {
+	a, b := i-c.i0, j-c.j0
+	if a < 0 || b < 0 || a+1 >= c.columns || b+1 >= c.rows {
+		return h, -1, false
+	}
+	at := b*c.columns + a
+	upper, lower := c.heights[at:at+2:at+2], c.heights[at+c.columns:at+c.columns+2]
+	h = [4]float64{float64(upper[0]), float64(upper[1]), float64(lower[0]), float64(lower[1])}
+	sum := h[0] + h[1] + h[2] + h[3]
+	return h, c.tile, sum == sum
+}
+
+// distantCell is cell where the corners lie in more than one chunk or tile. It
+// also reports whether any corner is known at all.
+func (c *cursor) distantCell(i, j int) (h [4]float64, tile int32, corners int, err error) {
+	for k := range h {
+		pixel, state, err := c.pixel(i+k&1, j+k>>1)
+		if err != nil {
+			return h, -1, 0, err
+		}
+		if state != known {
+			continue
+		}
+		h[k] = float64(pixel)
+		if corners++; corners == 1 {
+			tile = c.tile
+		}
+	}
+	return h, tile, corners, nil
+}
+
+// unreachable reports whether a remote raster did not answer, which makes its
+// part of the path void, rather than being at fault.
+func unreachable(err error) bool { return errors.Is(err, raster.ErrUnreachable) }
+
+func (c *cursor) noteAway(e *entry, err error) { noteAway(c.away, e.Name, err) }
+
+func noteAway(away *[]profile.Unreachable, name string, err error) {
+	if slices.ContainsFunc(*away, func(u profile.Unreachable) bool { return u.Source == name }) {
+		return
+	}
+	*away = append(*away, profile.Unreachable{Source: name, Reason: err.Error()})
 }

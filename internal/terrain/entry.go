@@ -1,49 +1,43 @@
 package terrain
 
 import (
-	"crypto/sha256"
-	"encoding/hex"
 	"errors"
-	"fmt"
-	"io"
+	"io/fs"
 	"os"
 	"path"
 	"slices"
 	"strings"
 	"sync"
+	"sync/atomic"
+	"time"
+
+	"github.com/paulmach/orb"
 
 	"ridgehop/internal/raster"
+	"ridgehop/internal/terrain/catalogue"
+	"ridgehop/internal/terrain/footprints"
 	"ridgehop/profile"
 )
 
-// entry is one file found in the folders, and where it lies.
+// entry is one raster, or one file of outlines, and where it lies.
 type entry struct {
 	profile.Raster
-	info  raster.Info
-	path  string
-	bytes int64
+	source   *source
+	info     raster.Info
+	path     string
+	bytes    int64
+	remote   bool
+	outlines *footprints.Footprints
+	gone     atomic.Bool // a remote one that was replaced since it was looked at
 
-	mu    sync.Mutex // guards known
-	known string     // the version, once it is known
+	mu        sync.Mutex // guards what follows
+	known     string     // the version, once it is known
+	checkedAt time.Time  // when a remote one was last found unchanged
 }
 
-func newEntry(path, name string) *entry {
-	return &entry{Raster: profile.Raster{Name: name, Kind: kindOf(name)}, path: path}
-}
-
-// version is contentVersion, computed once. A failure is tried again the next
-// time.
-func (e *entry) version() (string, error) {
-	e.mu.Lock()
-	defer e.mu.Unlock()
-	if e.known != "" {
-		return e.known, nil
-	}
-	version, err := e.contentVersion()
-	if err == nil {
-		e.known = version
-	}
-	return version, err
+func (t *Terrain) newEntry(s *source, where, name string) *entry {
+	e := &entry{Raster: profile.Raster{Name: name, Kind: s.Kind, Source: s.Name}, source: s, path: where, remote: catalogue.Remote(where)}
+	return e
 }
 
 // describe copies what the raster declares to where callers see it.
@@ -56,6 +50,14 @@ func (e *entry) describe(info raster.Info) {
 	e.PixelIsPoint = info.PixelIsPoint
 }
 
+// dataDate is when the raster's content was last changed, as far as is known.
+func (e *entry) dataDate() string {
+	if e.Modified.IsZero() {
+		return ""
+	}
+	return e.Modified.UTC().Format("2006-01-02")
+}
+
 // unchanged is an error once the file is no longer the one that was loaded: its
 // pixels may have moved, and its version no longer names them.
 func (e *entry) unchanged() error {
@@ -64,45 +66,29 @@ func (e *entry) unchanged() error {
 		return errors.New("the file is gone")
 	}
 	if stat.Size() != e.bytes || !stat.ModTime().Equal(e.Modified) {
-		return errors.New("the file has changed since it was loaded: restart to use it as it is now")
+		return errors.New("the file has changed since it was loaded: reload the rasters to use it as it is now")
 	}
 	return nil
 }
 
-// versionDigits is how much of the content's SHA-256 names a version: 64 bits,
-// far more than telling two versions of one raster apart needs.
-const versionDigits = 16
-
-// contentVersion names the content of the file that was loaded, and of the one
-// beside it that says where its pixels lie, if there is one: the same bytes
-// have the same version on every machine, and no edit goes unnoticed.
-func (e *entry) contentVersion() (string, error) {
-	h := sha256.New()
-	for _, path := range []string{e.path, raster.Beside(e.path)} {
-		if path == "" {
-			continue
-		}
-		if err := copyFile(h, path); err != nil {
-			return "", fmt.Errorf("its version: %w", err)
-		}
-	}
-	if err := e.unchanged(); err != nil {
-		return "", err
-	}
-	return hex.EncodeToString(h.Sum(nil))[:versionDigits], nil
+// exists is an error where there is no such file.
+func exists(path string) error {
+	_, err := os.Stat(path)
+	return withoutFolder(err)
 }
 
-// copyFile copies a file's content. Its errors do not say where the file lies.
-func copyFile(to io.Writer, path string) error {
-	f, err := os.Open(path)
-	if err == nil {
-		defer f.Close()
-		_, err = io.Copy(to, f)
-	}
-	if where, ok := errors.AsType[*os.PathError](err); ok {
+// withoutFolder is the error without the place on disk.
+func withoutFolder(err error) error {
+	if where, ok := errors.AsType[*fs.PathError](err); ok {
 		return where.Err
 	}
 	return err
+}
+
+// cellBound is the degree of the earth that a cell is.
+func cellBound(c catalogue.Cell) orb.Bound {
+	lon, lat := float64(c.Lon), float64(c.Lat)
+	return orb.Bound{Min: orb.Point{lon, lat}, Max: orb.Point{lon + 1, lat + 1}}
 }
 
 // kindOf reads the kind from the file's name, or else from the folders that it

@@ -238,8 +238,8 @@ func TestPixelOfAMercatorRaster(t *testing.T) {
 	if math.Abs(p.PixelM-want) > 0.3 {
 		t.Errorf("pixel on the path: got %g m, want %g", p.PixelM, want)
 	}
-	if p.SpacingM > want {
-		t.Errorf("spacing: got %g m, want at most %g", p.SpacingM, want)
+	if most := want * math.Sqrt2; p.SpacingM > most { // from corner to corner of a cell
+		t.Errorf("spacing: got %g m, want at most %g", p.SpacingM, most)
 	}
 	if all := sampled(t, terrain, path, profile.Sampling{}); all.GroundM[0] != 7 {
 		t.Errorf("got %g, want 7 of the finer raster", all.GroundM[0])

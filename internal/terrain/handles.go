@@ -40,14 +40,26 @@ func (h *handles) with(ctx context.Context, e *entry, use func(*raster.Dataset) 
 	dataset := h.takeIdle(e)
 	if dataset == nil {
 		var err error
-		if dataset, err = h.gdal.Open(e.path); err != nil {
+		if dataset, err = h.openAgain(e); err != nil {
 			h.forget()
 			return err
 		}
 	}
 	err := use(dataset)
+	if err != nil && e.remote { // it would say the same for ever
+		dataset.Close()
+		h.forget()
+		return err
+	}
 	h.keepIdle(e, dataset)
 	return err
+}
+
+func (h *handles) openAgain(e *entry) (*raster.Dataset, error) {
+	if e.remote {
+		return h.gdal.OpenRemote(e.path)
+	}
+	return h.gdal.Open(e.path)
 }
 
 // takeIdle takes the raster's handle if one is idle. If none is, it counts one
@@ -72,7 +84,7 @@ func (h *handles) takeIdle(e *entry) *raster.Dataset {
 	return nil
 }
 
-// forget uncounts a handle that could not be opened.
+// forget uncounts a handle that could not be opened, or was closed.
 func (h *handles) forget() {
 	h.mu.Lock()
 	defer h.mu.Unlock()

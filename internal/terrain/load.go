@@ -6,58 +6,116 @@ import (
 	"fmt"
 	"io/fs"
 	"log/slog"
-	"math"
 	"os"
 	"path/filepath"
 	"strings"
+	"sync"
+	"time"
 
-	"github.com/paulmach/orb"
-
-	"ridgehop/internal/geodesy"
 	"ridgehop/internal/raster"
+	"ridgehop/internal/terrain/catalogue"
+	"ridgehop/internal/terrain/footprints"
+	"ridgehop/profile"
 )
 
-// Load scans the folders, with their subfolders, for files whose ending names
-// an elevation format, checks each, and indexes those that are fit. A file
-// that is not fit is kept in Rasters with the reason, and logged; it never
-// stops the loading. A folder that cannot be listed is an error. Files are
-// closed again: they are opened when a path first needs them.
-func Load(ctx context.Context, library *raster.GDAL, folders []string, options Options, log *slog.Logger) (*Terrain, error) {
-	if options.CacheBytes == 0 {
-		options.CacheBytes = 512 << 20
-	}
-	if options.OpenRasters == 0 {
-		options.OpenRasters = 64
-	}
-	t := &Terrain{gdal: library, byName: map[string]*entry{}, systems: map[string]*projectors{}, handles: newHandles(library, options.OpenRasters)}
-	var err error
-	if t.chunks, err = newChunks(options.CacheBytes, t.handles); err != nil {
+// Load looks through the folders and the catalogue's sources for elevation
+// data, checks each file, and indexes those that are fit. Folders are searched
+// whole for files whose ending names an elevation format. A file that is not fit
+// is kept in Rasters with the reason, and logged; it never stops the loading. A
+// folder that cannot be listed is an error, and so is a geoid grid that cannot
+// be read. Files are closed again: they are opened when a path first needs
+// them. Rasters by degrees of the earth are not looked at before that.
+func Load(ctx context.Context, gdal *raster.GDAL, folders []string, options Options, log *slog.Logger) (*Terrain, error) {
+	t, err := newTerrain(gdal, options)
+	if err != nil {
 		return nil, err
 	}
-	var usable []*entry
-	for _, folder := range folders {
-		found, err := t.scan(ctx, folder, log)
-		if err != nil {
-			t.Close()
-			return nil, err
-		}
-		usable = append(usable, found...)
+	l := loading{Terrain: t, ctx: ctx, log: log, index: options.Previous.index()}
+	if err := l.all(folders, options); err != nil {
+		t.Close()
+		return nil, err
 	}
-	t.mosaics = t.lay(usable)
+	t.mosaics = t.lay(l.usable)
 	return t, nil
 }
 
-// scan looks through one folder.
-func (t *Terrain) scan(ctx context.Context, folder string, log *slog.Logger) ([]*entry, error) {
-	var usable []*entry
+func newTerrain(gdal *raster.GDAL, options Options) (*Terrain, error) {
+	options = options.withDefaults()
+	t := &Terrain{
+		gdal: gdal, byName: map[string]*entry{}, systems: map[string]*projectors{}, handles: newHandles(gdal, options.OpenRasters),
+		scratch: sync.Pool{New: func() any { return new(scratch) }},
+	}
+	var err error
+	t.chunks, err = newChunks(options.CacheBytes, t.handles, options.Blocks)
+	return t, err
+}
+
+// loading is a Terrain while it is loaded.
+type loading struct {
+	*Terrain
+	ctx    context.Context
+	log    *slog.Logger
+	index  Index
+	usable []*entry
+}
+
+func (l *loading) all(folders []string, options Options) error {
+	plain := map[profile.Kind]*source{}
+	for _, kind := range []profile.Kind{profile.KindGround, profile.KindSurface, profile.KindUnstated} {
+		plain[kind] = &source{Source: catalogue.Source{Kind: kind}, plain: true}
+		l.sources = append(l.sources, plain[kind])
+	}
+	for name, row := range options.Index {
+		l.index[name] = row
+	}
+	for _, folder := range folders {
+		if err := l.scan(folder, func(name string) (*source, string) { return plain[kindOf(name)], name }); err != nil {
+			return err
+		}
+	}
+	if options.Catalogue == nil {
+		return nil
+	}
+	return l.catalogue(options.Catalogue)
+}
+
+// catalogue loads the sources of the operator's catalogue.
+func (l *loading) catalogue(c *catalogue.Catalogue) error {
+	var err error
+	if l.datums.grids, err = readGeoids(l.gdal, c.Grids); err != nil {
+		return err
+	}
+	l.datums.target = c.Datum
+	for _, stated := range c.Sources {
+		s := &source{Source: stated}
+		l.sources = append(l.sources, s)
+		switch {
+		case stated.Tiles != nil:
+			s.tiles = newTiles(s, l.Terrain)
+		case stated.Folder != "":
+			err = l.scan(stated.Folder, func(name string) (*source, string) { return s, s.Name + "/" + name })
+		default:
+			for _, file := range stated.Files {
+				l.take(l.newEntry(s, file, s.Name+"/"+filepath.Base(file)))
+			}
+		}
+		if err != nil {
+			return err
+		}
+	}
+	return nil
+}
+
+// scan looks through one folder; belongs gives a file's source and name.
+func (l *loading) scan(folder string, belongs func(name string) (*source, string)) error {
 	// A walk does not follow a link, not even the one that it starts from.
 	root, err := filepath.EvalSymlinks(folder)
 	if err != nil {
-		return nil, unlisted(folder, err)
+		return unlisted(folder, err)
 	}
 	err = filepath.WalkDir(root, func(path string, d fs.DirEntry, err error) error {
 		if err == nil {
-			err = ctx.Err()
+			err = l.ctx.Err()
 		}
 		if err == nil && path == root && !d.IsDir() {
 			err = errors.New("not a folder")
@@ -69,123 +127,120 @@ func (t *Terrain) scan(ctx context.Context, folder string, log *slog.Logger) ([]
 		if err != nil {
 			return err
 		}
-		e := newEntry(path, filepath.ToSlash(name))
-		t.entries = append(t.entries, e)
-		if err := t.inspect(e); err != nil {
-			e.Problem = strings.ReplaceAll(err.Error(), path, filepath.Base(path))
-			log.Warn("raster not used", "raster", e.Name, "reason", e.Problem)
-			return nil
-		}
-		if t.systems[e.info.CRS.WKT] == nil {
-			t.systems[e.info.CRS.WKT] = &projectors{gdal: t.gdal}
-		}
-		t.byName[e.Name] = e
-		usable = append(usable, e)
+		s, name := belongs(filepath.ToSlash(name))
+		l.take(l.newEntry(s, path, name))
 		return nil
 	})
 	if err != nil {
-		return nil, unlisted(folder, err)
+		return unlisted(folder, err)
 	}
-	return usable, nil
+	return nil
 }
 
-// unlisted says which folder could not be listed, and why, once.
-func unlisted(folder string, err error) error {
-	if where, ok := errors.AsType[*os.PathError](err); ok {
-		err = where.Err
+// take looks at a file and keeps it, usable or not.
+func (l *loading) take(e *entry) {
+	l.entries = append(l.entries, e)
+	err := errors.New("a raster of the same name was found earlier")
+	if l.byName[e.Name] == nil {
+		err = l.check(e)
 	}
-	return fmt.Errorf("raster folder %s: %w", folder, err)
+	if err != nil {
+		e.Problem = strings.ReplaceAll(err.Error(), e.path, filepath.Base(e.path))
+		l.log.Warn("raster not used", "raster", e.Name, "reason", e.Problem)
+		return
+	}
+	l.byName[e.Name] = e
+	if e.outlines != nil {
+		l.prints = append(l.prints, print{e, e.outlines})
+		return
+	}
+	l.usable = append(l.usable, e)
 }
 
-// inspect opens a file, checks it, and reads its last block, which shows a file
-// that was cut short.
-func (t *Terrain) inspect(e *entry) error {
-	if _, taken := t.byName[e.Name]; taken {
-		return errors.New("a raster of the same name was found in an earlier folder")
+// check looks at a file, or recalls what was found when it was looked at.
+func (l *loading) check(e *entry) error {
+	switch {
+	case e.source.HeightProperty != "":
+		return l.readOutlines(e)
+	case l.index.recall(e):
+		return nil
 	}
+	return l.inspect(e)
+}
+
+// readOutlines reads the outlines of buildings, all of them.
+func (l *loading) readOutlines(e *entry) error {
+	f, err := os.Open(e.path)
+	if err != nil {
+		return withoutFolder(err)
+	}
+	defer f.Close()
+	if err := e.stat(); err != nil {
+		return err
+	}
+	read, report, err := footprints.Read(f, e.source.HeightProperty)
+	if err != nil {
+		return err
+	}
+	if report.Used == 0 {
+		return fmt.Errorf("none of its %d buildings has a usable height under %q, or all their outlines are at fault", report.WithoutHeight+report.Refused, e.source.HeightProperty)
+	}
+	if left := report.WithoutHeight + report.Refused; left > 0 {
+		l.log.Warn("buildings left out", "raster", e.Name, "used", report.Used, "without_height", report.WithoutHeight, "refused", report.Refused)
+	}
+	e.outlines, e.Bound, e.Format = read, read.Bound(), "GeoJSON"
+	e.source.state(&e.Raster)
+	return nil
+}
+
+// stat notes a file's size and date.
+func (e *entry) stat() error {
 	stat, err := os.Stat(e.path)
 	if err != nil {
 		return errors.New("cannot be read")
 	}
 	e.Modified, e.bytes = stat.ModTime(), stat.Size()
-	dataset, err := t.gdal.Open(e.path)
+	return nil
+}
+
+// unlisted says which folder could not be listed, and why, once.
+func unlisted(folder string, err error) error {
+	return fmt.Errorf("raster folder %s: %w", folder, withoutFolder(err))
+}
+
+// inspect opens a file, checks it, and reads its last block, which shows a file
+// that was cut short; of a remote one that would fetch a block for nothing.
+func (t *Terrain) inspect(e *entry) error {
+	dataset, err := t.open(e)
 	if err != nil {
 		return err
 	}
 	defer dataset.Close()
 	e.describe(dataset.Info())
-	if err := dataset.Read(e.Width-1, e.Height-1, 1, 1, make([]float32, 1)); err != nil {
+	if !e.remote {
+		if err := dataset.Read(e.Width-1, e.Height-1, 1, 1, make([]float32, 1)); err != nil {
+			return err
+		}
+	}
+	if e.Bound, e.PixelM, err = t.extent(e.info); err != nil {
 		return err
 	}
-	e.Bound, e.PixelM, err = t.extent(e.info)
-	return err
+	e.source.state(&e.Raster)
+	return nil
 }
 
-// extent is the box of longitudes and latitudes around a raster's outer edge,
-// and the finer side of a pixel in metres at its middle.
-func (t *Terrain) extent(info raster.Info) (orb.Bound, float64, error) {
-	g := info.Grid
-	right, bottom := g.Left+float64(info.Width)*g.PixelX, g.Top-float64(info.Height)*g.PixelY
-	edges := orb.Bound{Min: orb.Point{g.Left, bottom}, Max: orb.Point{right, g.Top}}
-	if info.CRS.WGS84 {
-		if math.Abs(g.Top) > 91 || math.Abs(bottom) > 91 || math.Abs(g.Left) > 361 || right-g.Left > 361 {
-			return orb.Bound{}, 0, fmt.Errorf("%w: it spans longitudes %g to %g and latitudes %g to %g", raster.ErrGeoreference, g.Left, right, bottom, g.Top)
+// open opens a raster for the first time, and notes what names its content.
+func (t *Terrain) open(e *entry) (*raster.Dataset, error) {
+	if !e.remote {
+		if err := e.stat(); err != nil {
+			return nil, err
 		}
-		return edges, pixelMetres(info.CRS, g, edges.Center().Lat()), nil
+		return t.gdal.Open(e.path)
 	}
-	projector, err := t.gdal.NewProjector(info.CRS)
+	d, err := t.gdal.OpenRemote(e.path)
 	if err != nil {
-		return orb.Bound{}, 0, err
+		return nil, err
 	}
-	defer projector.Close()
-	bound, err := unprojected(projector, info.CRS, edges)
-	if err != nil {
-		return orb.Bound{}, 0, err
-	}
-	middle := edges.Center()
-	x, y := []float64{middle[0], middle[0] + g.PixelX}, []float64{middle[1], middle[1]}
-	if err := projector.Unproject(x, y); err != nil {
-		return orb.Bound{}, 0, err
-	}
-	step, err := geodesy.NewLine(orb.Point{x[0], y[0]}, orb.Point{x[1], y[1]})
-	if err != nil {
-		return orb.Bound{}, 0, err
-	}
-	return bound, onGround(pixelMetres(info.CRS, g, y[0]), info.CRS, g.PixelX, step.LengthM()), nil
-}
-
-// unprojected is the box of longitudes and latitudes around a rectangle.
-func unprojected(projector *raster.Projector, crs raster.CRS, edges orb.Bound) (orb.Bound, error) {
-	x, y := edge(edges.Min[0], edges.Min[1], edges.Max[0], edges.Max[1])
-	if err := projector.Unproject(x, y); err != nil {
-		return orb.Bound{}, err
-	}
-	start := x[0]
-	if crs.Geographic { // counted as the grid counts, which may be beyond 180
-		start = edges.Min[0] + math.Remainder(start-edges.Min[0], 360)
-	}
-	b := orb.Bound{Min: orb.Point{start, y[0]}, Max: orb.Point{start, y[0]}}
-	for i := range x {
-		b = b.Extend(orb.Point{start + math.Remainder(x[i]-start, 360), y[i]})
-	}
-	for _, lat := range []float64{-90, 90} {
-		// Around a pole the edges do not show what they enclose.
-		x, y := []float64{0}, []float64{lat}
-		if err := projector.Project(x, y); err == nil && !crs.Geographic && edges.Contains(orb.Point{x[0], y[0]}) {
-			b = b.Extend(orb.Point{-180, lat}).Extend(orb.Point{180, lat})
-		}
-	}
-	return b, nil
-}
-
-// edge walks around a rectangle in steps, since its sides bend in longitude
-// and latitude.
-func edge(left, bottom, right, top float64) (x, y []float64) {
-	const steps = 16
-	for k := range steps {
-		f := float64(k) / steps
-		x = append(x, left+f*(right-left), right, right-f*(right-left), left)
-		y = append(y, bottom, bottom+f*(top-bottom), top, top-f*(top-bottom))
-	}
-	return x, y
+	e.known, e.checkedAt = d.Version(), time.Now()
+	return d, nil
 }

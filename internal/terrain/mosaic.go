@@ -7,7 +7,6 @@ import (
 	"github.com/paulmach/orb"
 
 	"ridgehop/internal/raster"
-	"ridgehop/profile"
 )
 
 // mosaic is a set of rasters on one pixel grid, which do not overlap by more
@@ -16,7 +15,7 @@ import (
 // top - (j+0.5)*pixelY.
 type mosaic struct {
 	crs    raster.CRS
-	kind   profile.Kind
+	source *source
 	grid   raster.Grid
 	turn   int // columns in 360 degrees; 0 where the grid does not close
 	pixelM float64
@@ -55,7 +54,7 @@ func (t tile) contains(i, j int) bool {
 
 func newMosaic(e *entry, own *projectors) *mosaic {
 	m := &mosaic{
-		crs: e.info.CRS, kind: e.Kind, grid: e.info.Grid, pixelM: e.PixelM, bound: e.Bound,
+		crs: e.info.CRS, source: e.source, grid: e.info.Grid, pixelM: e.PixelM, bound: e.Bound,
 		index: map[cell][]int32{}, projectors: own,
 	}
 	if m.crs.Geographic {
@@ -75,7 +74,7 @@ const gridTolerance = 1e-3
 // its tiles by more than a shared row or column.
 func (m *mosaic) accept(e *entry) bool {
 	g := e.info.Grid
-	sameSystem := m.kind == e.Kind && (m.crs.WKT == e.info.CRS.WKT || m.crs.EPSG != 0 && m.crs.EPSG == e.info.CRS.EPSG)
+	sameSystem := m.source == e.source && (m.crs.WKT == e.info.CRS.WKT || m.crs.EPSG != 0 && m.crs.EPSG == e.info.CRS.EPSG)
 	if !sameSystem || !sameStep(m.grid.PixelX, g.PixelX) || !sameStep(m.grid.PixelY, g.PixelY) {
 		return false
 	}

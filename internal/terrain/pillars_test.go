@@ -11,8 +11,10 @@ import (
 
 	"github.com/paulmach/orb"
 
+	"ridgehop/internal/geodesy"
 	"ridgehop/internal/raster"
 	"ridgehop/internal/sharedtest"
+	"ridgehop/profile"
 )
 
 // Surveyed pillars of the Ordnance Survey trig archive against SRTM, each read
@@ -95,5 +97,41 @@ func TestRealRastersPointByPoint(t *testing.T) {
 				t.Errorf("got %d voids of 3000", void)
 			}
 		})
+	}
+}
+
+// The vertical error that the sample catalogue states for SRTM, 3.8 m, is about
+// right: its 90 % interval around a height holds for 85 to 95 % of the surveyed
+// pillars of the lowland tile, once both count from one datum.
+func TestStatedErrorHoldsAtPillars(t *testing.T) {
+	shared := sharedtest.Dir(t)
+	const errorM, normal90 = 3.8, 1.6449 // the normal distribution's 95th percentile
+	terrain := stated(t, shared, "datum: odn\ndatums: {egm96: {grid: geoid/egm96_15.gtx}, odn: {grid: geoid/uk_os_OSGM15_GB.tif}}\nsources:\n"+
+		"  - {name: srtm, kind: surface, datum: egm96, vertical_error_m: 3.8, correlation_length_m: 500, attribution: NASA, licence: none, files: [elevation/N51W001.hgt.zip]}\n")
+	f, err := os.Open(filepath.Join(shared, "truth", "os_trig_pillars_shared.csv"))
+	must(t, err)
+	defer f.Close()
+	rows, err := csv.NewReader(f).ReadAll()
+	must(t, err)
+	held, n, sum := 0, 0, 0.0
+	for _, row := range rows[1:] {
+		if row[0] != "N51W001" {
+			continue
+		}
+		a := orb.Point{number(t, row[4]), number(t, row[3])}
+		p := sampled(t, terrain, pathOf(t, a, geodesy.Direct(a, 0, 2)), profile.Sampling{SpacingM: 1})
+		if p.VerticalDatum != "odn" || len(p.DatumDoubts) > 0 || p.Sources[0].ErrorM != errorM {
+			t.Fatalf("got heights above %q, doubts %v, error %g", p.VerticalDatum, p.DatumDoubts, p.Sources[0].ErrorM)
+		}
+		off := p.GroundM[0] - number(t, row[7])
+		if math.Abs(off) <= normal90*p.Sources[0].ErrorM {
+			held++
+		}
+		n, sum = n+1, sum+off
+	}
+	share := float64(held) / float64(n)
+	t.Logf("%d of %d pillars, %.1f %%; mean difference %.2f m", held, n, 100*share, sum/float64(n))
+	if share < 0.85 || share > 0.95 {
+		t.Errorf("got %.1f %%, want 85 to 95", 100*share)
 	}
 }

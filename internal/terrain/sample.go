@@ -1,175 +1,189 @@
 package terrain
 
 import (
+	"cmp"
 	"context"
-	"fmt"
 	"math"
 	"slices"
 
 	"ridgehop/internal/geodesy"
+	"ridgehop/internal/terrain/footprints"
 	"ridgehop/profile"
 )
 
 // Sample implements profile.Terrain.
 func (t *Terrain) Sample(ctx context.Context, path profile.Path, how profile.Sampling, into *profile.Profile) error {
-	line := geodesy.LineFrom(path.A, path.AzimuthADeg, path.LengthM).To(path.B)
-	crossed, err := t.crossed(line, how.Rasters)
+	s := sampler{ctx: ctx, terrain: t, line: geodesy.LineFrom(path.A, path.AzimuthADeg, path.LengthM).To(path.B), into: into}
+	s.scratch, _ = t.scratch.Get().(*scratch)
+	defer t.scratch.Put(s.scratch)
+	s.sources.into = into
+	into.Resize(0)
+	if err := s.cross(how.Rasters); err != nil {
+		return err
+	}
+	var err error
+	if how.SpacingM > 0 {
+		err = s.even(how.SpacingM)
+	} else {
+		err = s.exact()
+	}
 	if err != nil {
 		return err
 	}
-	into.PixelM = 0
-	if len(crossed) > 0 {
-		into.PixelM = crossed[0].pixelM
-	}
-	if err := space(path.LengthM, how.SpacingM, into); err != nil {
-		return err
-	}
-	s := sampler{terrain: t, into: into}
-	for _, c := range crossed {
-		if s.left() == 0 {
-			break
-		}
-		if err := s.fill(ctx, c); err != nil {
-			return err
-		}
-	}
-	n := len(into.GroundM) - 1
-	into.AOutside = into.GroundM[0] != into.GroundM[0] && !reached(crossed, 0)
-	into.BOutside = into.GroundM[n] != into.GroundM[n] && !reached(crossed, line.LengthM())
+	s.markOutside()
 	return s.name()
 }
 
-// reached reports whether any raster lies under the point at distance d.
-func reached(crossed []crossing, d float64) bool {
-	return slices.ContainsFunc(crossed, func(c crossing) bool {
-		p := &c.track[0]
-		if d > 0 {
-			p = &c.track[len(c.track)-1]
-		}
-		u, v := p.at(d)
-		return c.mosaic.underChord(u, v, u, v)
-	})
-}
-
-// space lays the samples out evenly and marks them all void.
-func space(lengthM, spacingM float64, into *profile.Profile) error {
-	intervals := float64(profile.MinIntervals)
-	switch {
-	case spacingM > 0:
-		intervals = max(2, math.Ceil(lengthM/spacingM-1e-9))
-	case into.PixelM > 0:
-		intervals = max(intervals, stepsByPixel(lengthM, into.PixelM))
-	}
-	if intervals >= profile.MaxSamples {
-		return fmt.Errorf("%w: a step of %.3g m makes %.0f of them; at most %d are taken: a spacing of %.3g m or more fits this path",
-			profile.ErrTooManySamples, lengthM/intervals, intervals+1, profile.MaxSamples, roundedUp(lengthM/(profile.MaxSamples-1)))
-	}
-	n := int(intervals) + 1
-	into.Resize(n)
-	into.SpacingM = lengthM / intervals
-	for i := range n {
-		into.DistanceM[i] = float64(i) * into.SpacingM
-		into.GroundM[i] = math.NaN()
-		into.SourceIndex[i] = -1
-	}
-	into.DistanceM[n-1] = lengthM
-	return nil
-}
-
-// stepsPerPixel is how many steps a path takes across the finest pixel where
-// the caller leaves the spacing open. Between two samples the bilinear surface
-// can rise above both: measured against 16 steps a pixel on real mountain
-// terrain, one step a pixel saw least clearances too large by up to 2.4 F1,
-// four by at most 0.3 F1.
-const stepsPerPixel = 4
-
-// stepsByPixel is the number of steps for a pixel size: stepsPerPixel for each,
-// or on long paths as many as there may be, but never less than one.
-func stepsByPixel(lengthM, pixelM float64) float64 {
-	pixels := math.Ceil(lengthM/pixelM - 1e-9)
-	fine := math.Ceil(lengthM/pixelM*stepsPerPixel - 1e-9)
-	return max(pixels, min(fine, profile.MaxSamples-1))
-}
-
-// roundedUp is the least number of three digits that is no less than v > 0.
-func roundedUp(v float64) float64 {
-	digit := math.Pow(10, math.Floor(math.Log10(v))-2)
-	return math.Ceil(v/digit) * digit
-}
-
-// sampler fills one profile from one mosaic after the other.
+// sampler fills one profile.
 type sampler struct {
-	terrain *Terrain
-	into    *profile.Profile
-	known   int
-	entries []*entry // behind into.Sources
+	ctx        context.Context
+	terrain    *Terrain
+	line       geodesy.Line
+	geographic track
+	layers     [layerCount][]crossing
+	prints     []print // building outlines that may lie under the path
+	into       *profile.Profile
+	sources    sources
+	*scratch
 }
 
-func (s *sampler) left() int { return len(s.into.GroundM) - s.known }
+// scratch is memory that goes from one path to the next.
+type scratch struct {
+	strips   [layerCount]strip
+	vertices []footprints.Vertex
+	inside   []footprints.Span
+	shifts   []shift
+}
 
-// fill gives every sample that is still void the mosaic's height, where it has
-// one.
-func (s *sampler) fill(ctx context.Context, c crossing) error {
-	if err := ctx.Err(); err != nil {
+// cross finds what lies under the path, layer by layer.
+func (s *sampler) cross(only []string) error {
+	var err error
+	if s.geographic, err = newTrack(s.line.LengthM(), geographicPlane(s.line)); err != nil {
 		return err
 	}
-	cur := cursor{ctx: ctx, m: c.mosaic, chunks: s.terrain.chunks, tile: -1}
-	distances, ground := s.into.DistanceM, s.into.GroundM
-	lastTile, source := int32(-1), int16(-1)
-	i := 0
-	for k := range c.track {
-		p := &c.track[k]
-		for ; i < len(distances) && distances[i] <= p.to; i++ {
-			if ground[i] == ground[i] {
-				continue
-			}
-			u, v := p.at(distances[i])
-			h, ok := cur.inside(u, v)
-			tile := cur.tile
-			if !ok {
-				var err error
-				if h, tile, err = cur.height(u, v); err != nil {
-					return err
-				}
-				if h != h {
-					continue
-				}
-			}
-			if tile != lastTile {
-				lastTile, source = tile, s.source(c.mosaic.tiles[tile].entry)
-			}
-			ground[i], s.into.SourceIndex[i] = h, source
-			s.known++
+	found, err := s.terrain.choose(s.ctx, s.geographic, only, s.into)
+	if err != nil {
+		return err
+	}
+	crossed, err := s.terrain.crossed(s.line, s.geographic, found.mosaics)
+	if err != nil {
+		return err
+	}
+	s.prints = found.prints
+	for _, c := range crossed {
+		l := layerOf(c.mosaic.source.Kind)
+		s.layers[l] = append(s.layers[l], c)
+		if l <= surfaceLayer && (s.into.PixelM == 0 || c.pixelM < s.into.PixelM) {
+			s.into.PixelM = c.pixelM
 		}
 	}
 	return nil
 }
 
-// source is the place of the raster in the profile's list of sources.
-func (s *sampler) source(e *entry) int16 {
-	i := slices.Index(s.entries, e)
-	if i < 0 {
-		i = len(s.entries)
-		s.entries = append(s.entries, e)
+// levels prepares a layer's mosaics for reading.
+func (s *sampler) levels(l layer) []level {
+	out := make([]level, len(s.layers[l]))
+	for i, c := range s.layers[l] {
+		out[i] = level{crossing: c, cur: cursor{ctx: s.ctx, m: c.mosaic, chunks: s.terrain.chunks, tile: -1, away: &s.into.Unreachable}}
 	}
-	return int16(i) // #nosec G115 -- at most as many as there are samples
+	return out
 }
 
-// name lists the rasters that gave heights, with their versions.
+// markOutside says which end no raster of heights above the sea reaches. A
+// source that does not answer may have reached it.
+func (s *sampler) markOutside() {
+	n := len(s.into.GroundM) - 1
+	if n < 0 || len(s.into.Unreachable) > 0 {
+		return
+	}
+	s.into.AOutside = math.IsNaN(s.into.GroundM[0]) && !s.reached(0)
+	s.into.BOutside = math.IsNaN(s.into.GroundM[n]) && !s.reached(s.line.LengthM())
+}
+
+// reached reports whether any raster lies under the point at distance d, one of
+// the two ends.
+func (s *sampler) reached(d float64) bool {
+	for _, l := range []layer{groundLayer, surfaceLayer} {
+		if slices.ContainsFunc(s.layers[l], func(c crossing) bool {
+			p := &c.track[0]
+			if d > 0 {
+				p = &c.track[len(c.track)-1]
+			}
+			u, v := p.at(d)
+			return c.mosaic.underPoint(u, v)
+		}) {
+			return true
+		}
+	}
+	return false
+}
+
+// name lists the rasters that something rests on, those asked first standing
+// first, with their versions.
 func (s *sampler) name() error {
-	for _, e := range s.entries {
+	samples := s.count()
+	place := make([]int16, len(samples))
+	for _, i := range s.ranked() {
+		e := s.sources.entries[i]
+		if samples[i] == 0 { // another layer spoke wherever it would have
+			if layerOf(e.Kind) > surfaceLayer {
+				s.into.LeftOut = append(s.into.LeftOut, e.Name)
+			}
+			continue
+		}
 		version, err := e.version()
 		if err != nil {
 			return &profile.UnreadableError{Raster: e.Name, Err: err}
 		}
-		s.into.Sources = append(s.into.Sources, profile.Source{
-			Name: e.Name, Version: version, Kind: e.Kind, DataDate: e.Modified.UTC().Format("2006-01-02"),
-		})
+		place[i] = int16(len(s.into.Sources))
+		s.into.Sources = append(s.into.Sources, e.asSource(version, samples[i]))
 	}
-	for _, i := range s.into.SourceIndex {
-		if i >= 0 {
-			s.into.Sources[i].Samples++
+	for _, indices := range [][]int16{s.into.SourceIndex, s.into.CoverIndex} {
+		for k, i := range indices {
+			if i >= 0 {
+				indices[k] = place[i]
+			}
 		}
 	}
 	return nil
+}
+
+// count is how many samples rest on each raster, for the ground or the cover.
+func (s *sampler) count() []int {
+	samples := make([]int, len(s.sources.entries))
+	for _, ground := range s.into.SourceIndex {
+		if ground >= 0 {
+			samples[ground]++
+		}
+	}
+	for k, cover := range s.into.CoverIndex {
+		if cover >= 0 && cover != s.into.SourceIndex[k] {
+			samples[cover]++
+		}
+	}
+	return samples
+}
+
+// ranked are the places of the rasters in use as they are asked, whichever way
+// the path runs.
+func (s *sampler) ranked() []int {
+	order := make([]int, len(s.sources.entries))
+	for i := range order {
+		order[i] = i
+	}
+	slices.SortFunc(order, func(a, b int) int { return asksFirst(s.sources.entries[a], s.sources.entries[b]) })
+	return order
+}
+
+// asksFirst orders rasters as they are asked.
+func asksFirst(a, b *entry) int {
+	return cmp.Or(cmp.Compare(b.Priority, a.Priority), cmp.Compare(a.PixelM, b.PixelM), cmp.Compare(a.Name, b.Name))
+}
+
+func (e *entry) asSource(version string, samples int) profile.Source {
+	return profile.Source{
+		Name: e.Name, Version: version, Kind: e.Kind, DataDate: e.dataDate(), Samples: samples,
+		VerticalDatum: e.VerticalDatum, ErrorM: e.ErrorM, CorrelationM: e.CorrelationM, ErrorAssumed: e.ErrorAssumed,
+		Attribution: e.Attribution, Licence: e.Licence,
+	}
 }

@@ -10,7 +10,6 @@ import (
 	"github.com/google/go-cmp/cmp"
 	"github.com/paulmach/orb"
 
-	"ridgehop/internal/geodesy"
 	"ridgehop/profile"
 )
 
@@ -184,22 +183,6 @@ func TestOnlyNamedRasters(t *testing.T) {
 		err := terrain.Sample(context.Background(), pathOf(t, at(0, 0), at(10, 0)), profile.Sampling{Rasters: only}, &profile.Profile{})
 		if !errors.Is(err, profile.ErrUnknownRaster) || !strings.Contains(err.Error(), `"`+only[len(only)-1]+`"`) {
 			t.Errorf("%q: got %v, want ErrUnknownRaster with its name", only, err)
-		}
-	}
-}
-
-// Rasters of different kinds are never laid into one mosaic.
-func TestSurfaceAndGroundStayApart(t *testing.T) {
-	terrain := loadedGrids(t, map[string]grid{
-		"town_dsm.asc": square(20, 5, constant(30)).cut(0, 0, 10, 20), "town_dtm.asc": square(20, 5, constant(10)),
-	})
-	at := metresFrom(t, terrain)
-	for east, want := range map[float64]profile.Source{-20: {Name: "town_dsm.asc", Kind: profile.KindSurface}, 20: {Name: "town_dtm.asc", Kind: profile.KindGround}} {
-		a := at(east, 0)
-		path := profile.Path{A: a, B: geodesy.Direct(a, 90, 4), Located: true, LengthM: 4, AzimuthADeg: 90}
-		p := sampled(t, terrain, path, profile.Sampling{})
-		if len(p.Sources) != 1 || p.Sources[0].Name != want.Name || p.Sources[0].Kind != want.Kind {
-			t.Errorf("%g m east: got %+v, want %+v", east, p.Sources, want)
 		}
 	}
 }

@@ -1,0 +1,134 @@
+package terrain
+
+import (
+	"math"
+)
+
+// compose makes the profile out of the layers at the distances, which are the
+// profile's own: bare earth with what stands on it, by whatever speaks there. A
+// surface model speaks for everything that stands; without one the canopy and
+// the buildings do, the taller of the two; and where there is no bare earth the
+// surface stands in its place. Nothing is counted twice.
+func (s *sampler) compose(distances []float64) {
+	if s.alone(distances) {
+		return
+	}
+	into, n := s.into, len(distances)
+	into.DistanceM = distances
+	into.GroundM, into.SourceIndex, into.BendPerM = resized(into.GroundM, n), resized(into.SourceIndex, n), resized(into.BendPerM, n)
+	covered := s.covered()
+	if covered {
+		into.CoverM, into.CoverIndex = resized(into.CoverM, n), resized(into.CoverIndex, n)
+	}
+	var readers [layerCount]reader
+	for l := range readers {
+		readers[l].strip = &s.strips[l]
+	}
+	var before mix
+	for i, d := range distances {
+		here := mixed(&readers, d)
+		into.GroundM[i], into.SourceIndex[i] = here.groundM, here.ground
+		if covered {
+			into.CoverM[i], into.CoverIndex[i] = here.coverM, here.cover
+		}
+		into.BendPerM[i] = 0
+		if i > 0 {
+			into.BendPerM[i-1] = bendBetween(&readers, before, here)
+		}
+		before = here
+	}
+}
+
+// covered reports whether anything may stand on bare earth.
+func (s *sampler) covered() bool {
+	has := func(l layer) bool { return len(s.strips[l].at) > 0 }
+	return has(groundLayer) && (has(surfaceLayer) || has(canopyLayer) || has(buildingsLayer) || has(outlinesLayer))
+}
+
+// alone takes a layer of heights above the sea as it is where it is the only
+// one, which is what most operators have.
+func (s *sampler) alone(distances []float64) bool {
+	var only *strip
+	for l := range s.strips {
+		if len(s.strips[l].at) == 0 {
+			continue
+		}
+		if only != nil || layer(l) > surfaceLayer {
+			return false
+		}
+		only = &s.strips[l]
+	}
+	if only == nil || len(only.at) != len(distances) {
+		return false
+	}
+	into := s.into
+	into.DistanceM = distances
+	into.GroundM = append(into.GroundM[:0], only.height...)
+	into.SourceIndex = append(into.SourceIndex[:0], only.source...)
+	into.BendPerM = append(into.BendPerM[:0], only.bend...)
+	return true
+}
+
+// mix is what the layers make together at one place.
+type mix struct {
+	groundM, coverM float64
+	ground, cover   int16
+	top             [2]layer // the layers whose sum is the top; none is layerCount
+}
+
+// mixed reads the layers at a distance, which is no less than in the call
+// before.
+func mixed(readers *[layerCount]reader, d float64) mix {
+	var h [layerCount]float64
+	var source [layerCount]int16
+	for l := range readers {
+		h[l], source[l] = math.NaN(), -1
+		if r := &readers[l]; len(r.at) > 1 {
+			r.reach(d)
+			h[l], source[l] = r.heightAt(d)
+		}
+	}
+	ground, surface := h[groundLayer], h[surfaceLayer]
+	out := mix{groundM: ground, ground: source[groundLayer], cover: -1, top: [2]layer{groundLayer, layerCount}}
+	switch {
+	case ground != ground:
+		out.groundM, out.ground, out.top[0] = surface, source[surfaceLayer], surfaceLayer
+	case surface > ground:
+		out.coverM, out.cover, out.top[0] = surface-ground, source[surfaceLayer], surfaceLayer
+	case surface == surface:
+		// The surface lies below the ground, by an error of one of the two.
+	default:
+		for _, l := range []layer{canopyLayer, buildingsLayer, outlinesLayer} {
+			if h[l] > out.coverM {
+				out.coverM, out.cover, out.top[1] = h[l], source[l], l
+			}
+		}
+	}
+	return out
+}
+
+// bendBetween is how the top runs from one place to the next. Where another
+// layer is on top at either end, it runs no lower than both.
+func bendBetween(readers *[layerCount]reader, a, b mix) float64 {
+	if a.top == b.top {
+		return bendOf(readers, a.top)
+	}
+	return max(0, bendOf(readers, a.top), bendOf(readers, b.top))
+}
+
+func bendOf(readers *[layerCount]reader, top [2]layer) float64 {
+	sum := 0.0
+	for _, l := range top {
+		if l < layerCount && len(readers[l].at) > 1 {
+			sum += readers[l].bend[readers[l].i]
+		}
+	}
+	return sum
+}
+
+func resized[T any](s []T, n int) []T {
+	if cap(s) < n {
+		return make([]T, n)
+	}
+	return s[:n]
+}
