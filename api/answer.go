@@ -13,22 +13,23 @@ import (
 func Answer(a *assess.Assessment, withSamples bool) Assessment {
 	j := &a.Judgement
 	out := Assessment{
-		Id: a.ID, Verdict: Verdict(j.Verdict),
+		Id: a.ID, Verdict: Verdict(j.Verdict), Confidence: confidence(j.Confidence),
 		Path: Path{
 			LengthM:     round(a.Link.Path.LengthM, 4),
 			AzimuthADeg: placed(a, a.Link.Path.AzimuthADeg), AzimuthBDeg: placed(a, a.Link.Path.AzimuthBDeg),
 			TiltADeg: figure(j.TiltADeg, 4), TiltBDeg: figure(j.TiltBDeg, 4),
 		},
 		Ends: Ends{
-			A: end(a.Request.A, a.GroundAM, a.Link.AntennaAM),
-			B: end(a.Request.B, a.GroundBM, a.Link.AntennaBM),
+			A: end(a.Request.A, a.GroundAM, a.Link.AntennaAM, a.Profile.OwnAM),
+			B: end(a.Request.B, a.GroundBM, a.Link.AntennaBM, a.Profile.OwnBM),
 		},
 		Reasons: []Note{}, Cautions: []Note{},
 		Clearance: []Clearance{}, Obstructions: []Obstruction{},
-		Raise:       Raise{AM: raise(j.Raise.AM), BM: raise(j.Raise.BM), BothM: raise(j.Raise.BothM), CapM: j.Raise.CapM},
-		Diffraction: Diffraction{Method: P526DeltaBullington, ByK: []DiffractionLoss{}},
-		Terrain:     terrainOf(a),
-		Links:       Links{Self: selfLink(a.ID), Svg: selfLink(a.ID) + "/profile.svg"},
+		Raise:             Raise{AM: raise(j.Raise.AM), BM: raise(j.Raise.BM), BothM: raise(j.Raise.BothM), CapM: j.Raise.CapM},
+		ExtraHeightFor90M: ExtraHeight{AM: raise(j.ExtraHeight.AM), BM: raise(j.ExtraHeight.BM), BothM: raise(j.ExtraHeight.BothM)},
+		Diffraction:       Diffraction{Method: P526DeltaBullington, ByK: []DiffractionLoss{}},
+		Terrain:           terrainOf(a),
+		Links:             Links{Self: selfLink(a.ID), Svg: selfLink(a.ID) + "/profile.svg"},
 	}
 	for _, r := range j.Reasons {
 		out.Reasons = append(out.Reasons, Note{Code: string(r.Code), Detail: r.Detail()})
@@ -61,18 +62,20 @@ func Answer(a *assess.Assessment, withSamples bool) Assessment {
 }
 
 // Encode is the answer as JSON, the same bytes for the same assessment.
-func Encode(answer Assessment) ([]byte, error) {
+func Encode(answer Assessment) ([]byte, error) { return encoded(answer) }
+
+func encoded(document any) ([]byte, error) {
 	var out bytes.Buffer
 	encoder := json.NewEncoder(&out)
 	encoder.SetEscapeHTML(false)
-	err := encoder.Encode(answer)
+	err := encoder.Encode(document)
 	return out.Bytes(), err
 }
 
 func selfLink(id string) string { return "/v1/assessments/" + id }
 
-func end(e assess.End, groundM, antennaM float64) End {
-	out := End{Name: e.Name, GroundM: figure(groundM, 3), AntennaAmslM: figure(antennaM, 3)}
+func end(e assess.End, groundM, antennaM, ownM float64) End {
+	out := End{Name: e.Name, GroundM: figure(groundM, 3), AntennaAmslM: figure(antennaM, 3), OwnBuildingM: round(ownM, 3)}
 	if e.Placed {
 		out.Lon, out.Lat = &e.Lon, &e.Lat
 	}
@@ -84,28 +87,6 @@ func placed(a *assess.Assessment, azimuthDeg float64) *float64 {
 		return nil
 	}
 	return figure(azimuthDeg, 6)
-}
-
-func terrainOf(a *assess.Assessment) Terrain {
-	n := len(a.Profile.GroundM)
-	out := Terrain{
-		Rasters: []TerrainSource{}, SpacingM: round(a.Profile.SpacingM, 4),
-		Samples: int32(n), VoidShare: round(a.Judgement.VoidShare, 6),
-	}
-	for _, s := range a.Profile.Sources {
-		out.Rasters = append(out.Rasters, TerrainSource{
-			Name: s.Name, Version: s.Version, Kind: RasterKind(s.Kind), Share: round(float64(s.Samples)/float64(n), 6),
-		})
-	}
-	return out
-}
-
-func samplesOf(a *assess.Assessment) *Samples {
-	s := a.Samples()
-	return &Samples{
-		K: s.K, DistanceM: rounded(s.DistanceM), GroundM: figures(s.GroundM), CoverM: rounded(s.CoverM),
-		BulgeM: rounded(s.BulgeM), LineM: figures(s.LineM), F1M: rounded(s.F1M),
-	}
 }
 
 // round keeps so many decimals.
@@ -128,7 +109,17 @@ func raise(v float64) *float64 {
 	if math.IsNaN(v) {
 		return nil
 	}
-	v = math.Ceil(v*1000-1e-6) / 1000
+	v = math.Ceil(v*1000-1e-6)/1000 + 0 // no negative zero
+	return &v
+}
+
+// confidence is rounded down, so that one that is too low for a verdict never
+// reads as if it were enough.
+func confidence(v float64) *float64 {
+	if math.IsNaN(v) {
+		return nil
+	}
+	v = math.Floor(v*1e4+1e-9)/1e4 + 0
 	return &v
 }
 

@@ -6,12 +6,15 @@ import "ridgehop/internal/assess"
 func (r AssessmentRequest) Asked() assess.Request {
 	out := assess.Request{
 		A: r.A.asked(), B: r.B.asked(),
-		FrequencyGHz: r.FrequencyGhz,
-		Polarisation: assess.Polarisation(or(r.Polarisation)),
-		CriteriaSet:  assess.CriteriaSet(or(r.CriteriaSet)),
-		SpacingM:     or(r.SpacingM),
-		Rasters:      or(r.Rasters),
-		CoverHeightM: or(r.CoverHeightM),
+		FrequencyGHz:        r.FrequencyGhz,
+		Polarisation:        assess.Polarisation(or(r.Polarisation)),
+		CriteriaSet:         assess.CriteriaSet(or(r.CriteriaSet)),
+		SpacingM:            or(r.SpacingM),
+		Rasters:             or(r.Rasters),
+		CoverHeightM:        or(r.CoverHeightM),
+		CoverGrowthMPerYear: or(r.CoverGrowthMPerYear),
+		CoverGrowthYears:    or(r.CoverGrowthYears),
+		ProfileErrorM:       or(r.ProfileErrorM),
 	}
 	for _, c := range or(r.Criteria) {
 		out.Criteria = append(out.Criteria, assess.Criterion{K: c.K, F1Fraction: c.F1Fraction})

@@ -5,7 +5,6 @@ import (
 	"context"
 	"crypto/sha256"
 	"encoding/hex"
-	"encoding/json"
 	"net/http"
 	"strings"
 
@@ -16,27 +15,38 @@ import (
 
 // CreateAssessment judges a link and keeps the answer.
 func (h *handlers) CreateAssessment(ctx context.Context, request CreateAssessmentRequestObject) (CreateAssessmentResponseObject, error) {
-	judged, err := h.Assessor.Assess(ctx, request.Body.Asked())
+	id, kept, err := h.judged(ctx, request.Body.Asked())
 	if err != nil {
 		return nil, err
+	}
+	return content{status: http.StatusCreated, kind: "application/json", body: kept, location: selfLink(id)}, nil
+}
+
+// judged judges a link, keeps the answer, and returns its id and the answer
+// that is kept.
+func (h *handlers) judged(ctx context.Context, request assess.Request) (id string, kept []byte, err error) {
+	judged, err := h.Assessor.Assess(ctx, request)
+	if err != nil {
+		return "", nil, err
 	}
 	answer, err := Encode(Answer(judged, false))
 	if err != nil {
-		return nil, err
+		return "", nil, err
 	}
 	record, err := judged.Record()
 	if err != nil {
-		return nil, err
+		return "", nil, err
 	}
-	kept, err := h.Keeper.KeepAssessment(ctx, store.Assessment{ID: judged.ID, Answer: answer, Record: record})
+	kept, err = h.Keeper.KeepAssessment(ctx, store.Assessment{ID: judged.ID, Answer: answer, Record: record})
 	if err != nil {
-		return nil, err
+		return "", nil, err
 	}
 	h.Metrics.Assessment(string(judged.Judgement.Verdict))
-	return content{status: http.StatusCreated, kind: "application/json", body: kept, location: selfLink(judged.ID)}, nil
+	return judged.ID, kept, nil
 }
 
-// GetAssessment gives an assessment as it was first given.
+// GetAssessment gives an assessment as it was first given, and says where it
+// is stale.
 func (h *handlers) GetAssessment(ctx context.Context, request GetAssessmentRequestObject) (GetAssessmentResponseObject, error) {
 	include := request.Params.Include
 	if include != nil && *include != GetAssessmentParamsIncludeSamples {
@@ -47,19 +57,19 @@ func (h *handlers) GetAssessment(ctx context.Context, request GetAssessmentReque
 		return nil, err
 	}
 	out := content{status: http.StatusOK, kind: "application/json", body: kept.Answer, known: request.Params.IfNoneMatch}
-	if include == nil {
-		return out, nil
-	}
 	judged, err := assess.FromRecord(kept.Record)
+	if err != nil && include == nil {
+		h.Log.Warn("the record of an assessment cannot be read", "assessment", request.Id, "error", err)
+		return out, nil // the answer itself stays readable
+	}
 	if err != nil {
 		return nil, err
 	}
-	var answer Assessment
-	if err := json.Unmarshal(kept.Answer, &answer); err != nil {
-		return nil, err
+	more := additions{StaleBecause: h.staleBecause(ctx, judged)}
+	if include != nil {
+		more.Samples = samplesOf(judged)
 	}
-	answer.Samples = samplesOf(judged)
-	out.body, err = Encode(answer)
+	out.body, err = more.to(kept.Answer)
 	return out, err
 }
 

@@ -93,9 +93,10 @@ func anyRequest(t *rapid.T) map[string]any {
 	}
 	return map[string]any{
 		"a": end("a"), "b": end("b"), "frequency_ghz": around("frequency", 0.1, 100),
-		"polarisation":   rapid.SampledFrom([]string{"vertical", "horizontal", "slant", ""}).Draw(t, "polarisation"),
-		"criteria":       []any{map[string]any{"k": around("k", 0.1, 10), "f1_fraction": around("fraction", 0, 2)}},
-		"cover_height_m": around("cover", 0, 60),
+		"polarisation":            rapid.SampledFrom([]string{"vertical", "horizontal", "slant", ""}).Draw(t, "polarisation"),
+		"criteria":                []any{map[string]any{"k": around("k", 0.1, 10), "f1_fraction": around("fraction", 0, 2)}},
+		"cover_height_m":          around("cover", 0, 60),
+		"cover_growth_m_per_year": around("growth", 0, 1), "cover_growth_years": around("years", 0, 30), "profile_error_m": around("error", 0, 5),
 	}
 }
 

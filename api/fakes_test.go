@@ -1,6 +1,7 @@
 package api
 
 import (
+	"cmp"
 	"context"
 	"errors"
 	"io"
@@ -21,8 +22,10 @@ import (
 // hills is a terrain of two gentle hills; a void and an unreadable raster on
 // demand.
 type hills struct {
-	err  error
-	void bool
+	err     error
+	void    bool
+	version string // of its raster; empty is 1
+	liftM   float64
 }
 
 func (h hills) Sample(_ context.Context, path profile.Path, _ profile.Sampling, into *profile.Profile) error {
@@ -32,10 +35,10 @@ func (h hills) Sample(_ context.Context, path profile.Path, _ profile.Sampling, 
 	const n = 101
 	into.Resize(n)
 	into.SpacingM = path.LengthM / (n - 1)
-	into.Sources = append(into.Sources, profile.Source{Name: "hills", Version: "1", Kind: profile.KindGround, Samples: n})
+	into.Sources = append(into.Sources, profile.Source{Name: "hills", Version: cmp.Or(h.version, "1"), Kind: profile.KindGround, Samples: n})
 	for i := range n {
 		into.DistanceM[i] = path.LengthM * float64(i) / (n - 1)
-		into.GroundM[i] = 100 + 20*math.Sin(float64(i)/8)
+		into.GroundM[i] = 100 + h.liftM + 20*math.Sin(float64(i)/8)
 		into.SourceIndex[i] = 0
 		if h.void && i > 40 && i < 50 {
 			into.GroundM[i], into.SourceIndex[i] = math.NaN(), -1
@@ -80,15 +83,42 @@ type listed []assess.Raster
 
 func (l listed) Rasters(context.Context) ([]assess.Raster, error) { return l, nil }
 
+// height is a terrain that answers as it is told.
+type height struct {
+	spot     assess.Spot
+	coverage []assess.Coverage
+	changes  assess.RasterChanges
+	err      error
+}
+
+func (h height) Heights(_ context.Context, lon, lat float64) (assess.Spot, error) {
+	h.spot.Lon, h.spot.Lat = lon, lat
+	return h.spot, h.err
+}
+
+func (h height) Coverage(context.Context) ([]assess.Coverage, error) { return h.coverage, h.err }
+
+func (h height) Reload(context.Context) (assess.RasterChanges, error) { return h.changes, h.err }
+
+func (height) Usable() int { return 7 }
+
+// fresh is the part of an Assessor that finds nothing stale.
+type fresh struct{}
+
+func (fresh) Stale(context.Context, *assess.Assessment) ([]string, error) { return nil, nil }
+
 // panicking judges nothing.
-type panicking struct{}
+type panicking struct{ fresh }
 
 func (panicking) Assess(context.Context, assess.Request) (*assess.Assessment, error) {
 	panic("the judge fell over")
 }
 
 // failing judges nothing, and says so.
-type failing struct{ err error }
+type failing struct {
+	fresh
+	err error
+}
 
 func (f failing) Assess(context.Context, assess.Request) (*assess.Assessment, error) {
 	return nil, f.err
@@ -104,7 +134,7 @@ func service(t testing.TB, change func(*Dependencies)) http.Handler {
 	}
 	d := Dependencies{
 		Antennas: antennas, Radios: radios,
-		Assessor: assess.NewService(hills{}).WithEquipment(assess.Equipment{Antennas: antennas, Radios: radios}), Keeper: &memory{kept: map[string]store.Assessment{}}, Lister: listed{},
+		Assessor: assess.NewService(hills{}).WithEquipment(assess.Equipment{Antennas: antennas, Radios: radios}), Keeper: &memory{kept: map[string]store.Assessment{}}, Lister: listed{}, Elevation: height{},
 		Health:  telemetry.NewHealth(telemetry.Check{Name: "store", Run: func(context.Context) (string, error) { return "answers", nil }}),
 		Metrics: telemetry.NewMetrics(), Log: slog.New(slog.DiscardHandler), MostAtOnce: 16,
 	}

@@ -49,7 +49,10 @@ type pageView struct {
 	Operations                  []operationView
 	Schemas                     []schemaView
 	Problems                    []problemView
+	Codes                       []codeView
 }
+
+type codeView struct{ Name, Where, Meaning string }
 
 type operationView struct {
 	Method, Path, Summary, Description string
@@ -100,6 +103,9 @@ func (c *Contract) view() pageView {
 	}
 	for _, k := range problemKinds() {
 		v.Problems = append(v.Problems, problemView{Name: k.name, Title: k.title, Meaning: k.meaning, Status: k.status})
+	}
+	for _, c := range stableCodes() {
+		v.Codes = append(v.Codes, codeView{Name: c.name, Where: string(c.where), Meaning: c.meaning})
 	}
 	return v
 }
@@ -169,6 +175,10 @@ func viewField(name string, ref *openapi3.SchemaRef, required bool) fieldView {
 		return f
 	}
 	s := ref.Value
+	if len(s.OneOf) > 0 { // a document, or null
+		f.Ref, f.Type = refName(s.OneOf[0].Ref), "null or"
+		return f
+	}
 	if s.Type != nil {
 		f.Type = strings.Join(s.Type.Slice(), " or ")
 	}

@@ -5,6 +5,7 @@ import (
 	"errors"
 	"fmt"
 	"net/http"
+	"strings"
 
 	"github.com/labstack/echo/v4"
 
@@ -31,6 +32,7 @@ var (
 	tooLarge    = problemKind{"too-large", "The body is too large", http.StatusRequestEntityTooLarge, "The detail names the limit."}
 	mediaType   = problemKind{"unsupported-media-type", "The body is of the wrong type", http.StatusUnsupportedMediaType, "Send JSON, as application/json."}
 	invalid     = problemKind{"invalid-request", "The request does not hold together", http.StatusUnprocessableEntity, "The errors name each field at fault and what would be right."}
+	notReloaded = problemKind{"rasters-not-reloaded", "The rasters could not be loaded anew; those in use stay", http.StatusUnprocessableEntity, "The catalogue or a folder cannot be used as it stands; the detail says what is wrong. Answers go on with the rasters in use."}
 	internal    = problemKind{"internal", "Something failed here", http.StatusInternalServerError, "The fault is the server's; its log has the request's id."}
 	unreadable  = problemKind{"raster-unreadable", "A raster could not be read", http.StatusServiceUnavailable, "The detail names it. Nothing was judged, since a part of the terrain is missing."}
 	unavailable = problemKind{"storage-unavailable", "The answer could not be stored", http.StatusServiceUnavailable, "The data directory is full, read-only or locked; try again when that has changed."}
@@ -40,7 +42,7 @@ var (
 
 // problemKinds lists them for the page of the contract.
 func problemKinds() []problemKind {
-	return []problemKind{malformed, badRequest, notFound, notAllowed, conflict, tooLarge, mediaType, invalid, internal, unreadable, unavailable, overloaded, tooSlow}
+	return []problemKind{malformed, badRequest, notFound, notAllowed, conflict, tooLarge, mediaType, invalid, notReloaded, internal, unreadable, unavailable, overloaded, tooSlow}
 }
 
 // ProblemError is a problem document as an error.
@@ -106,9 +108,19 @@ func routerProblem(err *echo.HTTPError) *ProblemError {
 	case http.StatusUnsupportedMediaType:
 		return mediaType.problem("Send the request as application/json.")
 	case http.StatusBadRequest:
-		return badRequest.problem("%v", err.Message)
+		return badRequest.problem("%s", parameterFault(fmt.Sprint(err.Message)))
 	}
 	return internal.problem("The fault is the server's; its log has this request's id.")
+}
+
+// parameterFault puts the generated server's word about a parameter in ours.
+func parameterFault(message string) string {
+	after, about := strings.CutPrefix(message, "Invalid format for parameter ")
+	name, _, named := strings.Cut(after, ":")
+	if !about || !named {
+		return message
+	}
+	return fmt.Sprintf("The parameter %s is missing, or does not read as what /docs says it is.", name)
 }
 
 func fieldErrors(fields []assess.FieldError) []FieldError {

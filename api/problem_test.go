@@ -60,6 +60,9 @@ func TestBadRequests(t *testing.T) {
 		{"too far", strings.Replace(goodLink, `"lon":-20.4`, `"lon":-10.4`, 1), 422, "/b", "paths up to 300 km"},
 		{"no place and no profile", `{"a":{"antenna_height_m":1},"b":{"antenna_height_m":1},"frequency_ghz":1}`, 422, "/a/lon", "is missing"},
 		{"profile that goes back", link(`"frequency_ghz":1,"profile":[{"distance_m":0,"ground_m":1},{"distance_m":5,"ground_m":1},{"distance_m":4,"ground_m":1}]`), 422, "/profile/2/distance_m", "more than the point before"},
+		{"trees that shoot up", link(`"frequency_ghz":1,"cover_growth_m_per_year":6`), 422, "/cover_growth_m_per_year", "is 6; it must be 0 to 5"},
+		{"growth for ever", link(`"frequency_ghz":1,"cover_growth_years":51`), 422, "/cover_growth_years", "is 51; it must be 0 to 50"},
+		{"a guess for a profile", link(`"frequency_ghz":1,"profile_error_m":101`), 422, "/profile_error_m", "is 101; it must be 0 to 100"},
 		{"control characters", strings.Replace(goodLink, "North", `No\u0007rth`, 1), 422, "/a/name", "control characters"},
 	}
 	for _, c := range cases {
@@ -131,7 +134,7 @@ func TestFailuresInside(t *testing.T) {
 			d.Assessor = assess.NewService(hills{err: &assess.UnreadableError{Raster: "N01E001.hgt", Err: errors.New("cut short")}})
 		}, 503, "raster-unreadable", "N01E001.hgt"},
 		{"storage", func(d *Dependencies) { d.Keeper = &memory{err: fmt.Errorf("%w: disk full", store.ErrUnavailable)} }, 503, "storage-unavailable", "disk full"},
-		{"anything else", func(d *Dependencies) { d.Assessor = failing{errSecret} }, 500, "internal", "log"},
+		{"anything else", func(d *Dependencies) { d.Assessor = failing{err: errSecret} }, 500, "internal", "log"},
 		{"a panic", func(d *Dependencies) { d.Assessor = panicking{} }, 500, "internal", "log"},
 	}
 	for _, c := range cases {

@@ -24,24 +24,50 @@ func ListOf(rasters []assess.Raster) RasterList {
 	return out
 }
 
+// rasterOf is one raster as the contract says it. Outlines of buildings have no
+// pixels, and so none of the fields about them.
 func rasterOf(r assess.Raster) Raster {
 	if r.Problem != "" {
-		return Raster{Name: r.Name, Problem: &r.Problem}
+		return Raster{Name: r.Name, Problem: &r.Problem, Source: &r.Source}
 	}
-	kind, width, height := RasterKind(r.Kind), int32(r.Width), int32(r.Height)
-	modified := r.Modified.UTC()
+	kind, modified, priority := RasterKind(r.Kind), r.Modified.UTC(), int32(r.Priority)
 	out := Raster{
-		Name: r.Name, Usable: true, Kind: &kind, Version: &r.Version, Modified: &modified,
-		ExtentDeg: &[]float64{round(r.Bound.Min[0], 7), round(r.Bound.Min[1], 7), round(r.Bound.Max[0], 7), round(r.Bound.Max[1], 7)},
-		PixelM:    figure(r.PixelM, 3), Width: &width, Height: &height, Crs: &r.CRS,
-		Format: &r.Format, DataType: &r.DataType, PixelIsPoint: &r.PixelIsPoint,
+		Name: r.Name, Usable: true, Source: &r.Source, Kind: &kind, Version: &r.Version, Modified: &modified,
+		ExtentDeg: &[]float64{
+			round(r.Bound.Min[0], degreeDecimals), round(r.Bound.Min[1], degreeDecimals),
+			round(r.Bound.Max[0], degreeDecimals), round(r.Bound.Max[1], degreeDecimals),
+		},
+		Priority: &priority, VerticalDatum: unlessZero(r.VerticalDatum),
+		VerticalErrorM: figure(r.ErrorM, 3), CorrelationLengthM: figure(r.CorrelationM, 3), ErrorAssumed: &r.ErrorAssumed,
+		Attribution: &r.Attribution, Licence: &r.Licence,
+		Width: unlessZero(int32(r.Width)), Height: unlessZero(int32(r.Height)),
+		Crs: unlessZero(r.CRS), Epsg: unlessZero(int32(r.EPSG)), Format: unlessZero(r.Format), DataType: unlessZero(r.DataType),
 	}
-	if r.EPSG != 0 {
-		code := int32(r.EPSG)
-		out.Epsg = &code
+	if r.Width > 0 {
+		out.PixelM, out.PixelIsPoint = figure(r.PixelM, 3), &r.PixelIsPoint
 	}
 	if r.HasNoData {
 		out.Nodata = figure(r.NoData, 6)
 	}
 	return out
 }
+
+// ReloadRasters loads the rasters anew.
+func (h *handlers) ReloadRasters(ctx context.Context, _ ReloadRastersRequestObject) (ReloadRastersResponseObject, error) {
+	changes, err := h.Elevation.Reload(ctx)
+	switch {
+	case err != nil && ctx.Err() != nil:
+		return nil, ctx.Err()
+	case err != nil:
+		return nil, notReloaded.problem("%v", err)
+	}
+	out := RasterChanges{
+		Added: names(changes.Added), Removed: names(changes.Removed), Changed: names(changes.Changed),
+		Usable: int32(h.Elevation.Usable()),
+	}
+	h.Log.Info("rasters loaded anew", "added", len(out.Added), "removed", len(out.Removed), "changed", len(out.Changed), "usable", out.Usable)
+	return ReloadRasters200JSONResponse(out), nil
+}
+
+// names is a list that reads [] rather than null where it is empty.
+func names(list []string) []string { return append([]string{}, list...) }

@@ -127,6 +127,51 @@ func (e ClimateRainEdition) Valid() bool {
 	}
 }
 
+// Defines values for CoverageAreaType.
+const (
+	MultiPolygon CoverageAreaType = "MultiPolygon"
+)
+
+// Valid indicates whether the value is a known member of the CoverageAreaType enum.
+func (e CoverageAreaType) Valid() bool {
+	switch e {
+	case MultiPolygon:
+		return true
+	default:
+		return false
+	}
+}
+
+// Defines values for CoverageCollectionType.
+const (
+	FeatureCollection CoverageCollectionType = "FeatureCollection"
+)
+
+// Valid indicates whether the value is a known member of the CoverageCollectionType enum.
+func (e CoverageCollectionType) Valid() bool {
+	switch e {
+	case FeatureCollection:
+		return true
+	default:
+		return false
+	}
+}
+
+// Defines values for CoverageFeatureType.
+const (
+	Feature CoverageFeatureType = "Feature"
+)
+
+// Valid indicates whether the value is a known member of the CoverageFeatureType enum.
+func (e CoverageFeatureType) Valid() bool {
+	switch e {
+	case Feature:
+		return true
+	default:
+		return false
+	}
+}
+
 // Defines values for CriteriaSet.
 const (
 	F160          CriteriaSet = "f1_60"
@@ -312,15 +357,21 @@ func (e RadioEntryOrigin) Valid() bool {
 
 // Defines values for RasterKind.
 const (
-	RasterKindGround   RasterKind = "ground"
-	RasterKindProfile  RasterKind = "profile"
-	RasterKindSurface  RasterKind = "surface"
-	RasterKindUnstated RasterKind = "unstated"
+	RasterKindBuildings RasterKind = "buildings"
+	RasterKindCanopy    RasterKind = "canopy"
+	RasterKindGround    RasterKind = "ground"
+	RasterKindProfile   RasterKind = "profile"
+	RasterKindSurface   RasterKind = "surface"
+	RasterKindUnstated  RasterKind = "unstated"
 )
 
 // Valid indicates whether the value is a known member of the RasterKind enum.
 func (e RasterKind) Valid() bool {
 	switch e {
+	case RasterKindBuildings:
+		return true
+	case RasterKindCanopy:
+		return true
 	case RasterKindGround:
 		return true
 	case RasterKindProfile:
@@ -445,16 +496,20 @@ type AntennaList struct {
 	Antennas []AntennaEntry `json:"antennas"`
 }
 
-// Assessment One link judged. It never changes.
+// Assessment One link judged. It never changes: one that an earlier version of the program made stays as it was given, without the
+// fields that have come since.
 type Assessment struct {
 	// Id The assessment's id: a hash of the question, the rasters' versions and the engine's version.
 	Id string `json:"id"`
 
-	// Verdict Without a radio: `clear`: every criterion is met. `marginal`: a criterion is missed, but the line between the
-	// antennas is open at every k judged. `obstructed`: the line itself is cut at a k judged. With a radio: `clear`:
-	// every criterion is met and the radio meets its target. `marginal`: one of the two holds. `obstructed`: neither.
-	// `unknown`: missing data keeps it from being judged.
+	// Verdict Without a radio: `clear`: every criterion is met, with a confidence of 0.90 or more. `marginal`: every criterion is
+	// met with less confidence, or one is missed but the line between the antennas is open at every k judged.
+	// `obstructed`: the line itself is cut at a k judged. With a radio: `clear`: the path is clear and the radio meets its
+	// target. `marginal`: one of the two holds. `obstructed`: neither. `unknown`: missing data keeps it from being judged.
 	Verdict Verdict `json:"verdict"`
+
+	// Confidence Probability, 0 to 1, that every criterion is met, given the vertical errors of the heights; rounded down. Null where it is not known, as over voids.
+	Confidence *float64 `json:"confidence"`
 
 	// Reasons Why the verdict is what it is.
 	Reasons []Note `json:"reasons"`
@@ -477,6 +532,9 @@ type Assessment struct {
 	// Raise The least extra antenna height that meets every criterion. Null where none up to the cap does, or where missing data keeps it from being known.
 	Raise Raise `json:"raise"`
 
+	// ExtraHeightFor90M The least extra antenna height with which the confidence is 0.90. 0 where it is already, null where none up to `cap_m` of the raise does or where it is not known.
+	ExtraHeightFor90M ExtraHeight `json:"extra_height_for_90_m"`
+
 	// Diffraction The diffraction loss of the path.
 	Diffraction Diffraction `json:"diffraction"`
 
@@ -485,6 +543,12 @@ type Assessment struct {
 
 	// Radio Whether the link carries traffic, with what margin, aimed where.
 	Radio *RadioReport `json:"radio,omitempty"`
+
+	// Stale True where the rasters under the path have changed since, so that the answer might be another now. Left out where they have not, or where that cannot be told.
+	Stale *bool `json:"stale,omitempty"`
+
+	// StaleBecause What has changed; there where `stale` is.
+	StaleBecause *[]string `json:"stale_because,omitempty"`
 
 	// Samples The arrays behind the answer, one entry a sample from A to B. Null is a place without a height.
 	Samples *Samples `json:"samples,omitempty"`
@@ -500,6 +564,12 @@ type AssessmentRequest struct {
 
 	// B One end of the link.
 	B EndRequest `json:"b"`
+
+	// CoverGrowthMPerYear How fast the trees on the path grow, metres a year. It counts for `cover_growth_years`.
+	CoverGrowthMPerYear *float64 `json:"cover_growth_m_per_year,omitempty"`
+
+	// CoverGrowthYears How long they grow, from the age of the data to the end of the link's life, years.
+	CoverGrowthYears *float64 `json:"cover_growth_years,omitempty"`
 
 	// CoverHeightM Height of trees and buildings to count on the terrain between the ends, metres. Not added where a surface raster holds them already.
 	CoverHeightM *float64 `json:"cover_height_m,omitempty"`
@@ -521,13 +591,18 @@ type AssessmentRequest struct {
 	// Profile The caller's own heights, from A at 0 to B, in place of rasters. The ends may then have no place.
 	Profile *[]ProfilePoint `json:"profile,omitempty"`
 
+	// ProfileErrorM Vertical error of the caller's own heights, metres, 1 sigma. Left out, they count as exact.
+	ProfileErrorM *float64 `json:"profile_error_m,omitempty"`
+
 	// Radio What stands at both ends, and what the link must carry.
 	Radio *RadioRequest `json:"radio,omitempty"`
 
 	// Rasters Names of the rasters to use; all that are loaded, if left out.
 	Rasters *[]string `json:"rasters,omitempty"`
 
-	// SpacingM Step between samples, metres. Left out, it is a quarter of the finest pixel on the path, or up to a whole one on long paths. At most 20,000 samples are taken.
+	// SpacingM Step between samples, metres; at most 20,000 samples are taken. Left out, the path is judged exactly: there is a
+	// sample wherever it crosses a line between pixel centres, and the least clearance on the bilinear surface itself
+	// is found, so that nothing hides between samples.
 	SpacingM *float64 `json:"spacing_m,omitempty"`
 }
 
@@ -605,6 +680,18 @@ type BudgetLine struct {
 
 // BudgetLineUnit Its unit.
 type BudgetLineUnit string
+
+// Change One figure that differs between two assessments.
+type Change struct {
+	// Pointer Where it stands in an assessment, as a JSON pointer (RFC 6901). `/terrain/rasters` stands for the whole list, said as names and versions.
+	Pointer string `json:"pointer"`
+
+	// Before What it was; null also where it was not there.
+	Before *any `json:"before"`
+
+	// After What it is.
+	After *any `json:"after"`
+}
 
 // Choice The least antennas and power that do, and what a narrower beam would spare. Both ends aimed at each other.
 type Choice struct {
@@ -702,6 +789,67 @@ type Climate struct {
 // ClimateRainEdition Edition of P.530 for rain.
 type ClimateRainEdition int32
 
+// CoverageArea A GeoJSON geometry, in WGS 84.
+type CoverageArea struct {
+	// Type As RFC 7946 has it.
+	Type CoverageAreaType `json:"type"`
+
+	// Coordinates Polygons, each an outer ring, counter-clockwise, and its holes; a ring is a list of positions, longitude and latitude in degrees. None crosses the antimeridian.
+	Coordinates [][][][]float64 `json:"coordinates"`
+}
+
+// CoverageAreaType As RFC 7946 has it.
+type CoverageAreaType string
+
+// CoverageCollection Where there is elevation data: a GeoJSON feature collection (RFC 7946).
+type CoverageCollection struct {
+	// Type As RFC 7946 has it.
+	Type CoverageCollectionType `json:"type"`
+
+	// Features One a source.
+	Features []CoverageFeature `json:"features"`
+}
+
+// CoverageCollectionType As RFC 7946 has it.
+type CoverageCollectionType string
+
+// CoverageFeature The part of the earth that one source has rasters for.
+type CoverageFeature struct {
+	// Type As RFC 7946 has it.
+	Type CoverageFeatureType `json:"type"`
+
+	// Geometry A GeoJSON geometry, in WGS 84.
+	Geometry CoverageArea `json:"geometry"`
+
+	// Properties What the source is.
+	Properties CoverageProperties `json:"properties"`
+}
+
+// CoverageFeatureType As RFC 7946 has it.
+type CoverageFeatureType string
+
+// CoverageProperties What the source is.
+type CoverageProperties struct {
+	// Source The catalogue's entry; empty for plain folders.
+	Source string `json:"source"`
+
+	// Kind `ground` is bare earth, `surface` includes roofs and trees. `canopy` and `buildings` are heights above ground, of
+	// trees and of buildings. `unstated` is not known, `profile` is heights that the caller brought.
+	Kind RasterKind `json:"kind"`
+
+	// Rasters How many rasters it has; 0 where they are fetched on demand.
+	Rasters int32 `json:"rasters"`
+
+	// OnDemand Its rasters are looked for when they are asked for, so that the area is where they may lie.
+	OnDemand bool `json:"on_demand"`
+
+	// Attribution Whom the data's owner asks to credit; empty where none is stated.
+	Attribution string `json:"attribution"`
+
+	// Licence On what terms the data may be used; empty where none is stated.
+	Licence string `json:"licence"`
+}
+
 // CriteriaSet A set of clearance criteria. `p530_temperate` and `p530_tropical` are ITU-R P.530-19 section 2.2: the whole first
 // Fresnel zone at k 4/3, and at the k-factor exceeded 99.9 % of the worst month a part of it by climate and kind of
 // obstruction. `f1_60` is 0.6 of it at k 4/3 (common practice, no source).
@@ -751,6 +899,9 @@ type End struct {
 
 	// AntennaAmslM Height of the antenna's centre, metres above mean sea level.
 	AntennaAmslM *float64 `json:"antenna_amsl_m"`
+
+	// OwnBuildingM How far from the end what the antenna stands on reaches along the path, metres. It is not judged. 0 where there is none.
+	OwnBuildingM float64 `json:"own_building_m"`
 }
 
 // EndAim Where one antenna points, what it covers, and what an error costs. Degrees.
@@ -848,7 +999,8 @@ type EndRequest struct {
 	// AntennaHeightM Height of the antenna's centre above what `height_above` says, metres.
 	AntennaHeightM float64 `json:"antenna_height_m"`
 
-	// HeightAbove What the antenna height is measured from. `roof` is the top of the surface at that point.
+	// HeightAbove What the antenna height is measured from. `roof` is the top of what stands at that point: of the surface, or of the
+	// canopy or buildings known there.
 	HeightAbove *HeightAbove `json:"height_above,omitempty"`
 
 	// Lat Latitude, WGS 84 degrees, north positive.
@@ -892,6 +1044,18 @@ type ExposureReport struct {
 
 	// B Informative, no statement about safety or law.
 	B Exposure `json:"b"`
+}
+
+// ExtraHeight The least extra antenna height with which the confidence is 0.90. 0 where it is already, null where none up to `cap_m` of the raise does or where it is not known.
+type ExtraHeight struct {
+	// AM At A alone, metres.
+	AM *float64 `json:"a_m"`
+
+	// BM At B alone, metres.
+	BM *float64 `json:"b_m"`
+
+	// BothM The same at both ends, metres.
+	BothM *float64 `json:"both_m"`
 }
 
 // FieldError One field at fault.
@@ -946,7 +1110,8 @@ type HeardEnd struct {
 	LevelDbm *float64 `json:"level_dbm"`
 }
 
-// HeightAbove What the antenna height is measured from. `roof` is the top of the surface at that point.
+// HeightAbove What the antenna height is measured from. `roof` is the top of what stands at that point: of the surface, or of the
+// canopy or buildings known there.
 type HeightAbove string
 
 // Links Where to read more.
@@ -1062,7 +1227,7 @@ type NeighbourRequest struct {
 
 // Note Something said, a code for programs and a sentence for people.
 type Note struct {
-	// Code Stable, for programs.
+	// Code Stable, for programs; /docs lists them all.
 	Code string `json:"code"`
 
 	// Detail A sentence, for people; its wording may change.
@@ -1390,7 +1555,7 @@ type Raise struct {
 	CapM float64 `json:"cap_m"`
 }
 
-// Raster One raster found.
+// Raster One raster found. An unusable one has a problem and little else; buildings by outline have no pixels.
 type Raster struct {
 	// Name The file's path below its folder.
 	Name string `json:"name"`
@@ -1401,7 +1566,11 @@ type Raster struct {
 	// Problem Why it is not usable.
 	Problem *string `json:"problem,omitempty"`
 
-	// Kind `ground` is bare earth, `surface` includes roofs and trees, `unstated` is not known, `profile` is heights that the caller brought.
+	// Source The catalogue's entry that it belongs to; empty where it was found in a plain folder.
+	Source *string `json:"source,omitempty"`
+
+	// Kind `ground` is bare earth, `surface` includes roofs and trees. `canopy` and `buildings` are heights above ground, of
+	// trees and of buildings. `unstated` is not known, `profile` is heights that the caller brought.
 	Kind *RasterKind `json:"kind,omitempty"`
 
 	// Version Changes whenever the content does.
@@ -1412,6 +1581,27 @@ type Raster struct {
 
 	// ExtentDeg West, south, east, north: the outer pixel edges, WGS 84 degrees.
 	ExtentDeg *[]float64 `json:"extent_deg,omitempty"`
+
+	// Priority Rasters of a higher one are asked first.
+	Priority *int32 `json:"priority,omitempty"`
+
+	// VerticalDatum What its heights count from; left out where that is not stated, and for heights above ground.
+	VerticalDatum *string `json:"vertical_datum,omitempty"`
+
+	// VerticalErrorM Its vertical error, metres, 1 sigma.
+	VerticalErrorM *float64 `json:"vertical_error_m,omitempty"`
+
+	// CorrelationLengthM How far its errors reach: two places d metres apart share exp(-d / this) of the error.
+	CorrelationLengthM *float64 `json:"correlation_length_m,omitempty"`
+
+	// ErrorAssumed Nobody stated the error and its reach; they are assumed.
+	ErrorAssumed *bool `json:"error_assumed,omitempty"`
+
+	// Attribution Whom the data's owner asks to credit; empty where none is stated.
+	Attribution *string `json:"attribution,omitempty"`
+
+	// Licence On what terms the data may be used; empty where none is stated.
+	Licence *string `json:"licence,omitempty"`
 
 	// PixelM The finer side of a pixel at the middle of the raster, metres.
 	PixelM *float64 `json:"pixel_m,omitempty"`
@@ -1441,12 +1631,75 @@ type Raster struct {
 	PixelIsPoint *bool `json:"pixel_is_point,omitempty"`
 }
 
-// RasterKind `ground` is bare earth, `surface` includes roofs and trees, `unstated` is not known, `profile` is heights that the caller brought.
+// RasterChanges What loading the rasters anew found: names of rasters and sources.
+type RasterChanges struct {
+	// Added Those that came.
+	Added []string `json:"added"`
+
+	// Removed Those that went.
+	Removed []string `json:"removed"`
+
+	// Changed Those whose content has changed, or what is said of them.
+	Changed []string `json:"changed"`
+
+	// Usable How many rasters answers may rest on now.
+	Usable int32 `json:"usable"`
+}
+
+// RasterHeight What one raster says of a place.
+type RasterHeight struct {
+	// Name The raster's name.
+	Name string `json:"name"`
+
+	// Version Changes whenever the content does.
+	Version string `json:"version"`
+
+	// Kind `ground` is bare earth, `surface` includes roofs and trees. `canopy` and `buildings` are heights above ground, of
+	// trees and of buildings. `unstated` is not known, `profile` is heights that the caller brought.
+	Kind RasterKind `json:"kind"`
+
+	// HeightM Its height there, metres above its own `vertical_datum`, or above the ground for canopy and buildings; null is a void.
+	HeightM *float64 `json:"height_m"`
+
+	// VerticalDatum What its heights count from; null where that is not stated, and for heights above ground.
+	VerticalDatum *string `json:"vertical_datum"`
+
+	// Attribution Whom the data's owner asks to credit; empty where none is stated.
+	Attribution string `json:"attribution"`
+
+	// Licence On what terms the data may be used; empty where none is stated.
+	Licence string `json:"licence"`
+}
+
+// RasterKind `ground` is bare earth, `surface` includes roofs and trees. `canopy` and `buildings` are heights above ground, of
+// trees and of buildings. `unstated` is not known, `profile` is heights that the caller brought.
 type RasterKind string
 
 // RasterList The rasters found.
 type RasterList struct {
 	Rasters []Raster `json:"rasters"`
+}
+
+// RasterVersion A raster as it is now.
+type RasterVersion struct {
+	// Name The raster's name.
+	Name string `json:"name"`
+
+	// Version Changes whenever the content does.
+	Version string `json:"version"`
+}
+
+// Reassessment A link judged anew, and what differs.
+type Reassessment struct {
+	// Before The id of the assessment whose question was asked again.
+	Before string `json:"before"`
+
+	// Assessment One link judged. It never changes: one that an earlier version of the program made stays as it was given, without the
+	// fields that have come since.
+	Assessment Assessment `json:"assessment"`
+
+	// Changes What differs in the verdict and in the figures that lead to it; empty where nothing does.
+	Changes []Change `json:"changes"`
 }
 
 // Samples The arrays behind the answer, one entry a sample from A to B. Null is a place without a height.
@@ -1489,6 +1742,36 @@ type SparedReport struct {
 
 	// B What it spares at one end, dB.
 	B Spared `json:"b"`
+}
+
+// Spot What is known of the height of one place.
+type Spot struct {
+	// Lon As asked.
+	Lon float64 `json:"lon"`
+
+	// Lat As asked.
+	Lat float64 `json:"lat"`
+
+	// GroundM Terrain height that a path takes there, metres above `vertical_datum`; null where none is known.
+	GroundM *float64 `json:"ground_m"`
+
+	// CoverM Trees and buildings that a path counts there, metres above `ground_m`; null where no raster speaks of them.
+	CoverM *float64 `json:"cover_m"`
+
+	// VerticalDatum What `ground_m` counts from; null where that is not known.
+	VerticalDatum *string `json:"vertical_datum"`
+
+	// Ground The raster of `ground_m`; null where there is none.
+	Ground *RasterVersion `json:"ground"`
+
+	// Cover The raster of `cover_m`; null where there is none.
+	Cover *RasterVersion `json:"cover"`
+
+	// Heights What each raster says by itself. Those that are asked first stand first.
+	Heights []RasterHeight `json:"heights"`
+
+	// Unreachable Rasters that lie there and did not answer.
+	Unreachable []UnreachableSource `json:"unreachable"`
 }
 
 // Target What must be met in both directions.
@@ -1544,14 +1827,23 @@ type Terrain struct {
 	// Rasters What the heights came from.
 	Rasters []TerrainSource `json:"rasters"`
 
+	// VerticalDatum What the heights of this answer count from; null where it is not known.
+	VerticalDatum *string `json:"vertical_datum"`
+
 	// SpacingM Step between samples, or the widest one, metres.
 	SpacingM float64 `json:"spacing_m"`
 
 	// Samples Number of samples.
 	Samples int32 `json:"samples"`
 
-	// VoidShare Share of the samples without a height, 0 to 1.
+	// VoidShare Share of the path without a height, 0 to 1.
 	VoidShare float64 `json:"void_share"`
+
+	// Voids The stretches without a height, from A to B.
+	Voids []Void `json:"voids"`
+
+	// Unreachable Rasters that lie under the path and did not answer. What they would have given is void.
+	Unreachable []UnreachableSource `json:"unreachable"`
 }
 
 // TerrainSource One raster that gave heights.
@@ -1562,21 +1854,61 @@ type TerrainSource struct {
 	// Version Changes whenever the content does.
 	Version string `json:"version"`
 
-	// Kind `ground` is bare earth, `surface` includes roofs and trees, `unstated` is not known, `profile` is heights that the caller brought.
+	// Kind `ground` is bare earth, `surface` includes roofs and trees. `canopy` and `buildings` are heights above ground, of
+	// trees and of buildings. `unstated` is not known, `profile` is heights that the caller brought.
 	Kind RasterKind `json:"kind"`
 
-	// Share Share of the samples that rest on it, 0 to 1.
+	// Share Share of the samples that rest on it, for the ground or for the cover, 0 to 1.
 	Share float64 `json:"share"`
+
+	// VerticalDatum What its own heights count from; null where that is not stated, and for heights above ground.
+	VerticalDatum *string `json:"vertical_datum"`
+
+	// VerticalErrorM Its vertical error, metres, 1 sigma.
+	VerticalErrorM float64 `json:"vertical_error_m"`
+
+	// CorrelationLengthM How far its errors reach: two places d metres apart share exp(-d / this) of the error.
+	CorrelationLengthM float64 `json:"correlation_length_m"`
+
+	// ErrorAssumed Nobody stated the error and its reach; they are assumed.
+	ErrorAssumed bool `json:"error_assumed"`
+
+	// Attribution Whom the data's owner asks to credit; empty where none is stated.
+	Attribution string `json:"attribution"`
+
+	// Licence On what terms the data may be used; empty where none is stated.
+	Licence string `json:"licence"`
 }
 
 // Text A line of text.
 type Text = string
 
-// Verdict Without a radio: `clear`: every criterion is met. `marginal`: a criterion is missed, but the line between the
-// antennas is open at every k judged. `obstructed`: the line itself is cut at a k judged. With a radio: `clear`:
-// every criterion is met and the radio meets its target. `marginal`: one of the two holds. `obstructed`: neither.
-// `unknown`: missing data keeps it from being judged.
+// UnreachableSource A raster that did not answer.
+type UnreachableSource struct {
+	// Name The raster's name, or its source's.
+	Name string `json:"name"`
+
+	// Reason Why not.
+	Reason string `json:"reason"`
+}
+
+// Verdict Without a radio: `clear`: every criterion is met, with a confidence of 0.90 or more. `marginal`: every criterion is
+// met with less confidence, or one is missed but the line between the antennas is open at every k judged.
+// `obstructed`: the line itself is cut at a k judged. With a radio: `clear`: the path is clear and the radio meets its
+// target. `marginal`: one of the two holds. `obstructed`: neither. `unknown`: missing data keeps it from being judged.
 type Verdict string
+
+// Void A stretch of the path without a height.
+type Void struct {
+	// FromM Its first sample without a height, metres from A.
+	FromM float64 `json:"from_m"`
+
+	// ToM Its last, metres from A.
+	ToM float64 `json:"to_m"`
+
+	// LengthM From the one to the other, metres; 0 where it is one sample.
+	LengthM float64 `json:"length_m"`
+}
 
 // AssessmentId defines model for AssessmentId.
 type AssessmentId = string
@@ -1601,6 +1933,21 @@ type GetAssessmentParamsInclude string
 
 // GetAssessmentSVGParams defines parameters for GetAssessmentSVG.
 type GetAssessmentSVGParams struct {
+	// IfNoneMatch The ETag that the caller has; the answer is 304 if it still holds.
+	IfNoneMatch *IfNoneMatch `json:"If-None-Match,omitempty"`
+}
+
+// GetElevationParams defines parameters for GetElevation.
+type GetElevationParams struct {
+	// Lon Longitude, WGS 84 degrees, east positive.
+	Lon float64 `form:"lon" json:"lon"`
+
+	// Lat Latitude, WGS 84 degrees, north positive.
+	Lat float64 `form:"lat" json:"lat"`
+}
+
+// GetRasterCoverageParams defines parameters for GetRasterCoverage.
+type GetRasterCoverageParams struct {
 	// IfNoneMatch The ETag that the caller has; the answer is 304 if it still holds.
 	IfNoneMatch *IfNoneMatch `json:"If-None-Match,omitempty"`
 }
@@ -1643,6 +1990,12 @@ type ServerInterface interface {
 	// GetAssessmentSVG The profile drawing
 	// (GET /v1/assessments/{id}/profile.svg)
 	GetAssessmentSVG(ctx echo.Context, id AssessmentId, params GetAssessmentSVGParams) error
+	// Reassess Judge a link anew
+	// (POST /v1/assessments/{id}/reassess)
+	Reassess(ctx echo.Context, id AssessmentId) error
+	// GetElevation How high a place lies
+	// (GET /v1/elevation)
+	GetElevation(ctx echo.Context, params GetElevationParams) error
 	// ListRadios The register of radios
 	// (GET /v1/radios)
 	ListRadios(ctx echo.Context) error
@@ -1658,6 +2011,12 @@ type ServerInterface interface {
 	// ListRasters What elevation data is loaded
 	// (GET /v1/rasters)
 	ListRasters(ctx echo.Context) error
+	// GetRasterCoverage Where there is elevation data
+	// (GET /v1/rasters/coverage.geojson)
+	GetRasterCoverage(ctx echo.Context, params GetRasterCoverageParams) error
+	// ReloadRasters Load the rasters anew
+	// (POST /v1/rasters/reload)
+	ReloadRasters(ctx echo.Context) error
 }
 
 // ServerInterfaceWrapper converts echo contexts to parameters.
@@ -1820,6 +2179,47 @@ func (w *ServerInterfaceWrapper) GetAssessmentSVG(ctx echo.Context) error {
 	return err
 }
 
+// Reassess converts echo context to params.
+func (w *ServerInterfaceWrapper) Reassess(ctx echo.Context) error {
+	var err error
+	// ------------- Path parameter "id" -------------
+	var id AssessmentId
+
+	err = runtime.BindStyledParameterWithOptions("simple", "id", ctx.Param("id"), &id, runtime.BindStyledParameterOptions{ParamLocation: runtime.ParamLocationPath, Explode: false, Required: true, Type: "string", Format: "", ValueIsUnescaped: ctx.Request().URL.RawPath == ""})
+	if err != nil {
+		return echo.NewHTTPError(http.StatusBadRequest, fmt.Sprintf("Invalid format for parameter id: %s", err))
+	}
+
+	// Invoke the callback with all the unmarshaled arguments
+	err = w.Handler.Reassess(ctx, id)
+	return err
+}
+
+// GetElevation converts echo context to params.
+func (w *ServerInterfaceWrapper) GetElevation(ctx echo.Context) error {
+	var err error
+
+	// Parameter object where we will unmarshal all parameters from the context
+	var params GetElevationParams
+	// ------------- Required query parameter "lon" -------------
+
+	err = runtime.BindQueryParameterWithOptions("form", true, true, "lon", ctx.QueryParams(), &params.Lon, runtime.BindQueryParameterOptions{Type: "number", Format: "double"})
+	if err != nil {
+		return echo.NewHTTPError(http.StatusBadRequest, fmt.Sprintf("Invalid format for parameter lon: %s", err))
+	}
+
+	// ------------- Required query parameter "lat" -------------
+
+	err = runtime.BindQueryParameterWithOptions("form", true, true, "lat", ctx.QueryParams(), &params.Lat, runtime.BindQueryParameterOptions{Type: "number", Format: "double"})
+	if err != nil {
+		return echo.NewHTTPError(http.StatusBadRequest, fmt.Sprintf("Invalid format for parameter lat: %s", err))
+	}
+
+	// Invoke the callback with all the unmarshaled arguments
+	err = w.Handler.GetElevation(ctx, params)
+	return err
+}
+
 // ListRadios converts echo context to params.
 func (w *ServerInterfaceWrapper) ListRadios(ctx echo.Context) error {
 	var err error
@@ -1879,6 +2279,44 @@ func (w *ServerInterfaceWrapper) ListRasters(ctx echo.Context) error {
 	return err
 }
 
+// GetRasterCoverage converts echo context to params.
+func (w *ServerInterfaceWrapper) GetRasterCoverage(ctx echo.Context) error {
+	var err error
+
+	// Parameter object where we will unmarshal all parameters from the context
+	var params GetRasterCoverageParams
+
+	headers := ctx.Request().Header
+	// ------------- Optional header parameter "If-None-Match" -------------
+	if valueList, found := headers[http.CanonicalHeaderKey("If-None-Match")]; found {
+		var IfNoneMatch IfNoneMatch
+		n := len(valueList)
+		if n != 1 {
+			return echo.NewHTTPError(http.StatusBadRequest, fmt.Sprintf("Expected one value for If-None-Match, got %d", n))
+		}
+
+		err = runtime.BindStyledParameterWithOptions("simple", "If-None-Match", valueList[0], &IfNoneMatch, runtime.BindStyledParameterOptions{ParamLocation: runtime.ParamLocationHeader, Explode: false, Required: false, Type: "string", Format: ""})
+		if err != nil {
+			return echo.NewHTTPError(http.StatusBadRequest, fmt.Sprintf("Invalid format for parameter If-None-Match: %s", err))
+		}
+
+		params.IfNoneMatch = &IfNoneMatch
+	}
+
+	// Invoke the callback with all the unmarshaled arguments
+	err = w.Handler.GetRasterCoverage(ctx, params)
+	return err
+}
+
+// ReloadRasters converts echo context to params.
+func (w *ServerInterfaceWrapper) ReloadRasters(ctx echo.Context) error {
+	var err error
+
+	// Invoke the callback with all the unmarshaled arguments
+	err = w.Handler.ReloadRasters(ctx)
+	return err
+}
+
 // This is a simple interface which specifies echo.Route addition functions which
 // are present on both echo.Echo and echo.Group, since we want to allow using
 // either of them for path registration
@@ -1929,7 +2367,11 @@ func RegisterHandlersWithOptions(router EchoRouter, si ServerInterface, options 
 	router.POST(options.BaseURL+"/v1/assessments", wrapper.CreateAssessment, options.OperationMiddlewares["createAssessment"]...)
 	router.GET(options.BaseURL+"/v1/assessments/:id", wrapper.GetAssessment, options.OperationMiddlewares["getAssessment"]...)
 	router.GET(options.BaseURL+"/v1/assessments/:id/profile.svg", wrapper.GetAssessmentSVG, options.OperationMiddlewares["getAssessmentSVG"]...)
+	router.POST(options.BaseURL+"/v1/assessments/:id/reassess", wrapper.Reassess, options.OperationMiddlewares["reassess"]...)
 	router.GET(options.BaseURL+"/v1/rasters", wrapper.ListRasters, options.OperationMiddlewares["listRasters"]...)
+	router.GET(options.BaseURL+"/v1/rasters/coverage.geojson", wrapper.GetRasterCoverage, options.OperationMiddlewares["getRasterCoverage"]...)
+	router.POST(options.BaseURL+"/v1/rasters/reload", wrapper.ReloadRasters, options.OperationMiddlewares["reloadRasters"]...)
+	router.GET(options.BaseURL+"/v1/elevation", wrapper.GetElevation, options.OperationMiddlewares["getElevation"]...)
 	router.GET(options.BaseURL+"/v1/antennas", wrapper.ListAntennas, options.OperationMiddlewares["listAntennas"]...)
 	router.POST(options.BaseURL+"/v1/antennas", wrapper.CreateAntenna, options.OperationMiddlewares["createAntenna"]...)
 	router.DELETE(options.BaseURL+"/v1/antennas/:name", wrapper.DeleteAntenna, options.OperationMiddlewares["deleteAntenna"]...)
@@ -2680,6 +3122,166 @@ func (response GetAssessmentSVG503ApplicationProblemPlusJSONResponse) VisitGetAs
 	return err
 }
 
+type ReassessRequestObject struct {
+	Id AssessmentId `json:"id"`
+}
+
+type ReassessResponseObject interface {
+	VisitReassessResponse(w http.ResponseWriter) error
+}
+
+type Reassess201ResponseHeaders struct {
+	ETag     *string
+	Location *string
+}
+
+type Reassess201JSONResponse struct {
+	Body    Reassessment
+	Headers Reassess201ResponseHeaders
+}
+
+func (response Reassess201JSONResponse) VisitReassessResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response.Body); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/json")
+	if response.Headers.ETag != nil {
+		w.Header().Set("ETag", fmt.Sprint(*response.Headers.ETag))
+	}
+	if response.Headers.Location != nil {
+		w.Header().Set("Location", fmt.Sprint(*response.Headers.Location))
+	}
+	w.WriteHeader(201)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type Reassess404ApplicationProblemPlusJSONResponse struct {
+	ProblemApplicationProblemPlusJSONResponse
+}
+
+func (response Reassess404ApplicationProblemPlusJSONResponse) VisitReassessResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(404)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type Reassess422ApplicationProblemPlusJSONResponse Problem
+
+func (response Reassess422ApplicationProblemPlusJSONResponse) VisitReassessResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(422)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type Reassess500ApplicationProblemPlusJSONResponse Problem
+
+func (response Reassess500ApplicationProblemPlusJSONResponse) VisitReassessResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(500)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type Reassess503ApplicationProblemPlusJSONResponse Problem
+
+func (response Reassess503ApplicationProblemPlusJSONResponse) VisitReassessResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(503)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type GetElevationRequestObject struct {
+	Params GetElevationParams
+}
+
+type GetElevationResponseObject interface {
+	VisitGetElevationResponse(w http.ResponseWriter) error
+}
+
+type GetElevation200JSONResponse Spot
+
+func (response GetElevation200JSONResponse) VisitGetElevationResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/json")
+	w.WriteHeader(200)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type GetElevation400ApplicationProblemPlusJSONResponse struct {
+	ProblemApplicationProblemPlusJSONResponse
+}
+
+func (response GetElevation400ApplicationProblemPlusJSONResponse) VisitGetElevationResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(400)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type GetElevation500ApplicationProblemPlusJSONResponse Problem
+
+func (response GetElevation500ApplicationProblemPlusJSONResponse) VisitGetElevationResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(500)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type GetElevation503ApplicationProblemPlusJSONResponse Problem
+
+func (response GetElevation503ApplicationProblemPlusJSONResponse) VisitGetElevationResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(503)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
 type ListRadiosRequestObject struct {
 }
 
@@ -3054,6 +3656,141 @@ func (response ListRasters503ApplicationProblemPlusJSONResponse) VisitListRaster
 	return err
 }
 
+type GetRasterCoverageRequestObject struct {
+	Params GetRasterCoverageParams
+}
+
+type GetRasterCoverageResponseObject interface {
+	VisitGetRasterCoverageResponse(w http.ResponseWriter) error
+}
+
+type GetRasterCoverage200ResponseHeaders struct {
+	ETag *string
+}
+
+type GetRasterCoverage200ApplicationGeoPlusJSONResponse struct {
+	Body    CoverageCollection
+	Headers GetRasterCoverage200ResponseHeaders
+}
+
+func (response GetRasterCoverage200ApplicationGeoPlusJSONResponse) VisitGetRasterCoverageResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response.Body); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/geo+json")
+	if response.Headers.ETag != nil {
+		w.Header().Set("ETag", fmt.Sprint(*response.Headers.ETag))
+	}
+	w.WriteHeader(200)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type GetRasterCoverage304Response struct {
+}
+
+func (response GetRasterCoverage304Response) VisitGetRasterCoverageResponse(w http.ResponseWriter) error {
+	w.WriteHeader(304)
+	return nil
+}
+
+type GetRasterCoverage500ApplicationProblemPlusJSONResponse struct {
+	ProblemApplicationProblemPlusJSONResponse
+}
+
+func (response GetRasterCoverage500ApplicationProblemPlusJSONResponse) VisitGetRasterCoverageResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(500)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type GetRasterCoverage503ApplicationProblemPlusJSONResponse Problem
+
+func (response GetRasterCoverage503ApplicationProblemPlusJSONResponse) VisitGetRasterCoverageResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(503)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ReloadRastersRequestObject struct {
+}
+
+type ReloadRastersResponseObject interface {
+	VisitReloadRastersResponse(w http.ResponseWriter) error
+}
+
+type ReloadRasters200JSONResponse RasterChanges
+
+func (response ReloadRasters200JSONResponse) VisitReloadRastersResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/json")
+	w.WriteHeader(200)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ReloadRasters422ApplicationProblemPlusJSONResponse struct {
+	ProblemApplicationProblemPlusJSONResponse
+}
+
+func (response ReloadRasters422ApplicationProblemPlusJSONResponse) VisitReloadRastersResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(422)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ReloadRasters500ApplicationProblemPlusJSONResponse Problem
+
+func (response ReloadRasters500ApplicationProblemPlusJSONResponse) VisitReloadRastersResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(500)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ReloadRasters503ApplicationProblemPlusJSONResponse Problem
+
+func (response ReloadRasters503ApplicationProblemPlusJSONResponse) VisitReloadRastersResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(503)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
 // StrictServerInterface represents all server handlers.
 type StrictServerInterface interface {
 	// GetLive The process runs
@@ -3083,6 +3820,12 @@ type StrictServerInterface interface {
 	// GetAssessmentSVG The profile drawing
 	// (GET /v1/assessments/{id}/profile.svg)
 	GetAssessmentSVG(ctx context.Context, request GetAssessmentSVGRequestObject) (GetAssessmentSVGResponseObject, error)
+	// Reassess Judge a link anew
+	// (POST /v1/assessments/{id}/reassess)
+	Reassess(ctx context.Context, request ReassessRequestObject) (ReassessResponseObject, error)
+	// GetElevation How high a place lies
+	// (GET /v1/elevation)
+	GetElevation(ctx context.Context, request GetElevationRequestObject) (GetElevationResponseObject, error)
 	// ListRadios The register of radios
 	// (GET /v1/radios)
 	ListRadios(ctx context.Context, request ListRadiosRequestObject) (ListRadiosResponseObject, error)
@@ -3098,6 +3841,12 @@ type StrictServerInterface interface {
 	// ListRasters What elevation data is loaded
 	// (GET /v1/rasters)
 	ListRasters(ctx context.Context, request ListRastersRequestObject) (ListRastersResponseObject, error)
+	// GetRasterCoverage Where there is elevation data
+	// (GET /v1/rasters/coverage.geojson)
+	GetRasterCoverage(ctx context.Context, request GetRasterCoverageRequestObject) (GetRasterCoverageResponseObject, error)
+	// ReloadRasters Load the rasters anew
+	// (POST /v1/rasters/reload)
+	ReloadRasters(ctx context.Context, request ReloadRastersRequestObject) (ReloadRastersResponseObject, error)
 }
 
 type StrictHandlerFunc func(ctx echo.Context, request any) (any, error)
@@ -3375,6 +4124,56 @@ func (sh *strictHandler) GetAssessmentSVG(ctx echo.Context, id AssessmentId, par
 	return nil
 }
 
+// Reassess operation middleware
+func (sh *strictHandler) Reassess(ctx echo.Context, id AssessmentId) error {
+	var request ReassessRequestObject
+
+	request.Id = id
+
+	handler := func(ctx echo.Context, request interface{}) (interface{}, error) {
+		return sh.ssi.Reassess(ctx.Request().Context(), request.(ReassessRequestObject))
+	}
+	for _, middleware := range sh.middlewares {
+		handler = middleware(handler, "Reassess")
+	}
+
+	response, err := handler(ctx, request)
+
+	if err != nil {
+		return err
+	} else if validResponse, ok := response.(ReassessResponseObject); ok {
+		return validResponse.VisitReassessResponse(ctx.Response())
+	} else if response != nil {
+		return fmt.Errorf("unexpected response type: %T", response)
+	}
+	return nil
+}
+
+// GetElevation operation middleware
+func (sh *strictHandler) GetElevation(ctx echo.Context, params GetElevationParams) error {
+	var request GetElevationRequestObject
+
+	request.Params = params
+
+	handler := func(ctx echo.Context, request interface{}) (interface{}, error) {
+		return sh.ssi.GetElevation(ctx.Request().Context(), request.(GetElevationRequestObject))
+	}
+	for _, middleware := range sh.middlewares {
+		handler = middleware(handler, "GetElevation")
+	}
+
+	response, err := handler(ctx, request)
+
+	if err != nil {
+		return err
+	} else if validResponse, ok := response.(GetElevationResponseObject); ok {
+		return validResponse.VisitGetElevationResponse(ctx.Response())
+	} else if response != nil {
+		return fmt.Errorf("unexpected response type: %T", response)
+	}
+	return nil
+}
+
 // ListRadios operation middleware
 func (sh *strictHandler) ListRadios(ctx echo.Context) error {
 	var request ListRadiosRequestObject
@@ -3511,6 +4310,54 @@ func (sh *strictHandler) ListRasters(ctx echo.Context) error {
 		return err
 	} else if validResponse, ok := response.(ListRastersResponseObject); ok {
 		return validResponse.VisitListRastersResponse(ctx.Response())
+	} else if response != nil {
+		return fmt.Errorf("unexpected response type: %T", response)
+	}
+	return nil
+}
+
+// GetRasterCoverage operation middleware
+func (sh *strictHandler) GetRasterCoverage(ctx echo.Context, params GetRasterCoverageParams) error {
+	var request GetRasterCoverageRequestObject
+
+	request.Params = params
+
+	handler := func(ctx echo.Context, request interface{}) (interface{}, error) {
+		return sh.ssi.GetRasterCoverage(ctx.Request().Context(), request.(GetRasterCoverageRequestObject))
+	}
+	for _, middleware := range sh.middlewares {
+		handler = middleware(handler, "GetRasterCoverage")
+	}
+
+	response, err := handler(ctx, request)
+
+	if err != nil {
+		return err
+	} else if validResponse, ok := response.(GetRasterCoverageResponseObject); ok {
+		return validResponse.VisitGetRasterCoverageResponse(ctx.Response())
+	} else if response != nil {
+		return fmt.Errorf("unexpected response type: %T", response)
+	}
+	return nil
+}
+
+// ReloadRasters operation middleware
+func (sh *strictHandler) ReloadRasters(ctx echo.Context) error {
+	var request ReloadRastersRequestObject
+
+	handler := func(ctx echo.Context, request interface{}) (interface{}, error) {
+		return sh.ssi.ReloadRasters(ctx.Request().Context(), request.(ReloadRastersRequestObject))
+	}
+	for _, middleware := range sh.middlewares {
+		handler = middleware(handler, "ReloadRasters")
+	}
+
+	response, err := handler(ctx, request)
+
+	if err != nil {
+		return err
+	} else if validResponse, ok := response.(ReloadRastersResponseObject); ok {
+		return validResponse.VisitReloadRastersResponse(ctx.Response())
 	} else if response != nil {
 		return fmt.Errorf("unexpected response type: %T", response)
 	}

@@ -18,6 +18,9 @@ import (
 type Assessor interface {
 	// Assess judges one link. Its errors are those of assess.Service.
 	Assess(ctx context.Context, request assess.Request) (*assess.Assessment, error)
+	// Stale says why an assessment would rest on other data if it were made now;
+	// empty if it would not. The error is what kept that from being told.
+	Stale(ctx context.Context, a *assess.Assessment) ([]string, error)
 }
 
 // Keeper keeps assessments.
@@ -35,17 +38,34 @@ type Lister interface {
 	Rasters(ctx context.Context) ([]assess.Raster, error)
 }
 
+// Elevation knows the terrain itself.
+type Elevation interface {
+	// Heights says how high a place lies: lon from -180 to 180 and lat from -90 to
+	// 90 degrees, WGS 84. Its errors are those of assess.Service where the terrain
+	// cannot be read.
+	Heights(ctx context.Context, lon, lat float64) (assess.Spot, error)
+	// Coverage says what part of the earth each source has rasters for.
+	Coverage(ctx context.Context) ([]assess.Coverage, error)
+	// Reload loads the rasters anew; whoever is under way goes on with those that
+	// he began with. If they cannot be loaded those in use stay, and the error says
+	// so and why, for people and without folders.
+	Reload(ctx context.Context) (assess.RasterChanges, error)
+	// Usable is the number of rasters that answers may rest on.
+	Usable() int
+}
+
 // Dependencies are what the handlers work with. All are needed, and all are
 // safe for concurrent use.
 type Dependencies struct {
-	Assessor Assessor
-	Keeper   Keeper
-	Lister   Lister
-	Antennas Register[assess.Antenna]
-	Radios   Register[assess.Radio]
-	Health   *telemetry.Health
-	Metrics  *telemetry.Metrics
-	Log      *slog.Logger
+	Assessor  Assessor
+	Keeper    Keeper
+	Lister    Lister
+	Elevation Elevation
+	Antennas  Register[assess.Antenna]
+	Radios    Register[assess.Radio]
+	Health    *telemetry.Health
+	Metrics   *telemetry.Metrics
+	Log       *slog.Logger
 	// MostAtOnce bounds the requests under way; more are refused.
 	MostAtOnce int
 }

@@ -143,7 +143,7 @@ func TestPagesNeedNoNetwork(t *testing.T) {
 			t.Errorf("the page holds %q", banned)
 		}
 	}
-	for _, wanted := range []string{"/v1/assessments", "frequency_ghz", "schema-Clearance", "problem-invalid-request", "profile.svg"} {
+	for _, wanted := range []string{"/v1/assessments", "frequency_ghz", "schema-Clearance", "problem-invalid-request", "profile.svg", "code-line_cut"} {
 		if !strings.Contains(page, wanted) {
 			t.Errorf("the page lacks %q", wanted)
 		}
@@ -161,7 +161,7 @@ func TestPagesNeedNoNetwork(t *testing.T) {
 
 func TestOverloadIsRefusedBeforeTheBodyIsRead(t *testing.T) {
 	entered, leave := make(chan struct{}), make(chan struct{})
-	h := service(t, func(d *Dependencies) { d.Assessor = waiting{entered, leave}; d.MostAtOnce = 1 })
+	h := service(t, func(d *Dependencies) { d.Assessor = waiting{entered: entered, leave: leave}; d.MostAtOnce = 1 })
 	done := make(chan *httptest.ResponseRecorder)
 	go func() { done <- ask(h, http.MethodPost, "/v1/assessments", goodLink) }()
 	<-entered
@@ -177,7 +177,10 @@ func TestOverloadIsRefusedBeforeTheBodyIsRead(t *testing.T) {
 }
 
 // waiting holds its request until it is told to leave.
-type waiting struct{ entered, leave chan struct{} }
+type waiting struct {
+	fresh
+	entered, leave chan struct{}
+}
 
 func (w waiting) Assess(context.Context, assess.Request) (*assess.Assessment, error) {
 	w.entered <- struct{}{}

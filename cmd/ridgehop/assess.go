@@ -48,7 +48,7 @@ func (c *assessCommand) Run(ctx context.Context, s streams) error {
 	if err != nil {
 		return err
 	}
-	loaded, err := loadTerrain(ctx, c.terrainFlags, telemetry.NewLogger(s.err, slog.LevelWarn, false))
+	loaded, err := loadTerrain(ctx, c.terrainFlags, "", telemetry.NewLogger(s.err, slog.LevelWarn, false))
 	if err != nil {
 		return err
 	}

@@ -13,8 +13,6 @@ import (
 	"syscall"
 
 	"github.com/alecthomas/kong"
-
-	"ridgehop/internal/config"
 )
 
 func main() {
@@ -33,7 +31,7 @@ type streams struct {
 type commands struct {
 	Serve   serveCommand   `cmd:"" help:"Serve the API, the drawings and the page of the contract over HTTP."`
 	Assess  assessCommand  `cmd:"" help:"Judge the link that a JSON file, or standard input, describes."`
-	Rasters rastersCommand `cmd:"" help:"List the elevation rasters of the folders: usable or not, and why."`
+	Rasters rastersCommand `cmd:"" help:"List and check the elevation rasters."`
 	Pattern patternCommand `cmd:"" help:"Turn an antenna's pattern from CSV into the JSON of a description."`
 	Version versionCommand `cmd:"" help:"Print the version of the program and of what it computes with."`
 }
@@ -90,6 +88,3 @@ func (s streams) report(err error, code int) int {
 	_, _ = fmt.Fprintln(s.err, "ridgehop:", strings.ReplaceAll(err.Error(), "\n", "; "))
 	return code
 }
-
-// terrainFlags are the flags of every command that reads rasters.
-type terrainFlags = config.Terrain

@@ -12,15 +12,22 @@ import (
 	"ridgehop/internal/assess"
 )
 
-// rastersCommand lists what the folders hold.
+// rastersCommand is about the elevation rasters.
 type rastersCommand struct {
+	List  rastersList  `cmd:"" default:"withargs" help:"List the elevation rasters: usable or not, and why."`
+	Check rastersCheck `cmd:"" help:"Check a catalogue, and every raster in a process of its own that a hostile file cannot hurt."`
+	Child rastersChild `cmd:"" hidden:""`
+}
+
+// rastersList lists what the folders and the catalogue hold.
+type rastersList struct {
 	terrainFlags `embed:""`
 	JSON         bool `help:"As JSON, like GET /v1/rasters." name:"json"`
 }
 
 // Run lists the rasters.
-func (c *rastersCommand) Run(ctx context.Context, s streams) error {
-	loaded, err := loadTerrain(ctx, c.terrainFlags, slog.New(slog.DiscardHandler))
+func (c *rastersList) Run(ctx context.Context, s streams) error {
+	loaded, err := loadTerrain(ctx, c.terrainFlags, "", slog.New(slog.DiscardHandler))
 	if err != nil {
 		return err
 	}

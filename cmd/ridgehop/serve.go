@@ -4,8 +4,12 @@ import (
 	"context"
 	"errors"
 	"fmt"
+	"log/slog"
 	"net"
 	"net/http"
+	"os"
+	"os/signal"
+	"syscall"
 	"time"
 
 	"ridgehop/api"
@@ -13,7 +17,6 @@ import (
 	"ridgehop/internal/config"
 	"ridgehop/internal/store"
 	"ridgehop/internal/telemetry"
-	"ridgehop/internal/terrain"
 )
 
 // serveCommand runs the service until it is told to stop.
@@ -34,16 +37,16 @@ const shutdownTime = 10 * time.Second
 // Run serves.
 func (c *serveCommand) Run(ctx context.Context, s streams) error {
 	log := telemetry.NewLogger(s.err, c.LogLevel, c.LogJSON)
-	loaded, err := loadTerrain(ctx, c.terrainFlags, log)
-	if err != nil {
-		return err
-	}
-	defer loaded.Close()
 	kept, err := store.Open(ctx, c.Data)
 	if err != nil {
 		return fmt.Errorf("--data %s: %w", c.Data, err)
 	}
 	defer func() { _ = kept.Close() }()
+	loaded, err := loadTerrain(ctx, c.terrainFlags, c.Data, log)
+	if err != nil {
+		return err
+	}
+	defer loaded.Close()
 	equipment, err := equip(c.Equipment, shelf{kept})
 	if err != nil {
 		return err
@@ -54,7 +57,7 @@ func (c *serveCommand) Run(ctx context.Context, s streams) error {
 	}
 	health := telemetry.NewHealth(storeCheck(kept), terrainCheck(loaded))
 	handler, err := api.NewHandler(contract, api.Dependencies{
-		Assessor: assess.NewService(loaded).WithEquipment(equipment), Keeper: kept, Lister: loaded,
+		Assessor: assess.NewService(loaded).WithEquipment(equipment), Keeper: kept, Lister: loaded, Elevation: loaded,
 		Antennas: equipment.Antennas, Radios: equipment.Radios,
 		Health: health, Metrics: telemetry.NewMetrics(), Log: log, MostAtOnce: c.MostAtOnce,
 	})
@@ -65,6 +68,8 @@ func (c *serveCommand) Run(ctx context.Context, s streams) error {
 	if err != nil {
 		return inputError{fmt.Errorf("--listen %s: %w", c.Listen, err)}
 	}
+	stop := reloadOnHangup(ctx, loaded, log)
+	defer stop()
 	log.Info("serving", "address", "http://"+listener.Addr().String(), "rasters", loaded.Usable(), "data", c.Data, "version", programVersion())
 	return serve(ctx, handler, listener, health)
 }
@@ -92,13 +97,43 @@ func serve(ctx context.Context, handler http.Handler, listener net.Listener, hea
 	return server.Shutdown(deadline)
 }
 
+// reloadOnHangup loads the rasters anew whenever the process gets SIGHUP, until
+// stop is called.
+func reloadOnHangup(ctx context.Context, loaded *loadedTerrain, log *slog.Logger) (stop func()) {
+	hangups := make(chan os.Signal, 1)
+	signal.Notify(hangups, syscall.SIGHUP)
+	ctx, cancel := context.WithCancel(ctx)
+	ended := make(chan struct{})
+	go func() {
+		defer close(ended)
+		for {
+			select {
+			case <-ctx.Done():
+				return
+			case <-hangups:
+				changes, err := loaded.Reload(ctx)
+				if err != nil {
+					log.Error("rasters not reloaded", "reason", err)
+					continue
+				}
+				log.Info("rasters reloaded", "added", len(changes.Added), "removed", len(changes.Removed), "changed", len(changes.Changed), "usable", loaded.Usable())
+			}
+		}
+	}()
+	return func() {
+		signal.Stop(hangups)
+		cancel()
+		<-ended
+	}
+}
+
 func storeCheck(kept *store.Store) telemetry.Check {
 	return telemetry.Check{Name: "store", Run: func(ctx context.Context) (string, error) {
 		return "answers", kept.Ping(ctx)
 	}}
 }
 
-func terrainCheck(loaded *terrain.Terrain) telemetry.Check {
+func terrainCheck(loaded *loadedTerrain) telemetry.Check {
 	return telemetry.Check{Name: "rasters", Run: func(context.Context) (string, error) {
 		return fmt.Sprintf("%d usable", loaded.Usable()), nil
 	}}

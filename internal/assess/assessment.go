@@ -21,7 +21,10 @@ const EngineVersion = "3"
 type Assessment struct {
 	ID      string
 	Engine  string
-	Request Request // with defaults filled in
+	Request Request // with defaults filled in, and the radio half resolved
+	// Asked is the request before its radio half was resolved: asked again, a
+	// name stands for what the register and the settings hold then.
+	Asked Request
 	Link    profile.Link
 	// GroundAM and GroundBM are the terrain heights at the ends; NaN if void.
 	GroundAM, GroundBM float64

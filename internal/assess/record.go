@@ -18,6 +18,7 @@ import (
 // better than a millimetre.
 type record struct {
 	Request            []byte // as JSON: gob does not tell a zero that is meant from one that is not
+	AskedRadio         []byte // the radio half of Asked, as JSON; empty if there is none
 	ID, Engine         string
 	Link               profile.Link
 	GroundAM, GroundBM float64
@@ -66,6 +67,9 @@ func (a *Assessment) Record() ([]byte, error) {
 	if r.Request, err = json.Marshal(a.Request); err == nil && a.Radio != nil {
 		r.Radio, err = encoded(a.Radio)
 	}
+	if err == nil && a.Asked.Radio != nil {
+		r.AskedRadio, err = json.Marshal(a.Asked.Radio)
+	}
 	if err != nil {
 		return nil, fmt.Errorf("assessment %s as a record: %w", a.ID, err)
 	}
@@ -90,6 +94,13 @@ func FromRecord(kept []byte) (*Assessment, error) {
 	}
 	if err := json.Unmarshal(r.Request, &a.Request); err != nil {
 		return nil, fmt.Errorf("record of an assessment: %w", err)
+	}
+	a.Asked = a.Request
+	if len(r.AskedRadio) > 0 {
+		a.Asked.Radio = &RadioRequest{}
+		if err := json.Unmarshal(r.AskedRadio, a.Asked.Radio); err != nil {
+			return nil, fmt.Errorf("record of an assessment: %w", err)
+		}
 	}
 	if len(r.Radio) > 0 {
 		a.Radio = &RadioAnswer{}

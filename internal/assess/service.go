@@ -49,6 +49,7 @@ func (s *Service) Assess(ctx context.Context, request Request) (*Assessment, err
 // profile and of ws.
 func (s *Service) judge(ctx context.Context, request Request, a *Assessment, ws *profile.Workspace) error {
 	a.Request, a.Engine = request.withDefaults(), EngineVersion
+	a.Asked = a.Request
 	path, err := a.Request.path()
 	if err != nil {
 		return err

@@ -9,9 +9,12 @@ import (
 
 // Terrain says where elevation comes from.
 type Terrain struct {
-	Rasters []string `help:"Folder of elevation rasters; may be given more than once." name:"rasters" placeholder:"DIR" env:"RIDGEHOP_RASTERS" sep:","`
-	CacheMB uint64   `help:"Memory for decoded heights, MiB." name:"cache-mb" default:"512" env:"RIDGEHOP_CACHE_MB"`
-	Open    int      `help:"Raster files held open at once." name:"open-rasters" default:"64" env:"RIDGEHOP_OPEN_RASTERS"`
+	Rasters   []string `help:"Folder of elevation rasters; may be given more than once." name:"rasters" placeholder:"DIR" env:"RIDGEHOP_RASTERS" sep:","`
+	Catalogue string   `help:"Catalogue of elevation sources, as YAML." name:"catalogue" placeholder:"FILE" env:"RIDGEHOP_CATALOGUE"`
+	CacheMB   uint64   `help:"Memory for decoded heights, MiB." name:"cache-mb" default:"512" env:"RIDGEHOP_CACHE_MB"`
+	Open      int      `help:"Raster files held open at once." name:"open-rasters" default:"64" env:"RIDGEHOP_OPEN_RASTERS"`
+	Blocks    string   `help:"Folder that keeps blocks of remote rasters; the service keeps them in its data directory." name:"blocks" placeholder:"DIR" env:"RIDGEHOP_BLOCKS"`
+	BlocksMB  int64    `help:"Disk for blocks of remote rasters, MiB." name:"blocks-mb" default:"4096" env:"RIDGEHOP_BLOCKS_MB"`
 }
 
 // Validate checks the settings; the error names the flag.
@@ -24,6 +27,14 @@ func (t Terrain) Validate() error {
 	if t.CacheMB < 16 || t.CacheMB > 1<<20 {
 		return fmt.Errorf("--cache-mb %d: it must be 16 to %d", t.CacheMB, 1<<20)
 	}
+	if t.Catalogue != "" {
+		if stat, err := os.Stat(t.Catalogue); err != nil || stat.IsDir() {
+			return fmt.Errorf("--catalogue %s: there is no such file", t.Catalogue)
+		}
+	}
+	if t.BlocksMB < 64 || t.BlocksMB > 1<<30 {
+		return fmt.Errorf("--blocks-mb %d: it must be 64 to %d", t.BlocksMB, 1<<30)
+	}
 	if t.Open < 1 || t.Open > 10000 {
 		return fmt.Errorf("--open-rasters %d: it must be 1 to 10000", t.Open)
 	}
@@ -32,6 +43,9 @@ func (t Terrain) Validate() error {
 
 // CacheBytes is CacheMB in bytes.
 func (t Terrain) CacheBytes() uint64 { return t.CacheMB << 20 }
+
+// BlocksBytes is BlocksMB in bytes.
+func (t Terrain) BlocksBytes() int64 { return t.BlocksMB << 20 }
 
 // Equipment names the operator's own files on antennas, radios, regions, limits
 // and maps.

@@ -22,7 +22,7 @@ func (s *sampler) compose(distances []float64) {
 	}
 	var readers [layerCount]reader
 	for l := range readers {
-		readers[l].strip = &s.strips[l]
+		readers[l].nodes = s.strips[l].nodes
 	}
 	var before mix
 	for i, d := range distances {
@@ -41,31 +41,40 @@ func (s *sampler) compose(distances []float64) {
 
 // covered reports whether anything may stand on bare earth.
 func (s *sampler) covered() bool {
-	has := func(l layer) bool { return len(s.strips[l].at) > 0 }
+	has := func(l layer) bool { return !s.strips[l].empty() }
 	return has(groundLayer) && (has(surfaceLayer) || has(canopyLayer) || has(buildingsLayer) || has(outlinesLayer))
+}
+
+// only is the layer that speaks where no other does; nil where several do, or
+// none.
+func (s *sampler) only() *strip {
+	var only *strip
+	for l := range s.strips {
+		switch {
+		case s.strips[l].empty():
+		case only != nil:
+			return nil
+		default:
+			only = &s.strips[l]
+		}
+	}
+	return only
 }
 
 // alone takes a layer of heights above the sea as it is where it is the only
 // one, which is what most operators have.
 func (s *sampler) alone(distances []float64) bool {
-	var only *strip
-	for l := range s.strips {
-		if len(s.strips[l].at) == 0 {
-			continue
-		}
-		if only != nil || layer(l) > surfaceLayer {
-			return false
-		}
-		only = &s.strips[l]
-	}
-	if only == nil || len(only.at) != len(distances) {
+	only, n := s.only(), len(distances)
+	if only == nil || len(only.nodes) != n || only != &s.strips[groundLayer] && only != &s.strips[surfaceLayer] {
 		return false
 	}
 	into := s.into
 	into.DistanceM = distances
-	into.GroundM = append(into.GroundM[:0], only.height...)
-	into.SourceIndex = append(into.SourceIndex[:0], only.source...)
-	into.BendPerM = append(into.BendPerM[:0], only.bend...)
+	into.GroundM, into.SourceIndex, into.BendPerM = resized(into.GroundM, n), resized(into.SourceIndex, n), resized(into.BendPerM, n)
+	for i := range only.nodes {
+		node := &only.nodes[i]
+		into.GroundM[i], into.BendPerM[i], into.SourceIndex[i] = node.height, node.bend, node.source
+	}
 	return true
 }
 
@@ -83,7 +92,7 @@ func mixed(readers *[layerCount]reader, d float64) mix {
 	var source [layerCount]int16
 	for l := range readers {
 		h[l], source[l] = math.NaN(), -1
-		if r := &readers[l]; len(r.at) > 1 {
+		if r := &readers[l]; len(r.nodes) > 1 {
 			r.reach(d)
 			h[l], source[l] = r.heightAt(d)
 		}
@@ -119,8 +128,8 @@ func bendBetween(readers *[layerCount]reader, a, b mix) float64 {
 func bendOf(readers *[layerCount]reader, top [2]layer) float64 {
 	sum := 0.0
 	for _, l := range top {
-		if l < layerCount && len(readers[l].at) > 1 {
-			sum += readers[l].bend[readers[l].i]
+		if l < layerCount && len(readers[l].nodes) > 1 {
+			sum += readers[l].nodes[readers[l].i].bend
 		}
 	}
 	return sum

@@ -149,18 +149,20 @@ func (s *sampler) shiftStrip(out *strip) {
 		return
 	}
 	k := 0
-	for i, source := range out.source {
-		for k+1 < len(s.geographic) && s.geographic[k].to < out.at[i] {
+	for i := range out.nodes {
+		n := &out.nodes[i]
+		source := n.source
+		for k+1 < len(s.geographic) && s.geographic[k].to < n.at {
 			k++
 		}
 		if source < 0 || s.shifts[source].add == nil && s.shifts[source].subtract == nil {
 			continue
 		}
-		lon, lat := s.geographic[k].at(out.at[i])
+		lon, lat := s.geographic[k].at(n.at)
 		metres, ok := s.shifts[source].at(lon, lat)
 		if !ok && s.shifts[source].doubt == nil {
 			s.shifts[source].doubt = s.doubt(s.sources.entries[source], s.into.VerticalDatum)
 		}
-		out.height[i] += metres
+		n.height += metres
 	}
 }

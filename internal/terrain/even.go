@@ -57,7 +57,7 @@ func (s *sampler) read(l layer) error {
 	for _, d := range s.into.DistanceM {
 		out.node(d, math.NaN(), -1)
 	}
-	left := len(out.at)
+	left := len(out.nodes)
 	levels := s.levels(l)
 	for i := range levels {
 		if left == 0 {
@@ -82,11 +82,12 @@ func (s *sampler) fill(level *level, out *strip) (filled int, err error) {
 	i := 0
 	for k := range level.track {
 		p := &level.track[k]
-		for ; i < len(out.at) && out.at[i] <= p.to; i++ {
-			if out.source[i] >= 0 {
+		for ; i < len(out.nodes) && out.nodes[i].at <= p.to; i++ {
+			n := &out.nodes[i]
+			if n.source >= 0 {
 				continue
 			}
-			u, v := p.at(out.at[i])
+			u, v := p.at(n.at)
 			h, ok := cur.inside(u, v)
 			tile := cur.tile
 			if !ok {
@@ -97,7 +98,7 @@ func (s *sampler) fill(level *level, out *strip) (filled int, err error) {
 					continue
 				}
 			}
-			out.height[i], out.source[i] = h, s.sources.of(level.mosaic, tile)
+			n.height, n.source = h, s.sources.of(level.mosaic, tile)
 			filled++
 		}
 	}

@@ -50,17 +50,24 @@ func (s *sampler) lay(l layer) error {
 // profile's own memory; no fewer than profile.MinIntervals apart.
 func (s *sampler) nodes() []float64 {
 	length := s.line.LengthM()
+	if only := s.only(); only != nil && len(only.nodes) > profile.MinIntervals {
+		out := s.into.DistanceM[:0]
+		for i := range only.nodes {
+			out = append(out, only.nodes[i].at)
+		}
+		return out
+	}
 	out := append(s.into.DistanceM[:0], 0)
 	var at [layerCount]int
 	for {
 		next := length
 		for l := range s.strips {
 			strip := &s.strips[l]
-			for at[l] < len(strip.at) && strip.at[at[l]] <= out[len(out)-1] {
+			for at[l] < len(strip.nodes) && strip.nodes[at[l]].at <= out[len(out)-1] {
 				at[l]++
 			}
-			if at[l] < len(strip.at) {
-				next = min(next, strip.at[at[l]])
+			if at[l] < len(strip.nodes) {
+				next = min(next, strip.nodes[at[l]].at)
 			}
 		}
 		if !(next < length) {

@@ -92,9 +92,9 @@ func (w *walk) leg(l int, p *piece, t0, t1, voidFrom float64) (float64, error) {
 	var columns, rows lines
 	columns.start(p.x, t0, t1)
 	rows.start(p.y, t0, t1)
-	length := p.to - p.from
-	a, t := p.from+t0*length, t0
-	ua, va := p.at(a)
+	level, length := &w.levels[l], p.to-p.from
+	c, t := stretch{a: p.from + t0*length}, t0
+	c.ua, c.va = p.at(c.a)
 	for t < t1 {
 		crossColumn, crossRow := columns.t <= rows.t, rows.t <= columns.t
 		t = min(columns.t, rows.t, t1)
@@ -108,15 +108,18 @@ func (w *walk) leg(l int, p *piece, t0, t1, voidFrom float64) (float64, error) {
 		if crossRow && t < t1 {
 			rows.pass()
 		}
-		if b-a < leastStepM && t < t1 {
+		if b-c.a < leastStepM && t < t1 {
 			continue
 		}
-		ub, vb := p.at(b)
-		var err error
-		if voidFrom, err = w.cell(l, stretch{a, b, ua, va, ub, vb}, p, voidFrom); err != nil {
-			return voidFrom, err
+		c.b = b
+		c.ub, c.vb = p.at(b)
+		if voidFrom == voidFrom || !w.cellAtHand(&level.cur, &c) {
+			var err error
+			if voidFrom, err = w.cell(l, &c, p, voidFrom); err != nil {
+				return voidFrom, err
+			}
 		}
-		a, ua, va = b, ub, vb
+		c.a, c.ua, c.va = c.b, c.ub, c.vb
 	}
 	return voidFrom, nil
 }
@@ -125,8 +128,31 @@ func (w *walk) leg(l int, p *piece, t0, t1, voidFrom float64) (float64, error) {
 // leaves in the mosaic's columns and rows.
 type stretch struct{ a, b, ua, va, ub, vb float64 }
 
+// cellAtHand lays the stretch within one cell where all of its corners are known
+// and lie in the chunk at hand, and the stretch before it is of the same raster:
+// all but a few. It is cell, short of everything else.
+func (w *walk) cellAtHand(cur *cursor, c *stretch) bool {
+	i, j := math.Floor((c.ua+c.ub)/2), math.Floor((c.va+c.vb)/2)
+	a, b, n := int(i)-cur.i0, int(j)-cur.j0, len(w.out.nodes)
+	if a < 0 || b < 0 || a+1 >= cur.columns || b+1 >= cur.rows || n == 0 || cur.tile != w.sources.lastTile || cur.m != w.sources.last {
+		return false
+	}
+	at := b*cur.columns + a
+	upper, lower := cur.heights[at:at+2:at+2], cur.heights[at+cur.columns:at+cur.columns+2]
+	h := [4]float64{float64(upper[0]), float64(upper[1]), float64(lower[0]), float64(lower[1])}
+	from, to, bend := across(&h, c.ua-i, c.va-j, c.ub-i, c.vb-j)
+	last := &w.out.nodes[n-1]
+	// With a void corner the heights are NaN, and nothing is near that.
+	if last.at != c.a || last.source != w.sources.lastAt || !(math.Abs(last.height-from) <= sameM) || to != to {
+		return false
+	}
+	last.bend = bend / ((c.b - c.a) * (c.b - c.a))
+	w.out.nodes = append(w.out.nodes, stripNode{at: c.b, height: to, source: last.source})
+	return true
+}
+
 // cell lays the stretch within one cell.
-func (w *walk) cell(l int, c stretch, p *piece, voidFrom float64) (float64, error) {
+func (w *walk) cell(l int, c *stretch, p *piece, voidFrom float64) (float64, error) {
 	level := &w.levels[l]
 	i, j := math.Floor((c.ua+c.ub)/2), math.Floor((c.va+c.vb)/2)
 	h, tile, ok := level.cur.cell(int(i), int(j))
@@ -150,7 +176,7 @@ func (w *walk) cell(l int, c stretch, p *piece, voidFrom float64) (float64, erro
 			return voidFrom, err
 		}
 	}
-	from, to, bend := across(h, c.ua-i, c.va-j, c.ub-i, c.vb-j)
+	from, to, bend := across(&h, c.ua-i, c.va-j, c.ub-i, c.vb-j)
 	w.out.known(c.a, from, c.b, to, bend/((c.b-c.a)*(c.b-c.a)), w.sources.of(level.mosaic, tile))
 	return math.NaN(), nil
 }
@@ -163,7 +189,7 @@ func (w *walk) cell(l int, c stretch, p *piece, voidFrom float64) (float64, erro
 //	h0 + x east + y south + x y twist
 //
 // and along a straight line x y is a square of t.
-func across(h [4]float64, xa, ya, xb, yb float64) (from, to, bend float64) {
+func across(h *[4]float64, xa, ya, xb, yb float64) (from, to, bend float64) {
 	east, south := h[1]-h[0], h[2]-h[0]
 	twist := h[0] - h[1] - h[2] + h[3]
 	from = h[0] + xa*east + ya*(south+xa*twist)
@@ -177,7 +203,7 @@ const partsOfCell = 16
 
 // irregular lays a stretch within a cell that lacks a corner: in the half pixel
 // outside the outermost centres, and beside voids.
-func (w *walk) irregular(l int, c stretch, p *piece, voidFrom float64) (float64, error) {
+func (w *walk) irregular(l int, c *stretch, p *piece, voidFrom float64) (float64, error) {
 	level := &w.levels[l]
 	a := c.a
 	ha, _, err := level.cur.height(c.ua, c.va)
