@@ -25,7 +25,7 @@ type Assessment struct {
 	// Asked is the request before its radio half was resolved: asked again, a
 	// name stands for what the register and the settings hold then.
 	Asked Request
-	Link    profile.Link
+	Link  profile.Link
 	// GroundAM and GroundBM are the terrain heights at the ends; NaN if void.
 	GroundAM, GroundBM float64
 	Profile            profile.Profile

@@ -12,7 +12,7 @@ import (
 // chosen is what a path may be sampled from.
 type chosen struct {
 	mosaics []*mosaic
-	prints  []print
+	prints  []outlined
 }
 
 // choose lists what may lie under a path: everything, or what belongs to the

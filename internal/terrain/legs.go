@@ -56,6 +56,8 @@ type lines struct {
 	step       float64 // 1 where the coordinate rises, -1 where it falls, 0 at none
 	next, last float64 // the line ahead, and the last one
 	t, end     float64 // where the line ahead is crossed; beyond end if none is left
+	stride     float64 // how far the last line lies behind the one ahead
+	perLine    float64 // t for one line, where it was last worked out
 }
 
 func (l *lines) value(t float64) float64 { return l.x[0] + t*(l.x[1]+t*(l.x[2]+t*l.x[3])) }
@@ -80,28 +82,51 @@ func (l *lines) pass() {
 	l.find()
 }
 
-// lineTolerance is how near a line, in pixels, a crossing is found.
-const lineTolerance = 1e-9
+// How far off a line, in pixels, a guess may be to be put right by one step, with
+// the slope of an earlier line or with its own. A track is all but straight over a
+// pixel, and the slope of one that is not changes by far less than a tenth from
+// line to line: what is left is below a millionth of a pixel.
+const (
+	nearLine    = 1e-5
+	besidesLine = 1e-2
+)
 
-// find sets t to where the line ahead is crossed.
+// find sets t to where the line ahead is crossed. Lines lie evenly but for a
+// little, so that the stride from the last one is a good guess.
 func (l *lines) find() {
 	if l.step == 0 || (l.last-l.next)*l.step < 0 {
 		l.t, l.step = math.Inf(1), 0
 		return
 	}
-	t := l.t
-	for range 8 { // Newton; a track is all but straight over a pixel
-		off := l.next - l.value(t)
-		if math.Abs(off) <= lineTolerance {
-			l.t = min(max(t, l.t), l.end)
-			return
+	t := l.t + l.stride
+	off := l.next - l.value(t)
+	if math.Abs(off) > nearLine {
+		var ok bool
+		if t, ok = l.newton(t, off); !ok {
+			t = l.bisect()
 		}
-		t += off / l.slope(t)
-		if !(t >= l.t-1 && t <= l.end+1) {
-			break
-		}
+	} else {
+		t += off * l.perLine
 	}
-	l.t = l.bisect()
+	t = min(max(t, l.t), l.end)
+	l.stride, l.t = t-l.t, t
+}
+
+// newton finds the line ahead from a guess that is off by some pixels; false near
+// a turn, where the slope vanishes.
+func (l *lines) newton(t, off float64) (float64, bool) {
+	for range 8 {
+		l.perLine = 1 / l.slope(t)
+		t += off * l.perLine
+		if !(t >= l.t-1 && t <= l.end+1) {
+			return t, false
+		}
+		if math.Abs(off) <= besidesLine {
+			return t, true
+		}
+		off = l.next - l.value(t)
+	}
+	return t, math.Abs(off) <= besidesLine
 }
 
 // bisect finds the line ahead near a turn, where the slope vanishes.

@@ -79,8 +79,7 @@ func TestReloadUnderLoad(t *testing.T) {
 			for i := k; ctx.Err() == nil; i++ {
 				err := live.Sample(context.Background(), paths[i%len(paths)], profile.Sampling{}, &p)
 				// While the file is being replaced its own change is an honest error.
-				var unreadable *profile.UnreadableError
-				if errors.As(err, &unreadable) {
+				if _, changing := errors.AsType[*profile.UnreadableError](err); changing {
 					continue
 				}
 				height := p.GroundM[0]

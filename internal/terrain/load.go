@@ -6,6 +6,7 @@ import (
 	"fmt"
 	"io/fs"
 	"log/slog"
+	"maps"
 	"os"
 	"path/filepath"
 	"strings"
@@ -65,9 +66,7 @@ func (l *loading) all(folders []string, options Options) error {
 		plain[kind] = &source{Source: catalogue.Source{Kind: kind}, plain: true}
 		l.sources = append(l.sources, plain[kind])
 	}
-	for name, row := range options.Index {
-		l.index[name] = row
-	}
+	maps.Copy(l.index, options.Index)
 	for _, folder := range folders {
 		if err := l.scan(folder, func(name string) (*source, string) { return plain[kindOf(name)], name }); err != nil {
 			return err
@@ -151,7 +150,7 @@ func (l *loading) take(e *entry) {
 	}
 	l.byName[e.Name] = e
 	if e.outlines != nil {
-		l.prints = append(l.prints, print{e, e.outlines})
+		l.prints = append(l.prints, outlined{e, e.outlines})
 		return
 	}
 	l.usable = append(l.usable, e)

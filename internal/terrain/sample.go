@@ -41,7 +41,7 @@ type sampler struct {
 	line       geodesy.Line
 	geographic track
 	layers     [layerCount][]crossing
-	prints     []print // building outlines that may lie under the path
+	prints     []outlined // building outlines that may lie under the path
 	into       *profile.Profile
 	sources    sources
 	*scratch

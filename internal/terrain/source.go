@@ -12,11 +12,10 @@ type source struct {
 	catalogue.Source
 	plain  bool // from a folder without a catalogue: errors and datums go by the file
 	tiles  *tiles
-	prints []print
 }
 
-// print is a file of building outlines.
-type print struct {
+// outlined is a file of building outlines.
+type outlined struct {
 	*entry
 	outlines *footprints.Footprints
 }

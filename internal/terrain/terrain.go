@@ -45,7 +45,7 @@ type Terrain struct {
 	entries []*entry // everything found, usable or not
 	byName  map[string]*entry
 	mosaics []*mosaic
-	prints  []print
+	prints  []outlined
 	datums  datums
 	handles *handles
 	chunks  *chunks
