@@ -19,6 +19,8 @@ type Link struct {
 	HeightAFrom, HeightBFrom HeightFrom
 	Criteria                 []Criterion // 1 to 8
 	RaiseCapM                float64     // 0 is DefaultRaiseCapM
+	// WithoutExtraHeight leaves Assessment.ExtraHeight unknown.
+	WithoutExtraHeight bool
 }
 
 // Assessment is the judgement of one link.

@@ -27,10 +27,10 @@ func TestREADMEIsTrue(t *testing.T) {
 	}
 	request := between(t, string(readme), "-d '", "}'") + "}"
 	excerpt := between(t, string(readme), "```json\n", "```")
-	rasters := islandFolder(t)
+	catalogue := islandCatalogue(t)
 	picture := filepath.Join(t.TempDir(), "picture.svg")
 	var out, errs bytes.Buffer
-	code := run(context.Background(), []string{"assess", "--rasters", rasters, "--svg", picture}, streams{strings.NewReader(request), &out, &errs})
+	code := run(context.Background(), []string{"assess", "--catalogue", catalogue, "--svg", picture}, streams{strings.NewReader(request), &out, &errs})
 	if code != exitOK {
 		t.Fatalf("got %d %s", code, errs.String())
 	}
@@ -59,11 +59,15 @@ func between(t *testing.T, text, before, after string) string {
 	return found[1]
 }
 
-// islandFolder writes the demo terrain with a fixed file date, which the
-// drawing shows.
-func islandFolder(t *testing.T) string {
+// islandCatalogue is the quickstart's catalogue over the demo terrain, which has a
+// fixed file date, since the drawing shows it.
+func islandCatalogue(t *testing.T) string {
 	t.Helper()
-	folder := t.TempDir()
+	home := t.TempDir()
+	folder := filepath.Join(home, "rasters")
+	if err := os.Mkdir(folder, 0o700); err != nil {
+		t.Fatal(err)
+	}
 	path, err := island.Write(folder)
 	if err != nil {
 		t.Fatal(err)
@@ -72,7 +76,15 @@ func islandFolder(t *testing.T) string {
 	if err := os.Chtimes(path, date, date); err != nil {
 		t.Fatal(err)
 	}
-	return folder
+	text, err := os.ReadFile("../../deploy/catalogues/demo-island.yaml")
+	if err != nil {
+		t.Fatal(err)
+	}
+	catalogue := filepath.Join(home, "rasters.yaml")
+	if err := os.WriteFile(catalogue, text, 0o600); err != nil {
+		t.Fatal(err)
+	}
+	return catalogue
 }
 
 func comparePicture(t *testing.T, got, want string) {

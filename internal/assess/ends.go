@@ -16,6 +16,7 @@ func (a *Assessment) place(path profile.Path) error {
 	}
 	a.Link = profile.Link{
 		Path: path, FrequencyGHz: a.Request.FrequencyGHz, Polarisation: a.Request.Polarisation, Criteria: criteria,
+		WithoutExtraHeight: a.brief,
 	}
 	var f findings
 	a.Link.AntennaAM, a.Link.HeightAFrom = a.amsl(a.Request.A, 0, "/a", &f)
@@ -80,6 +81,20 @@ func (a *Assessment) markOwnBuildings() {
 	n := len(a.Profile.GroundM)
 	a.Profile.OwnAM = a.ownReach(a.Request.A, a.Link.AntennaAM, 0, 1)
 	a.Profile.OwnBM = a.ownReach(a.Request.B, a.Link.AntennaBM, n-1, -1)
+	a.lowerOwn(a.Profile.OwnAM, a.Link.AntennaAM, 0, 1)
+	a.lowerOwn(a.Profile.OwnBM, a.Link.AntennaBM, n-1, -1)
+}
+
+// lowerOwn takes from an own building what stands above its antenna, which hangs
+// on the wall: the diffraction loss would count it.
+func (a *Assessment) lowerOwn(reachM, antennaM float64, i, step int) {
+	p := &a.Profile
+	if reachM == 0 || len(p.CoverM) == 0 {
+		return
+	}
+	for k := i; k >= 0 && k < len(p.CoverM) && math.Abs(p.DistanceM[k]-p.DistanceM[i]) <= reachM; k += step {
+		p.CoverM[k] = min(p.CoverM[k], max(0, antennaM-p.GroundM[k]))
+	}
 }
 
 // ownReach is how far from the end at sample i its own building reaches: as far

@@ -31,7 +31,7 @@ func TestSources(t *testing.T) {
 			a.Profile.Sources = append(a.Profile.Sources, profile.Source{Name: "tile" + string(rune('a'+i)), Version: "1", Kind: profile.KindSurface, Samples: 10})
 		}
 	})
-	for _, want := range []string{"tilea", "tilef", "and 3 more", "version 1; file date not known; with roofs and trees"} {
+	for _, want := range []string{"tilea", "tilef", "and 3 more", "version 1; file date not known; with roofs and trees; no error stated"} {
 		if !slices.Contains(got, want) {
 			t.Errorf("got no %q in %q", want, got)
 		}

@@ -118,10 +118,15 @@ func byBeginning(all []profile.Obstruction) []profile.Obstruction {
 	return slices.SortedStableFunc(slices.Values(all), func(p, q profile.Obstruction) int { return cmp.Compare(p.FromM, q.FromM) })
 }
 
-// sampleAt is the sample at a distance that is one of the profile's.
+// sampleAt is the sample at a distance that is one of the profile's: the nearest,
+// since a kept profile's are rounded and the next may be the foot of a wall.
 func (s *sheet) sampleAt(d float64) int {
-	i, _ := slices.BinarySearch(s.a.Profile.DistanceM, d)
-	return min(i, len(s.a.Profile.DistanceM)-1)
+	at := s.a.Profile.DistanceM
+	i, _ := slices.BinarySearch(at, d)
+	if i == len(at) || i > 0 && d-at[i-1] < at[i]-d {
+		return i - 1
+	}
+	return i
 }
 
 const calloutGap = 10.0

@@ -99,7 +99,7 @@ func (s *sheet) rows(e end) []row {
 	}
 	return append(rows,
 		row{"tilt", tilt(elevation), true},
-		row{"antenna above sea level", metres(e.amslM), false},
+		row{"antenna above " + seaLevel(&s.a.Profile), metres(e.amslM), false},
 		row{s.groundLabel(e), metres(e.groundM), false})
 }
 
@@ -112,7 +112,7 @@ func (s *sheet) groundLabel(e end) string {
 	case kind == profile.KindSurface, kind == profile.KindUnstated && e.request.HeightAbove == assess.AboveRoof:
 		return "ground or roof, by raster"
 	}
-	return "ground above sea level"
+	return "ground above " + seaLevel(&s.a.Profile)
 }
 
 // kindAt is the kind of raster under a sample; empty if none.

@@ -29,6 +29,9 @@ func (h hills) Sample(_ context.Context, path profile.Path, how profile.Sampling
 	into.Resize(n)
 	into.SpacingM, into.PixelM = path.LengthM/float64(n-1), step
 	into.Sources = append(into.Sources, h.sources...)
+	if len(h.sources) > 0 {
+		into.VerticalDatum = h.sources[0].VerticalDatum
+	}
 	for i := range n {
 		share := float64(i) / float64(n-1)
 		into.DistanceM[i] = share * path.LengthM
@@ -44,7 +47,10 @@ func (h hills) Sample(_ context.Context, path profile.Path, how profile.Sampling
 }
 
 func oneRaster(kind profile.Kind) []profile.Source {
-	return []profile.Source{{Name: "island_surface_1s.tif", Version: "3f9c2a7d41b0", Kind: kind, DataDate: "2024-05-17"}}
+	return []profile.Source{{
+		Name: "island_surface_1s.tif", Version: "3f9c2a7d41b0", Kind: kind, DataDate: "2024-05-17",
+		VerticalDatum: "egm2008", ErrorM: 0.5, CorrelationM: 100, Attribution: "Skerry Survey 2024", Licence: "Open Heights 1.0",
+	}}
 }
 
 // rolling is a valley between two hills, with some smaller ups and downs.
@@ -65,7 +71,7 @@ func placed(name string, lon, lat, heightM float64) assess.End {
 // drawingCase is an assessment with a name.
 type drawingCase struct {
 	name    string
-	terrain hills
+	terrain profile.Terrain
 	request assess.Request
 	change  func(*assess.Assessment) // nil for none
 }
@@ -149,6 +155,7 @@ func cases() []drawingCase {
 			request: tenKM(func(r *assess.Request) { r.A.HeightAbove = assess.AboveRoof }),
 			change:  withRadio,
 		},
+		unsureCase(), wallsCase(), unevenCase(), unreachableCase(),
 	}
 }
 

@@ -76,6 +76,10 @@ func resultWord(c profile.Clearance) string {
 // criteriaNotes says what the table cannot.
 func (s *sheet) criteriaNotes() {
 	f := face{size: 20, fill: quiet}
+	sure := sureSentence(s.a)
+	if sure != "" {
+		s.y = s.lines(marginLeft, s.y+30, 28, face{size: 20}, wrap(sure, face{size: 20}, marginRight-marginLeft)) - 28
+	}
 	isolated := ""
 	for _, c := range s.a.Judgement.Clearance {
 		if c.Isolated {

@@ -2,6 +2,7 @@ package drawing
 
 import (
 	"math"
+	"slices"
 	"strings"
 
 	"ridgehop/internal/assess"
@@ -40,12 +41,13 @@ func description(a *assess.Assessment) string {
 		headline(a),
 		"Path length " + distance(a.Link.Path.LengthM) + ", " + frequency(a.Link.FrequencyGHz) + ".",
 		leastClearance(tightest(a.Judgement.Clearance)),
+		sureSentence(a),
 		raiseSentence(a),
 	}
 	if a.Judgement.VoidShare > 0 {
 		parts = append(parts, "No height is known for "+share(a.Judgement.VoidShare)+" of the path.")
 	}
-	return strings.Join(parts, " ")
+	return strings.Join(slices.DeleteFunc(parts, func(part string) bool { return part == "" }), " ")
 }
 
 func leastClearance(c profile.Clearance) string {
@@ -66,8 +68,16 @@ func raiseSentence(a *assess.Assessment) string {
 		return "What to raise is not known."
 	case raiseOutOfReach:
 		return outOfReach(r)
+	case raiseNeverSure:
+		return neverSure(r)
+	case raiseToBeSure:
+		return "To be " + clearWords() + " " + raiseThese(a.Judgement.ExtraHeight, reach(r))
 	case raiseByFigures:
 	}
-	return "To meet every criterion raise A alone by " + raiseWords(r.AM, reach(r)) + ", or B alone by " + raiseWords(r.BM, reach(r)) +
-		", or both by " + raiseWords(r.BothM, reach(r)) + " each."
+	return "To meet every criterion " + raiseThese(profile.ExtraHeight{AM: r.AM, BM: r.BM, BothM: r.BothM}, reach(r))
+}
+
+func raiseThese(m profile.ExtraHeight, most float64) string {
+	return "raise A alone by " + raiseWords(m.AM, most) + ", or B alone by " + raiseWords(m.BM, most) +
+		", or both by " + raiseWords(m.BothM, most) + " each."
 }

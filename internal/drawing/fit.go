@@ -72,7 +72,16 @@ func shorten(s string, f face, room float64) string {
 	if textWidth(s, f) <= room {
 		return s
 	}
-	room -= textWidth(ellipsis, f)
+	kept := strings.TrimRight(s[:cutAt(s, f, room-textWidth(ellipsis, f))], " ")
+	if last, _ := utf8.DecodeLastRuneInString(kept); rightToLeft(last) {
+		return kept + ellipsis + rightMark
+	}
+	return kept + ellipsis
+}
+
+// cutAt is how many bytes of s, which is wider than room, fit into it, between
+// characters as they are seen.
+func cutAt(s string, f face, room float64) int {
 	cut, width, previous := 0, 0.0, rune(0)
 	for i, r := range s {
 		if !attached(r) && previous != joiner {
@@ -84,11 +93,7 @@ func shorten(s string, f face, room float64) string {
 		}
 		previous = r
 	}
-	kept := strings.TrimRight(s[:cut], " ")
-	if last, _ := utf8.DecodeLastRuneInString(kept); rightToLeft(last) {
-		return kept + ellipsis + rightMark
-	}
-	return kept + ellipsis
+	return cut
 }
 
 // rightToLeft says that r belongs to a script written from right to left.
@@ -96,8 +101,48 @@ func rightToLeft(r rune) bool {
 	return (r >= 0x590 && r <= 0x8ff) || (r >= 0xfb1d && r <= 0xfdff) || (r >= 0xfe70 && r <= 0xfefc)
 }
 
-// wrap breaks s into lines no wider than room, at spaces.
+// wrap breaks s into lines no wider than room, at spaces. A word wider than
+// that is cut.
 func wrap(s string, f face, room float64) []string {
+	return flow(s, f, room, func(word string) []string { return []string{shorten(word, f, room)} })
+}
+
+// wrapWhole is wrap for what must not be cut: a word too wide goes on in the
+// next line.
+func wrapWhole(s string, f face, room float64) []string {
+	return flow(s, f, room, func(word string) []string { return pieces(word, f, room) })
+}
+
+// pieces breaks a word into parts no wider than room, if it must be.
+func pieces(word string, f face, room float64) []string {
+	var out []string
+	for textWidth(word, f) > room {
+		cut := cutAt(word, f, room)
+		if cut == 0 { // one chain of joined characters, or no room for any
+			cut = max(strings.IndexFunc(word, tooWide(f, room)), firstRune(word))
+		}
+		out, word = append(out, word[:cut]), word[cut:]
+	}
+	return append(out, word)
+}
+
+// tooWide says of the runes of a text, one after the other, which is the first
+// that finds no room.
+func tooWide(f face, room float64) func(rune) bool {
+	width := 0.0
+	return func(r rune) bool {
+		width += textWidth(string(r), f)
+		return width > room
+	}
+}
+
+func firstRune(s string) int {
+	_, size := utf8.DecodeRuneInString(s)
+	return size
+}
+
+// flow fills lines with the parts of the words of s.
+func flow(s string, f face, room float64, parts func(word string) []string) []string {
 	var lines []string
 	line, width := "", 0.0
 	space := textWidth(" ", f)
@@ -105,16 +150,17 @@ func wrap(s string, f face, room float64) []string {
 		if word == "" {
 			continue
 		}
-		word = shorten(word, f, room)
-		wide := textWidth(word, f)
-		if line != "" && width+space+wide <= room {
-			line, width = line+" "+word, width+space+wide
-			continue
+		for _, part := range parts(word) {
+			wide := textWidth(part, f)
+			if line != "" && width+space+wide <= room {
+				line, width = line+" "+part, width+space+wide
+				continue
+			}
+			if line != "" {
+				lines = append(lines, line)
+			}
+			line, width = part, wide
 		}
-		if line != "" {
-			lines = append(lines, line)
-		}
-		line, width = word, wide
 	}
 	if line != "" {
 		lines = append(lines, line)

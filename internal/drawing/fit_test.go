@@ -44,6 +44,15 @@ func TestShortenedFits(t *testing.T) {
 				r.Fatalf("got line %q, %.1f wide, want at most %.1f", line, textWidth(line, f), room)
 			}
 		}
+		whole := wrapWhole(text, f, room)
+		for _, line := range whole {
+			if textWidth(line, f) > room+1e-9 {
+				r.Fatalf("got line %q, %.1f wide, want at most %.1f", line, textWidth(line, f), room)
+			}
+		}
+		if got, want := strings.ReplaceAll(strings.Join(whole, ""), " ", ""), strings.ReplaceAll(text, " ", ""); got != want {
+			r.Fatalf("got %q, want all of %q", got, want)
+		}
 	})
 }
 
@@ -60,6 +69,23 @@ func TestWrap(t *testing.T) {
 	unbroken := "1.33" + nbsp + "F1"
 	if got := wrap("k "+unbroken, f, textWidth(unbroken, f)+1); !slices.Equal(got, []string{"k", unbroken}) {
 		t.Errorf("got %q, want the figure and its unit together", got)
+	}
+}
+
+func TestWrapWhole(t *testing.T) {
+	f := face{size: 10}
+	for _, c := range []struct {
+		name, text string
+		want       []string
+	}{
+		{"fits", "ab cd", []string{"ab cd"}},
+		{"a long word", "see abcdefghij now", []string{"see", "abcdef", "ghij", "now"}},
+		{"accents stay with their letters", strings.Repeat("e\u0301", 8), []string{strings.Repeat("e\u0301", 6), strings.Repeat("e\u0301", 2)}},
+		{"a chain wider than the room", strings.Repeat("👨\u200d", 4), []string{"👨\u200d👨\u200d", "👨\u200d👨\u200d"}},
+	} {
+		if got := wrapWhole(c.text, f, 40); !slices.Equal(got, c.want) {
+			t.Errorf("%s: got %q, want %q", c.name, got, c.want)
+		}
 	}
 }
 

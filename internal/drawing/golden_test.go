@@ -3,11 +3,13 @@ package drawing
 import (
 	"bytes"
 	"flag"
+	"math"
 	"os"
 	"path/filepath"
 	"testing"
 
 	"ridgehop/internal/assess"
+	"ridgehop/profile"
 
 	"github.com/google/go-cmp/cmp"
 )
@@ -31,7 +33,24 @@ func pin(a *assess.Assessment) *assess.Assessment {
 		{Code: "short", Detail: "A caution in one line."},
 		{Code: "long", Detail: "A caution that is longer than a line of the sheet, so that it must be broken somewhere between its words."},
 	}
+	pinSureness(&a.Judgement)
 	return a
+}
+
+// pinSureness puts round figures where a probability has been worked out, which
+// another way of working it out may move a little.
+func pinSureness(j *profile.Assessment) {
+	switch r := j.Raise; {
+	case math.IsNaN(j.Confidence):
+	case j.Confidence >= profile.ClearConfidence:
+		j.Confidence = 0.97
+	case r.BothM == 0:
+		j.Confidence, j.ExtraHeight = 0.71, profile.ExtraHeight{AM: 5.3, BM: 7.2, BothM: 3.1}
+	case j.Verdict == profile.Obstructed:
+		j.Confidence, j.ExtraHeight = 0.002, profile.ExtraHeight{AM: r.AM + 3, BM: r.BM + 3, BothM: r.BothM + 2}
+	default:
+		j.Confidence, j.ExtraHeight = 0.02, profile.ExtraHeight{AM: r.AM + 3, BM: r.BM + 3, BothM: r.BothM + 2}
+	}
 }
 
 func TestGolden(t *testing.T) {

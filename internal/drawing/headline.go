@@ -14,7 +14,7 @@ func headline(a *assess.Assessment) string {
 	if a.Judgement.Verdict == profile.Unknown {
 		return "Cannot be judged: " + unknownCause(a)
 	}
-	words := pathWords(a.Judgement.Clearance)
+	words := pathWords(a)
 	if words == "" {
 		return reasons(a)
 	}
@@ -23,7 +23,8 @@ func headline(a *assess.Assessment) string {
 
 // pathWords says how the line and what must be kept free under it fare; empty
 // if nothing is known of it.
-func pathWords(all []profile.Clearance) string {
+func pathWords(a *assess.Assessment) string {
+	all := a.Judgement.Clearance
 	worst := tightest(all)
 	switch c := cut(all); {
 	case c.ClearanceM < 0:
@@ -34,14 +35,14 @@ func pathWords(all []profile.Clearance) string {
 	case math.IsNaN(worst.MinRatio):
 		return ""
 	}
-	return "All criteria met. Tightest " + place(worst.AtM) + ": " + ratio(worst.MinRatio) + " free, " +
+	return metWords(a) + " Tightest " + place(worst.AtM) + ": " + ratio(worst.MinRatio) + " free, " +
 		fraction(worst.F1Fraction) + " required (" + kFactor(worst.K) + ")."
 }
 
 // radioRemark says what the radio makes of it, or that it has the last word.
 func radioRemark(a *assess.Assessment) string {
 	switch {
-	case a.Radio == nil && a.Judgement.Verdict == profile.Marginal:
+	case a.Radio == nil && a.Judgement.Verdict == profile.Marginal && missed(tightest(a.Judgement.Clearance)):
 		return " The radio's margin decides."
 	case a.Radio == nil:
 		return ""
@@ -57,21 +58,37 @@ func radioRemark(a *assess.Assessment) string {
 // all the same.
 func unknownCause(a *assess.Assessment) string {
 	worst := tightest(a.Judgement.Clearance)
-	noA, noB := math.IsNaN(a.Link.AntennaAM), math.IsNaN(a.Link.AntennaBM)
-	switch {
+	cause := voidRemark(a)
+	switch noA, noB := math.IsNaN(a.Link.AntennaAM), math.IsNaN(a.Link.AntennaBM); {
 	case noA && noB:
-		return "no ground height at either end."
+		cause = " no ground height at either end."
 	case noA:
-		return "no ground height at end A."
+		cause = " no ground height at end A."
 	case noB:
-		return "no ground height at end B."
-	case missed(worst):
-		return strings.TrimSpace(voidRemark(a)) + " What is known is " + atLeastM(shortM(worst)) + " short of " +
-			fraction(worst.F1Fraction) + "."
-	case a.Judgement.VoidShare > 0:
-		return strings.TrimSpace(voidRemark(a))
+		cause = " no ground height at end B."
 	}
-	return reasons(a)
+	cause = strings.TrimSpace(cause + unreadRemark(a))
+	switch {
+	case cause == "":
+		return reasons(a)
+	case missed(worst):
+		return cause + " What is known is " + atLeastM(shortM(worst)) + " short of " + fraction(worst.F1Fraction) + "."
+	}
+	return cause
+}
+
+// unreadRemark says what could not be read; it begins with a name or a figure,
+// wherever it stands.
+func unreadRemark(a *assess.Assessment) string {
+	const readable = 300.0
+	switch away := a.Profile.Unreachable; len(away) {
+	case 0:
+		return ""
+	case 1:
+		return " " + shorten(plain(away[0].Source), face{size: 27}, readable) + " could not be read."
+	default:
+		return " " + fixed(float64(len(away)), 0) + " rasters could not be read."
+	}
 }
 
 // voidRemark is empty where every height is known.

@@ -82,10 +82,47 @@ func anyHills(t *rapid.T) hills {
 	}, oneRaster(kind)}
 }
 
+// anyTerrain is hills, or uneven samples with things on the ground.
+func anyTerrain(t *rapid.T) profile.Terrain {
+	h := anyHills(t)
+	if rapid.Bool().Draw(t, "even") {
+		return h
+	}
+	shares := rapid.SliceOfN(rapid.Float64Range(0, 1), 10, 60).Draw(t, "nodes")
+	crowd := rapid.SampledFrom([]int{0, 0, 3000}).Draw(t, "crowd")
+	m := mesh{
+		nodes: func(lengthM float64) []float64 {
+			var out []float64
+			for _, s := range shares {
+				out = append(out, s*lengthM)
+			}
+			for i := range crowd {
+				out = append(out, (0.2+0.1*float64(i)/3000)*lengthM)
+			}
+			return out
+		},
+		ground:  func(d float64) float64 { return h.height(d / 1000) },
+		sources: oneRaster(profile.KindGround),
+	}
+	for _, kind := range []profile.Kind{profile.KindCanopy, profile.KindBuildings} {
+		m.sources = append(m.sources, profile.Source{
+			Name: rapid.String().Draw(t, "source"), Kind: kind, Attribution: rapid.StringN(0, 500, 2000).Draw(t, "attribution"),
+			Licence: rapid.StringN(0, 200, 800).Draw(t, "licence"), ErrorM: rapid.SampledFrom([]float64{0, 0.15, 30}).Draw(t, "error"),
+		})
+	}
+	edge := -1.0
+	for range rapid.IntRange(0, 5).Draw(t, "blocks") {
+		wide := rapid.SampledFrom([]float64{0.01, 8, 400}).Draw(t, "wide")
+		m.blocks = append(m.blocks, block{edge, edge + wide, rapid.Float64Range(0, 90).Draw(t, "tall"), rapid.SampledFrom([]int16{1, 2}).Draw(t, "of")})
+		edge += wide + rapid.SampledFrom([]float64{0.01, 20, 3000}).Draw(t, "apart")
+	}
+	return m
+}
+
 func TestAnyAssessment(t *testing.T) {
 	drawn := 0
 	rapid.Check(t, func(r *rapid.T) {
-		a, err := assess.NewService(anyHills(r)).Assess(context.Background(), anyRequest(r))
+		a, err := assess.NewService(anyTerrain(r)).Assess(context.Background(), anyRequest(r))
 		if invalid := new(assess.InvalidError); errors.As(err, &invalid) {
 			r.Skip(err)
 		}

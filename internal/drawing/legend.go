@@ -25,6 +25,9 @@ func (s *sheet) legend() {
 			x += wide + apart
 		}
 	})
+	if s.view.blank {
+		return
+	}
 	remark := "Heights are drawn " + s.view.exaggeration() + " times as large as distances, over an earth bent for " + kFactor(s.view.drawn.K) + "."
 	s.y += 31
 	s.text(marginLeft, s.y, face{size: 20, fill: quiet}, remark)
@@ -38,7 +41,10 @@ func (s *sheet) legendEntries() []legendEntry {
 	stroke := func(look string) func(x, y float64) {
 		return func(x, y float64) { s.line(x, y-7, x+legendSample, y-7, look) }
 	}
-	entries := []legendEntry{{"ground", area(`fill="` + earth + `" stroke="` + earthInk + `" stroke-width="2"`)}}
+	var entries []legendEntry
+	if v.a.Judgement.VoidShare < 1 {
+		entries = append(entries, legendEntry{"ground", area(`fill="` + earth + `" stroke="` + earthInk + `" stroke-width="2"`)})
+	}
 	if v.covered {
 		entries = append(entries, legendEntry{"cover", s.coverSample})
 	}
@@ -58,6 +64,9 @@ func (s *sheet) legendEntries() []legendEntry {
 			what = "ground and cover"
 		}
 		entries = append(entries, legendEntry{what + " at " + kFactor(v.second.K), stroke(secondLook)})
+	}
+	if v.a.Profile.OwnAM > 0 || v.a.Profile.OwnBM > 0 {
+		entries = append(entries, legendEntry{"own building, not judged", s.ownSample})
 	}
 	if v.a.Judgement.VoidShare > 0 {
 		entries = append(entries, legendEntry{"no data", s.voidSample})

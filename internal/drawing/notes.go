@@ -12,7 +12,7 @@ func (s *sheet) cautions() {
 		for _, c := range s.a.Cautions {
 			s.y += 28
 			s.line(marginLeft, s.y-7, marginLeft+14, s.y-7, `stroke="`+ink+`" stroke-width="3"`)
-			s.y = s.lines(marginLeft+28, s.y, 27, f, wrap(plain(c.Detail), f, marginRight-marginLeft-28)) - 22
+			s.y = s.lines(marginLeft+28, s.y, 27, f, wrapWhole(plain(c.Detail), f, marginRight-marginLeft-28)) - 22
 		}
 		s.y -= 5
 	})

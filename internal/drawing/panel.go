@@ -29,6 +29,7 @@ func (s *sheet) panel() {
 		s.secondTerrain()
 		s.voids()
 		s.zoneOutline()
+		s.own()
 		s.masts(top)
 		s.callouts(chosen, top+labelsTall)
 		s.distanceAxis()
@@ -46,6 +47,9 @@ func (s *sheet) panel() {
 // with their values at the left.
 func (s *sheet) grid() {
 	v := &s.view
+	if v.blank {
+		return // figures beside it would be made up
+	}
 	step := roundStep((v.high - v.low) / 7)
 	decimals := decimalsFor(step)
 	var curves [][]point
@@ -56,7 +60,7 @@ func (s *sheet) grid() {
 		}
 	}
 	s.path(`fill="none" stroke="`+faint+`" stroke-width="1"`, false, curves...)
-	s.upright(marginLeft+14, (v.plot.top+v.plot.bottom)/2, face{size: 20, fill: quiet, anchor: atMiddle}, "metres above sea level")
+	s.upright(marginLeft+14, (v.plot.top+v.plot.bottom)/2, face{size: 20, fill: quiet, anchor: atMiddle}, "metres above "+seaLevel(&v.a.Profile))
 }
 
 // levels are the heights that get a line. Those below the plot at its ends

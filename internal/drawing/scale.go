@@ -29,7 +29,7 @@ func (v *view) heights() (low, high float64) {
 		}
 	}
 	if low > high {
-		low, high = 0, 100 // nothing at all is known
+		low, high, v.blank = 0, 100, true
 	}
 	if lack := leastSpanM - (high - low); lack > 0 {
 		low, high = low-lack/2, high+lack/2

@@ -9,6 +9,7 @@ import (
 	"testing"
 
 	"ridgehop/internal/assess"
+	"ridgehop/profile"
 )
 
 func TestEveryCase(t *testing.T) {
@@ -51,6 +52,9 @@ func TestHostileNames(t *testing.T) {
 		a.Request.A.Name, a.Request.B.Name = name, name
 		a.Request.Radio.A.Radio.Name, a.Radio.Report.AToB.Target, a.Radio.Report.Reasons[0].Detail = name, name, name
 		a.Profile.Sources[0].Name, a.Profile.Sources[0].Version, a.ID = name, name, name
+		a.Profile.Sources[0].Attribution, a.Profile.Sources[0].Licence, a.Profile.VerticalDatum = name, name, name
+		a.Profile.DatumDoubts = []profile.DatumDoubt{{Source: name, From: name, SizeM: 3}}
+		a.Profile.Unreachable = []profile.Unreachable{{Source: name, Reason: name}}
 		a.Cautions = append(a.Cautions, assess.Caution{Code: "test", Detail: name})
 		out := draw(t, a)
 		walk(t, out)

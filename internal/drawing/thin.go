@@ -12,7 +12,10 @@ const (
 // thin picks the samples to draw as a line. Where they are few, all are. Of many,
 // each column of the drawing keeps its lowest and its highest, so that no
 // summit and no hollow is lost; a column without any value keeps one sample
-// without, so that a line breaks there. The first and the last sample are kept.
+// without, so that a line breaks there. The first and the last sample are kept,
+// and so are those on either side of columns without any, across which a line
+// would else start from a summit that it does not. Samples may lie at any
+// distances from each other.
 func thin(distances, values []float64, columns int) []int {
 	n := len(values)
 	picked := make([]int, 0, min(n, 2*columns+2))
@@ -24,23 +27,41 @@ func thin(distances, values []float64, columns int) []int {
 	}
 	columnOf := func(i int) int { return int(distances[i] / distances[n-1] * float64(columns)) }
 	picked = append(picked, 0)
+	before := 0
 	for i := 1; i < n-1; {
-		column := columnOf(i)
-		low, high := i, i
+		column, from := columnOf(i), i
 		for ; i < n-1 && columnOf(i) == column; i++ {
-			if values[i] < values[low] || math.IsNaN(values[low]) {
-				low = i
-			}
-			if values[i] > values[high] || math.IsNaN(values[high]) {
-				high = i
-			}
 		}
-		picked = append(picked, min(low, high))
-		if low != high {
-			picked = append(picked, max(low, high))
+		low, high := extremes(values, from, i)
+		low, high = min(low, high), max(low, high)
+		if column > before+1 && low > from {
+			picked = append(picked, from)
 		}
+		picked = append(picked, low)
+		if high > low {
+			picked = append(picked, high)
+		}
+		if columnOf(i) > column+1 && i-1 > high {
+			picked = append(picked, i-1)
+		}
+		before = column
 	}
 	return append(picked, n-1)
+}
+
+// extremes are the lowest and the highest of the values from one index to
+// before another; of those without one, the first.
+func extremes(values []float64, from, to int) (low, high int) {
+	low, high = from, from
+	for i := from; i < to; i++ {
+		if values[i] < values[low] || math.IsNaN(values[low]) {
+			low = i
+		}
+		if values[i] > values[high] || math.IsNaN(values[high]) {
+			high = i
+		}
+	}
+	return low, high
 }
 
 // runs splits the picked samples where values has none.

@@ -15,8 +15,9 @@ func TestThinKeepsPeaks(t *testing.T) {
 		peak := rapid.IntRange(0, n-1).Draw(r, "peak")
 		hollow := rapid.IntRange(0, n-1).Draw(r, "hollow")
 		distances, values := make([]float64, n), make([]float64, n)
+		crowd := rapid.Float64Range(0, 6).Draw(r, "crowd") // how much closer samples lie at A than at B
 		for i := range n {
-			distances[i], values[i] = float64(i)*7.3, math.Sin(float64(i))
+			distances[i], values[i] = 7.3*float64(n)*math.Pow(float64(i)/float64(n), 1+crowd), math.Sin(float64(i))
 		}
 		values[hollow], values[peak] = -9, 9
 		got := thin(distances, values, columns)
@@ -30,6 +31,29 @@ func TestThinKeepsPeaks(t *testing.T) {
 			r.Fatalf("peak %d or hollow %d of %d lost", peak, hollow, n)
 		}
 	})
+}
+
+// Samples a millimetre apart, and then a gap of many columns: the line across it
+// starts and ends where the samples do, not at a summit near by.
+func TestThinKeepsTheEdgesOfGaps(t *testing.T) {
+	var distances, values []float64
+	add := func(from float64) int {
+		for i := range 2000 {
+			distances, values = append(distances, from+float64(i)*1e-3), append(values, float64(100*(i%2)))
+		}
+		values[len(values)-1], values[len(values)-2000] = 50, 50
+		return len(values) - 1
+	}
+	add(0)
+	last := add(3000)
+	next := add(7000) - 1999
+	distances, values = append(distances, 10_000), append(values, 0)
+	got := thin(distances, values, allColumns)
+	for _, want := range []int{1999, 2000, last, next, len(values) - 2} {
+		if !slices.Contains(got, want) {
+			t.Errorf("got %v, want sample %d at %g m among them", got, want, distances[want])
+		}
+	}
 }
 
 func TestThinBreaksAtVoids(t *testing.T) {

@@ -28,10 +28,11 @@ type view struct {
 	ground        []float64 // terrain on the view; NaN is a void
 	top           []float64 // terrain and cover; the same slice where there is no cover
 	covered       bool
-	ratio         []float64 // clearance over first Fresnel radius; NaN at the ends and over voids
+	ratio         []float64 // clearance over first Fresnel radius; NaN over voids and where none is judged
 	bulgePer      float64   // bulge in metres over d1*d2
 	f1Per         float64   // first Fresnel radius squared over d1*d2
 	low, high     float64   // the heights at the bottom and top of the plot
+	blank         bool      // no height is known at all
 }
 
 func newView(a *assess.Assessment) view {
@@ -78,7 +79,12 @@ func (v *view) bend() {
 		}
 		v.ratio[i] = (s.LineM[i] - v.top[i]) / s.F1M[i]
 	}
-	v.ratio[0], v.ratio[n-1] = math.NaN(), math.NaN()
+	first, last := v.judged()
+	for i := range n {
+		if i < first || i > last {
+			v.ratio[i] = math.NaN()
+		}
+	}
 }
 
 // chooseSecond takes another k on board if it can be told from the first and
@@ -90,8 +96,8 @@ func (v *view) chooseSecond() {
 			rest = append(rest, c)
 		}
 	}
-	if len(rest) == 0 {
-		return
+	if len(rest) == 0 || v.a.Judgement.VoidShare == 1 {
+		return // no ground to draw another time
 	}
 	second := tightest(rest)
 	shift := v.bulge(v.lengthM/2) * math.Abs(v.drawn.K/second.K-1)

@@ -11,13 +11,14 @@ func (s *sheet) voids() {
 	for _, gap := range v.voidSpans() {
 		s.rect(gap.from, v.plot.top, gap.to-gap.from, v.plot.height(), `fill="`+paper+`" fill-opacity="0.75" stroke="`+quiet+`" stroke-width="1"`)
 		s.path(voidLook, false, hatch(box{gap.from, gap.to, v.plot.top, v.plot.bottom}, 14)...)
-		s.voidLabel(gap)
+		s.stretchLabel(gap, "no data")
 	}
 }
 
-// voidLabel names a void, upright if need be, where it is wide enough.
-func (s *sheet) voidLabel(gap span) {
-	const label, tall = "no data", 28.0
+// stretchLabel names a stretch of the plot, upright if need be, where it is wide
+// enough.
+func (s *sheet) stretchLabel(gap span, label string) {
+	const tall = 28.0
 	v := &s.view
 	f := face{size: 20, bold: true, anchor: atMiddle}
 	x, wide := (gap.from+gap.to)/2, textWidth(label, f)+12

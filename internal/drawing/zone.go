@@ -1,6 +1,9 @@
 package drawing
 
-import "math"
+import (
+	"math"
+	"slices"
+)
 
 const (
 	lineLook     = `stroke="` + ink + `" stroke-width="3"`
@@ -52,16 +55,19 @@ func (s *sheet) intrusion() {
 	if !v.known() {
 		return
 	}
-	n := len(v.top)
-	var shapes [][]point
-	for _, run := range runs(thin(v.a.Profile.DistanceM[:n-1], v.top[:n-1], allColumns), v.top) {
-		if run[0] == 0 {
-			run = run[1:] // the ends themselves are not judged
+	tops := slices.Clone(v.top)
+	first, last := v.judged()
+	for i := range tops {
+		if i < first || i > last {
+			tops[i] = math.NaN() // the ends and what they stand on are not judged
 		}
+	}
+	var shapes [][]point
+	for _, run := range runs(thin(v.a.Profile.DistanceM, tops, allColumns), tops) {
 		pairs := make([]pair, len(run))
 		for at, i := range run {
 			d := v.a.Profile.DistanceM[i]
-			pairs[at] = pair{v.x(d), v.y(v.top[i]), v.y(v.lineAt(d) - v.drawn.F1Fraction*v.f1(d))}
+			pairs[at] = pair{v.x(d), v.y(tops[i]), v.y(v.lineAt(d) - v.drawn.F1Fraction*v.f1(d))}
 		}
 		shapes = append(shapes, excess(pairs)...)
 	}

@@ -10,8 +10,8 @@ import (
 // kind: rasters that mean the same and are asked together.
 type source struct {
 	catalogue.Source
-	plain  bool // from a folder without a catalogue: errors and datums go by the file
-	tiles  *tiles
+	plain bool // from a folder without a catalogue: errors and datums go by the file
+	tiles *tiles
 }
 
 // outlined is a file of building outlines.
