@@ -38,10 +38,21 @@ func BenchmarkConfidence(b *testing.B) {
 	}
 }
 
-func BenchmarkConfidenceRaise(b *testing.B) {
-	c, ws := doubtfulPath(60), &confidenceScratch{}
-	b.ReportAllocs()
-	for b.Loop() {
-		c.raiseFor(0.9, 100, atA, ws)
+func BenchmarkExtraHeight(b *testing.B) {
+	for _, n := range []struct {
+		name     string
+		doubtful int
+	}{{"10 of 450", 10}, {"60", 60}, {"450", 450}} {
+		b.Run(n.name, func(b *testing.B) {
+			c, ws := doubtfulPath(n.doubtful), &confidenceScratch{}
+			for i := range n.doubtful {
+				c.marginM[i] -= 4
+			}
+			b.ReportAllocs()
+			for b.Loop() {
+				c.gather(ws)
+				c.extraHeight(DefaultRaiseCapM, ws)
+			}
+		})
 	}
 }

@@ -68,25 +68,29 @@ func newBridge(fromM, toM, correlationM float64) bridge {
 
 const (
 	// fewDraws chains are drawn, and fullDraws instead where the weights of the
-	// few spread; few alone where over manySamples are in doubt.
+	// few spread; few alone where their mean is far from ClearConfidence or over
+	// manySamples are in doubt.
 	fewDraws, fullDraws, manySamples = 64, 256, 2048
 	// fewSpread is the standard error of few independent draws that is let pass.
 	// These are spread evenly, and err about a third as much.
 	fewSpread = 0.006
+	// Below farFromClear nobody needs to know as well.
+	farFromClear = 0.7
 	// lostShare is the weight below which a draw adds nothing.
 	lostShare = 1e-6
 )
 
-// newErrorDraws orders the doubtful samples of ws, of which there is at least
-// one.
-func newErrorDraws(ws *confidenceScratch, endsAlike float64) errorDraws {
+// newErrorDraws orders the doubtful samples of ws, with the likeliest to fail
+// first.
+func newErrorDraws(ws *confidenceScratch, first int) errorDraws {
 	if ws.normal == nil {
 		ws.normal = newNormalTables()
 	}
-	d := errorDraws{ws: ws, endsAlike: endsAlike, endsApart: math.Sqrt(1 - endsAlike*endsAlike)}
 	all := ws.doubtful
-	d.firstZ = likeliest(all, 0, len(all))
-	d.first = &all[d.firstZ]
+	d := errorDraws{
+		ws: ws, first: &all[first], firstZ: first,
+		endsAlike: ws.endsAlike, endsApart: math.Sqrt(1 - ws.endsAlike*ws.endsAlike),
+	}
 	d.condition()
 	ws.z = resized(ws.z, len(all)+slotSamples)
 	ws.steps = ws.steps[:0]
@@ -168,14 +172,10 @@ func (d *errorDraws) condition() {
 	d.moveZ = (f.perA*rA + f.perB*rB - f.errorM) * perVariance
 }
 
-// probability is the mean weight of the draws.
-func (d *errorDraws) probability() float64 {
-	firstHolds := normalCDF(d.first.sigmas)
-	if len(d.ws.steps) == 0 || firstHolds < lostShare {
-		return firstHolds
-	}
+// probability is the mean weight of the draws, given that of the first sample.
+func (d *errorDraws) probability(firstHolds float64) float64 {
 	mean, spread := d.mean(fewDraws, firstHolds)
-	if spread < fewSpread*math.Sqrt(fewDraws) || len(d.ws.steps) > manySamples {
+	if spread < fewSpread*math.Sqrt(fewDraws) || mean < farFromClear || len(d.ws.steps) > manySamples {
 		return mean
 	}
 	mean, _ = d.mean(fullDraws, firstHolds)

@@ -8,8 +8,8 @@ import (
 	"pgregory.net/rapid"
 )
 
-// Two estimates, each within 0.022, and a little more.
-const confidenceNoise = 0.05
+// Two estimates, each within 0.035.
+const confidenceNoise = 0.07
 
 func drawErrorChain(t *rapid.T, most int) *errorChain {
 	shape := rapid.IntRange(0, len(marginShapes)-1).Draw(t, "shape")
@@ -95,50 +95,4 @@ func TestConfidenceIsTheSameFromB(t *testing.T) {
 		}
 	})
 	t.Logf("largest difference %.4f", worst)
-}
-
-func TestConfidenceRaise(t *testing.T) {
-	ws := &confidenceScratch{}
-	rapid.Check(t, func(t *rapid.T) {
-		c := drawErrorChain(t, 50)
-		by := rapid.SampledFrom([]lever{atA, atB, atBoth}).Draw(t, "lever")
-		probability := rapid.SampledFrom([]float64{0.5, 0.9, 0.99}).Draw(t, "probability")
-		m := c.raiseFor(probability, DefaultRaiseCapM, by, ws)
-		after := func(raiseM float64) float64 {
-			raised := c.clone()
-			for i, d := range raised.distanceM {
-				raised.marginM[i] += raiseM * by(d/c.lengthM)
-			}
-			return raised.confidence(ws)
-		}
-		if got := after(m); !(got >= probability) {
-			t.Fatalf("raised by %g m: got %g, want %g", m, got, probability)
-		}
-		if m == 0 {
-			return
-		}
-		if got := after(m - 1.0/raiseSteps); got > probability+1e-9 {
-			t.Fatalf("raised by 1 cm less than %g m: got %g already", m, got)
-		}
-		if got := c.raiseFor(probability, m, by, ws); got != m {
-			t.Fatalf("with itself for cap: got %g, want %g", got, m)
-		}
-		if got := c.raiseFor(probability, m/2, by, ws); !math.IsNaN(got) && after(got) < probability {
-			t.Fatalf("with half the cap: got %g", got)
-		}
-	})
-}
-
-// The raise that makes one sample sure is known.
-func TestConfidenceRaiseOfOneSample(t *testing.T) {
-	c, ws := lone(2, 300, -5), &confidenceScratch{}
-	want := math.Ceil((5+2*1.2815515655446004)/0.5*100) / 100 // the quantile of 0.9
-	near(t, "at a", c.raiseFor(0.9, 100, atA, ws), want, 1e-9)
-	if got := c.raiseFor(0.9, 15, atA, ws); !math.IsNaN(got) {
-		t.Errorf("beyond the cap: got %g, want NaN", got)
-	}
-	c.marginM[0] = 50
-	if got := c.raiseFor(0.9, 100, atA, ws); got != 0 {
-		t.Errorf("sure already: got %g, want 0", got)
-	}
 }

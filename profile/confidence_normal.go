@@ -1,6 +1,9 @@
 package profile
 
-import "math"
+import (
+	"math"
+	"math/rand/v2"
+)
 
 // normalCDF is the probability that a standard normal value is at most x, to
 // about 1e-15 relative where x > -1 and 1e-13 in the tail, as math.Erfc has it.
@@ -99,4 +102,45 @@ func isPrime(p int) bool {
 		}
 	}
 	return true
+}
+
+const (
+	// So many draws have values of their own, and so many orders are shuffled.
+	fieldBits, shuffleBits = 10, 3
+	// golden is 2^32 over the golden ratio: its multiples stay far apart. Source:
+	// D. E. Knuth, The Art of Computer Programming, volume 3, 6.4 (from memory).
+	golden = 2654435769
+)
+
+// fieldNormals are the normal values of an error field: in each coordinate the
+// same, the midpoints of fieldDraws equally likely parts, in another order. That
+// is Latin hypercube sampling. Source: M. D. McKay, R. J. Beckman and W. J.
+// Conover, Technometrics 21 (1979) 239-245 (from memory).
+type fieldNormals struct {
+	// shuffled has the first values again at the end.
+	shuffled [1 << shuffleBits][fieldDraws + blockDraws]float64
+}
+
+func newFieldNormals() *fieldNormals {
+	f := &fieldNormals{}
+	var inOrder [fieldDraws]float64
+	for i := range inOrder {
+		inOrder[i] = normalQuantile((float64(i) + 0.5) / fieldDraws)
+	}
+	for k := range f.shuffled {
+		s := f.shuffled[k][:fieldDraws]
+		copy(s, inOrder[:])
+		r := rand.New(rand.NewPCG(uint64(k), 0))
+		r.Shuffle(fieldDraws, func(i, j int) { s[i], s[j] = s[j], s[i] })
+		copy(f.shuffled[k][fieldDraws:], s)
+	}
+	return f
+}
+
+// block is the values of one coordinate for the draws from from on: one of the
+// shuffled orders, from a place of its own on.
+func (f *fieldNormals) block(coordinate int32, from int) *drawBlock {
+	place := uint32(coordinate) * golden >> (32 - shuffleBits - fieldBits)
+	at := (int(place) + from) % fieldDraws
+	return (*drawBlock)(f.shuffled[place>>fieldBits][at:])
 }
