@@ -17,41 +17,83 @@ func (g *geometry) judgeConfidence(link *Link, out *Assessment, ws *Workspace) {
 	}
 	last := len(g.p.DistanceM) - 1
 	a, b := g.p.endError(link.HeightAFrom, 0), g.p.endError(link.HeightBFrom, last)
-	if g.surelyHolds(out.Clearance, certainSigmas*(max(a.errorM, b.errorM)+g.p.largestError())) {
+	if g.surelyHolds(link.Criteria, certainSigmas*(max(a.errorM, b.errorM)+g.p.largestError())) {
 		out.Confidence, out.ExtraHeight = 1, ExtraHeight{}
 		return
 	}
 	c := &ws.chain
 	c.a, c.b = a, b
-	g.fillMargins(out.Clearance, c)
+	g.fillMargins(g.relieved(link.Criteria, math.Hypot(max(a.errorM, b.errorM), g.p.largestError())), c)
 	g.fillErrors(c)
+	if link.WithoutExtraHeight {
+		out.Confidence = c.errorChain.confidence(&c.confidenceScratch)
+		return
+	}
 	out.Confidence, out.ExtraHeight = c.judge(out.Raise.CapM, &c.confidenceScratch)
 }
 
-// margins are the criteria as they bear on one sample, of the fractions that the
-// judgement asked for.
+// doubtSigmas is how many sigmas below its full fraction an error may bring a
+// sample, for the question what would be an obstruction: the normal
+// distribution's 90th percentile, like ClearConfidence.
+const doubtSigmas = 1.2816
+
+// margins are the criteria as they bear on one sample.
 type margins struct {
 	number          int
 	bulge, fraction [maxCriteria]float64
 }
 
-func newMargins(found []Clearance) margins {
-	m := margins{number: len(found)}
-	for k, f := range found {
-		m.bulge[k], m.fraction[k] = bulgeFactor(f.K), f.F1Fraction-ratioTolerance
+// newMargins is that of the criteria's full fractions.
+func newMargins(criteria []Criterion) margins {
+	m := margins{number: len(criteria)}
+	for k, c := range criteria {
+		m.bulge[k], m.fraction[k] = bulgeFactor(c.K), c.F1Fraction-ratioTolerance
 	}
 	return m
+}
+
+// relieved is the criteria with the smaller fraction of those whose relief holds
+// whatever the errors do: all that they may bring below the full fraction lies
+// within the span of an isolated obstruction. Without errors that is the rule of
+// the judgement. More clearance only makes the span shorter, and larger errors
+// only longer, so that neither can turn the confidence the wrong way.
+func (g *geometry) relieved(criteria []Criterion, sigmaM float64) margins {
+	m := newMargins(criteria)
+	for k, c := range criteria {
+		if c.IsolatedF1Fraction < c.F1Fraction && g.doubtfulSpanM(m.bulge[k], m.fraction[k], doubtSigmas*sigmaM) <= isolatedSpanM(g.lengthM) {
+			m.fraction[k] = c.IsolatedF1Fraction - ratioTolerance
+		}
+	}
+	return m
+}
+
+// doubtfulSpanM is the distance from the first to the last sample that has less
+// than so much to spare.
+func (g *geometry) doubtfulSpanM(bulge, fraction, spareM float64) float64 {
+	first, last := -1, -1
+	for i := g.first; i <= g.last; i++ {
+		if clearanceM, f1M := g.at(i, bulge); clearanceM-fraction*f1M < spareM {
+			if first < 0 {
+				first = i
+			}
+			last = i
+		}
+	}
+	if first < 0 {
+		return 0
+	}
+	return g.p.DistanceM[last] - g.p.DistanceM[first]
 }
 
 // surelyHolds is whether every sample has at least so much to spare. It may deny
 // it of a path that does, but it is quick: the Fresnel radius, the root of x =
 // f1Scale d1 d2, is at most (x/r + r)/2 with r that of the middle of the path,
 // for the geometric mean of x/r and r is at most the arithmetic one.
-func (g *geometry) surelyHolds(found []Clearance, spareM float64) bool {
-	m := newMargins(found)
+func (g *geometry) surelyHolds(criteria []Criterion, spareM float64) bool {
+	m := newMargins(criteria)
 	middle := math.Sqrt(g.f1Scale) * g.lengthM / 2
 	var perW, fixed [maxCriteria]float64
-	for k := range found {
+	for k := range criteria {
 		half := max(m.fraction[k], 0) / 2
 		perW[k], fixed[k] = m.bulge[k]+half*g.f1Scale/middle, half*middle+spareM
 	}
@@ -70,11 +112,10 @@ func (g *geometry) surelyHolds(found []Clearance, spareM float64) bool {
 
 // fillMargins lays out what each judged sample has to spare, by the criterion
 // that leaves least.
-func (g *geometry) fillMargins(found []Clearance, c *judgedChain) {
+func (g *geometry) fillMargins(m margins, c *judgedChain) {
 	c.lengthM = g.lengthM
 	c.distanceM = g.p.DistanceM[g.first : g.last+1]
 	c.marginM = resized(c.marginM, len(c.distanceM))
-	m := newMargins(found)
 	bulges := m.bulge[:m.number]
 	for i, d1 := range c.distanceM {
 		w := d1 * (g.lengthM - d1)

@@ -34,8 +34,6 @@ type Assessment struct {
 	// there to send over.
 	Radio    *RadioAnswer
 	Cautions []Caution
-
-	brief bool // without the extra height, which costs more than all the rest
 }
 
 // identify computes the id: a hash of the canonical request, the rasters that it

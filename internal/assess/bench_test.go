@@ -77,7 +77,7 @@ func BenchmarkJudge(b *testing.B) {
 		b.Run(c.name, func(b *testing.B) {
 			r, a, ws := rollingLink(c.heightM), &Assessment{}, &profile.Workspace{}
 			r.SpacingM = c.spacingM
-			if err := service.judge(context.Background(), r, a, ws); err != nil {
+			if err := service.judge(context.Background(), r, a, ws, whole); err != nil {
 				b.Fatal(err)
 			}
 			if a.Judgement.Verdict != c.want {
@@ -85,7 +85,7 @@ func BenchmarkJudge(b *testing.B) {
 			}
 			b.ReportAllocs()
 			for b.Loop() {
-				if err := service.judge(context.Background(), r, a, ws); err != nil {
+				if err := service.judge(context.Background(), r, a, ws, whole); err != nil {
 					b.Fatal(err)
 				}
 			}

@@ -16,7 +16,6 @@ func (a *Assessment) place(path profile.Path) error {
 	}
 	a.Link = profile.Link{
 		Path: path, FrequencyGHz: a.Request.FrequencyGHz, Polarisation: a.Request.Polarisation, Criteria: criteria,
-		WithoutExtraHeight: a.brief,
 	}
 	var f findings
 	a.Link.AntennaAM, a.Link.HeightAFrom = a.amsl(a.Request.A, 0, "/a", &f)

@@ -24,7 +24,7 @@ func BenchmarkJudgeRadio(b *testing.B) {
 	var ws profile.Workspace
 	b.ReportAllocs()
 	for b.Loop() {
-		if err := service.judge(context.Background(), request, &a, &ws); err != nil {
+		if err := service.judge(context.Background(), request, &a, &ws, whole); err != nil {
 			b.Fatal(err)
 		}
 	}

@@ -38,16 +38,24 @@ func (s *Service) Assess(ctx context.Context, request Request) (*Assessment, err
 	ws, _ := s.workspaces.Get().(*profile.Workspace)
 	defer s.workspaces.Put(ws)
 	a := &Assessment{}
-	if err := s.judge(ctx, request, a, ws); err != nil {
+	if err := s.judge(ctx, request, a, ws, whole); err != nil {
 		return nil, err
 	}
 	a.Cautions = a.cautions()
 	return a, a.identify()
 }
 
+// depth is how much of a judgement is wanted.
+type depth bool
+
+const (
+	whole depth = false
+	brief depth = true // without the extra height, which may cost more than all the rest
+)
+
 // judge does the work of Assess up to the judgement, reusing the memory of a's
 // profile and of ws.
-func (s *Service) judge(ctx context.Context, request Request, a *Assessment, ws *profile.Workspace) error {
+func (s *Service) judge(ctx context.Context, request Request, a *Assessment, ws *profile.Workspace, how depth) error {
 	a.Request, a.Engine = request.withDefaults(), EngineVersion
 	a.Asked = a.Request
 	path, err := a.Request.path()
@@ -62,6 +70,7 @@ func (s *Service) judge(ctx context.Context, request Request, a *Assessment, ws 
 		return err
 	}
 	a.markOwnBuildings()
+	a.Link.WithoutExtraHeight = how == brief
 	if a.Judgement, err = profile.Assess(&a.Link, &a.Profile, ws); err != nil {
 		return err
 	}

@@ -168,7 +168,7 @@ func TestReusedMemory(t *testing.T) {
 		{nil, points},
 		{land(profile.KindGround, flat), covered},
 	} {
-		if err := NewService(turn.terrain).judge(context.Background(), turn.request, a, ws); err != nil {
+		if err := NewService(turn.terrain).judge(context.Background(), turn.request, a, ws, whole); err != nil {
 			t.Fatal(err)
 		}
 		want := judged(t, turn.terrain, turn.request)

@@ -22,8 +22,7 @@ func (s *Service) NewWorker() *Worker { return &Worker{service: s} }
 // Assess.
 func (w *Worker) Judge(ctx context.Context, request Request) (*Assessment, error) {
 	w.judged.Radio = nil
-	w.judged.brief = true
-	if err := w.service.judge(ctx, request, &w.judged, &w.ws); err != nil {
+	if err := w.service.judge(ctx, request, &w.judged, &w.ws, brief); err != nil {
 		return nil, err
 	}
 	return &w.judged, nil

@@ -21,6 +21,7 @@ type cursor struct {
 	// the path is in), and the tile that it belongs to.
 	i0, j0, columns, rows int
 	heights               []float32
+	chunk                 *chunk
 	tile                  int32
 	// The same as bounds for interpolation: its first pixel's column and row,
 	// and how far from it the last four pixels begin.
@@ -148,14 +149,14 @@ func (c *cursor) fetch(n int32, i, j int) error {
 	got, err := c.chunks.at(c.ctx, t.entry, x, j-t.j)
 	if unreachable(err) {
 		c.noteAway(t.entry, err)
-		c.columns, c.rows, c.uEnd, c.vEnd = 0, 0, 0, 0
+		c.columns, c.rows, c.uEnd, c.vEnd, c.chunk = 0, 0, 0, 0, nil
 		return nil
 	}
 	if err != nil {
 		return err
 	}
 	c.i0, c.j0 = i-x+got.x, t.j+got.y
-	c.columns, c.rows, c.heights = got.width, got.height, got.heights
+	c.columns, c.rows, c.heights, c.chunk = got.width, got.height, got.heights, got
 	c.tile = n
 	c.u0, c.v0 = float64(c.i0), float64(c.j0)
 	c.uEnd, c.vEnd = float64(c.columns-1), float64(c.rows-1)

@@ -15,6 +15,7 @@ type walk struct {
 	lengthM float64
 	out     *strip
 	sources *sources
+	joined  *chunk // the chunk of the last stretch, if it lay within one
 }
 
 // level is one mosaic under the path.
@@ -129,25 +130,28 @@ func (w *walk) leg(l int, p *piece, t0, t1, voidFrom float64) (float64, error) {
 type stretch struct{ a, b, ua, va, ub, vb float64 }
 
 // cellAtHand lays the stretch within one cell where all of its corners are known
-// and lie in the chunk at hand, and the stretch before it is of the same raster:
-// all but a few. It is cell, short of everything else.
+// and lie in the chunk at hand, as those of the cell before did: all but a few. It
+// is cell, short of everything else. The edge that both cells share has one
+// height, so that only that of the far end is worked out.
 func (w *walk) cellAtHand(cur *cursor, c *stretch) bool {
-	i, j := math.Floor((c.ua+c.ub)/2), math.Floor((c.va+c.vb)/2)
+	i, j := math.Floor((c.ua+c.ub)*0.5), math.Floor((c.va+c.vb)*0.5)
 	a, b, n := int(i)-cur.i0, int(j)-cur.j0, len(w.out.nodes)
-	if a < 0 || b < 0 || a+1 >= cur.columns || b+1 >= cur.rows || n == 0 || cur.tile != w.sources.lastTile || cur.m != w.sources.last {
+	if a < 0 || b < 0 || a+1 >= cur.columns || b+1 >= cur.rows || w.joined != cur.chunk || n == 0 {
 		return false
 	}
 	at := b*cur.columns + a
 	upper, lower := cur.heights[at:at+2:at+2], cur.heights[at+cur.columns:at+cur.columns+2]
-	h := [4]float64{float64(upper[0]), float64(upper[1]), float64(lower[0]), float64(lower[1])}
-	from, to, bend := across(&h, c.ua-i, c.va-j, c.ub-i, c.vb-j)
+	north, south := float64(upper[0]), float64(lower[0])
+	east := float64(upper[1]) - north
+	twist := float64(lower[1]) - south - east
+	x, y := c.ub-i, c.vb-j
 	last := &w.out.nodes[n-1]
-	// With a void corner the heights are NaN, and nothing is near that.
-	if last.at != c.a || last.source != w.sources.lastAt || !(math.Abs(last.height-from) <= sameM) || to != to {
+	bend := -twist * (c.ub - c.ua) * (c.vb - c.va) / ((c.b - c.a) * (c.b - c.a))
+	if bend != bend || last.at != c.a { // a corner is void
 		return false
 	}
-	last.bend = bend / ((c.b - c.a) * (c.b - c.a))
-	w.out.nodes = append(w.out.nodes, stripNode{at: c.b, height: to, source: last.source})
+	last.bend = bend
+	w.out.nodes = append(w.out.nodes, stripNode{at: c.b, height: north + x*east + y*(south-north+x*twist), source: last.source})
 	return true
 }
 
@@ -176,8 +180,12 @@ func (w *walk) cell(l int, c *stretch, p *piece, voidFrom float64) (float64, err
 			return voidFrom, err
 		}
 	}
-	from, to, bend := across(&h, c.ua-i, c.va-j, c.ub-i, c.vb-j)
+	from, to, bend := across(h, c.ua-i, c.va-j, c.ub-i, c.vb-j)
 	w.out.known(c.a, from, c.b, to, bend/((c.b-c.a)*(c.b-c.a)), w.sources.of(level.mosaic, tile))
+	w.joined = nil
+	if ok && w.out.nodes[len(w.out.nodes)-1].at == c.b {
+		w.joined = level.cur.chunk
+	}
 	return math.NaN(), nil
 }
 
@@ -189,7 +197,7 @@ func (w *walk) cell(l int, c *stretch, p *piece, voidFrom float64) (float64, err
 //	h0 + x east + y south + x y twist
 //
 // and along a straight line x y is a square of t.
-func across(h *[4]float64, xa, ya, xb, yb float64) (from, to, bend float64) {
+func across(h [4]float64, xa, ya, xb, yb float64) (from, to, bend float64) {
 	east, south := h[1]-h[0], h[2]-h[0]
 	twist := h[0] - h[1] - h[2] + h[3]
 	from = h[0] + xa*east + ya*(south+xa*twist)
