@@ -10,6 +10,10 @@ import (
 func (m *mosaic) spansUnder(legs []leg) []span {
 	var out []span
 	for i := range legs {
+		if m.oneTileUnder(&legs[i]) {
+			out = append(out, span{legs[i].distance(legs[i].from), legs[i].distance(legs[i].to)})
+			continue
+		}
 		for _, at := range m.tilesUnder(&legs[i]) {
 			if s, ok := legs[i].within(m.tiles[at.tile], at.shift); ok {
 				out = append(out, s)
@@ -38,6 +42,21 @@ func joined(spans []span) []span {
 		out = append(out, s)
 	}
 	return out
+}
+
+// oneTileUnder reports whether a tile holds both ends of a leg, and so, since the
+// leg turns nowhere, all of it: what most paths are.
+func (m *mosaic) oneTileUnder(l *leg) bool {
+	u0, v0 := l.at(l.distance(l.from))
+	u1, v1 := l.at(l.distance(l.to))
+	for shift := range m.turns(u0) {
+		for _, n := range m.index[cellOf(int(math.Floor(u0+shift)), int(math.Floor(v0)))] {
+			if t := m.tiles[n]; t.holds(u0+shift, v0) && t.holds(u1+shift, v1) {
+				return true
+			}
+		}
+	}
+	return false
 }
 
 // placedTile is a tile, and by how many columns the path is to be moved to
