@@ -103,9 +103,14 @@ type content struct {
 	known    *string // the caller's If-None-Match
 }
 
-func (c content) write(w http.ResponseWriter) error {
+// etag is the strong tag of the body.
+func (c content) etag() string {
 	sum := sha256.Sum256(c.body)
-	etag := `"` + hex.EncodeToString(sum[:12]) + `"`
+	return `"` + hex.EncodeToString(sum[:12]) + `"`
+}
+
+func (c content) write(w http.ResponseWriter) error {
+	etag := c.etag()
 	w.Header().Set("ETag", etag)
 	w.Header().Set("Cache-Control", "no-cache") // keep, but ask whether it still holds
 	if c.location != "" {

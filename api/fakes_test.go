@@ -14,6 +14,7 @@ import (
 	"testing"
 
 	"ridgehop/internal/assess"
+	"ridgehop/internal/screening/sites"
 	"ridgehop/internal/store"
 	"ridgehop/internal/telemetry"
 	"ridgehop/profile"
@@ -133,7 +134,7 @@ func service(t testing.TB, change func(*Dependencies)) http.Handler {
 		t.Fatal(err)
 	}
 	d := Dependencies{
-		Antennas: antennas, Radios: radios,
+		Antennas: antennas, Radios: radios, Sites: sites.NewRegister(&siteShelf{kept: map[string][]byte{}}),
 		Assessor: assess.NewService(hills{}).WithEquipment(assess.Equipment{Antennas: antennas, Radios: radios}), Keeper: &memory{kept: map[string]store.Assessment{}}, Lister: listed{}, Elevation: height{},
 		Health:  telemetry.NewHealth(telemetry.Check{Name: "store", Run: func(context.Context) (string, error) { return "answers", nil }}),
 		Metrics: telemetry.NewMetrics(), Log: slog.New(slog.DiscardHandler), MostAtOnce: 16,

@@ -7,10 +7,8 @@ import (
 	"errors"
 	"io"
 	"log/slog"
-	"mime"
 	"net/http"
 	"reflect"
-	"strconv"
 	"time"
 
 	"github.com/labstack/echo/v4"
@@ -141,28 +139,38 @@ type binder struct {
 
 // Bind implements echo.Binder.
 func (b binder) Bind(into any, c echo.Context) error {
+	if list, ok := into.(*SiteCollection); ok { // of ImportSitesGeojson
+		body, err := wholeBody(c.Request().Body)
+		*list = body
+		return err
+	}
 	schema := map[reflect.Type]string{
 		reflect.TypeFor[*CreateAssessmentJSONRequestBody](): "AssessmentRequest",
 		reflect.TypeFor[*CreateAntennaJSONRequestBody]():    "Antenna",
 		reflect.TypeFor[*CreateRadioJSONRequestBody]():      "Radio",
+		reflect.TypeFor[*SiteRequest]():                     "SiteRequest", // of CreateSite and PutSite
 	}[reflect.TypeOf(into)]
 	if schema == "" {
 		return errors.New("a body that the contract does not know")
 	}
-	given := c.Request().Header.Get(echo.HeaderContentType)
-	kind, _, err := mime.ParseMediaType(given)
-	if err != nil || kind != echo.MIMEApplicationJSON {
-		return mediaType.problem("Content-Type is %s; send the request as application/json.", strconv.Quote(given))
+	if err := takes(echo.MIMEApplicationJSON, c.Request().Header); err != nil {
+		return err
 	}
-	if packed := c.Request().Header.Get(echo.HeaderContentEncoding); packed != "" {
-		return mediaType.problem("Content-Encoding is %s; send the body as it is.", strconv.Quote(packed))
-	}
-	body, err := io.ReadAll(c.Request().Body)
-	if _, limit := errors.AsType[*echo.HTTPError](err); err != nil && !limit {
-		return badRequest.problem("The body broke off before its end.")
-	}
+	body, err := wholeBody(c.Request().Body)
 	if err != nil {
 		return err
 	}
 	return b.contract.decode(schema, body, into)
+}
+
+// wholeBody reads a body to its end. One over its limit is the error of who set
+// it.
+func wholeBody(r io.Reader) ([]byte, error) {
+	body, err := io.ReadAll(r)
+	_, tooLong := errors.AsType[*echo.HTTPError](err)
+	_, tooLongList := errors.AsType[*http.MaxBytesError](err)
+	if err != nil && !tooLong && !tooLongList {
+		return nil, badRequest.problem("The body broke off before its end.")
+	}
+	return body, err
 }

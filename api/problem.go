@@ -10,6 +10,8 @@ import (
 	"github.com/labstack/echo/v4"
 
 	"ridgehop/internal/assess"
+	"ridgehop/internal/screening/intake"
+	"ridgehop/internal/screening/sites"
 	"ridgehop/internal/store"
 )
 
@@ -28,10 +30,12 @@ var (
 	badRequest  = problemKind{"bad-request", "The request cannot be understood", http.StatusBadRequest, "A part of the request other than its body is not what the contract says."}
 	notFound    = problemKind{"not-found", "There is nothing here", http.StatusNotFound, "No resource has this address or id."}
 	notAllowed  = problemKind{"method-not-allowed", "This cannot be done here", http.StatusMethodNotAllowed, "The resource exists, but not for this method."}
-	conflict    = problemKind{"conflict", "This does not go together with what is there", http.StatusConflict, "A name is taken, or an entry is not one's own to take away."}
+	conflict    = problemKind{"conflict", "This does not go together with what is there", http.StatusConflict, "A name or an id is taken, or an entry is not one's own to take away."}
+	changed     = problemKind{"precondition-failed", "This is not what it was", http.StatusPreconditionFailed, "If-Match names another state than the one that is kept: somebody changed it, or took it away. Read it again before changing it. Nothing was changed."}
 	tooLarge    = problemKind{"too-large", "The body is too large", http.StatusRequestEntityTooLarge, "The detail names the limit."}
-	mediaType   = problemKind{"unsupported-media-type", "The body is of the wrong type", http.StatusUnsupportedMediaType, "Send JSON, as application/json."}
+	mediaType   = problemKind{"unsupported-media-type", "The body is of the wrong type", http.StatusUnsupportedMediaType, "Send JSON as application/json; a list as its address says, text/csv or application/geo+json."}
 	invalid     = problemKind{"invalid-request", "The request does not hold together", http.StatusUnprocessableEntity, "The errors name each field at fault and what would be right."}
+	badList     = problemKind{"unreadable-list", "The list cannot be read", http.StatusUnprocessableEntity, "The list as a whole cannot be read, or not to its end; the detail says where and what would be right. Nothing of it was kept."}
 	notReloaded = problemKind{"rasters-not-reloaded", "The rasters could not be loaded anew; those in use stay", http.StatusUnprocessableEntity, "The catalogue or a folder cannot be used as it stands; the detail says what is wrong. Answers go on with the rasters in use."}
 	internal    = problemKind{"internal", "Something failed here", http.StatusInternalServerError, "The fault is the server's; its log has the request's id."}
 	unreadable  = problemKind{"raster-unreadable", "A raster could not be read", http.StatusServiceUnavailable, "The detail names it. Nothing was judged, since a part of the terrain is missing."}
@@ -42,7 +46,7 @@ var (
 
 // problemKinds lists them for the page of the contract.
 func problemKinds() []problemKind {
-	return []problemKind{malformed, badRequest, notFound, notAllowed, conflict, tooLarge, mediaType, invalid, notReloaded, internal, unreadable, unavailable, overloaded, tooSlow}
+	return []problemKind{malformed, badRequest, notFound, notAllowed, conflict, changed, tooLarge, mediaType, invalid, badList, notReloaded, internal, unreadable, unavailable, overloaded, tooSlow}
 }
 
 // ProblemError is a problem document as an error.
@@ -70,6 +74,9 @@ func problemOf(err error) *ProblemError {
 		ready      *ProblemError
 		request    *assess.InvalidError
 		raster     *assess.UnreadableError
+		list       *intake.ListError
+		long       *intake.TooManyRowsError
+		large      *http.MaxBytesError
 		fromRouter *echo.HTTPError
 	)
 	switch {
@@ -85,6 +92,18 @@ func problemOf(err error) *ProblemError {
 		return notFound.problem("No assessment has this id.")
 	case errors.Is(err, assess.ErrNameTaken), errors.Is(err, assess.ErrNotOwn):
 		return conflict.problem("%v.", err)
+	case errors.As(err, &list):
+		return badList.problem("%v.", list)
+	case errors.As(err, &long):
+		return badList.problem("%v.", long)
+	case errors.As(err, &large):
+		return tooLarge.problem("A list may have %d bytes.", large.Limit)
+	case errors.Is(err, sites.ErrNoSite):
+		return notFound.problem("No site has this id.")
+	case errors.Is(err, sites.ErrIDTaken):
+		return conflict.problem("The id is that of another site; PUT to its address replaces it.")
+	case errors.Is(err, sites.ErrChanged):
+		return changed.problem("If-Match does not name the site as it is; GET it again.")
 	case errors.Is(err, store.ErrUnavailable):
 		return unavailable.problem("%v", err)
 	case errors.Is(err, context.Canceled):

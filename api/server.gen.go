@@ -385,6 +385,27 @@ func (e RasterKind) Valid() bool {
 	}
 }
 
+// Defines values for SitePolarisation.
+const (
+	SitePolarisationHorizontal SitePolarisation = "horizontal"
+	SitePolarisationSlant      SitePolarisation = "slant"
+	SitePolarisationVertical   SitePolarisation = "vertical"
+)
+
+// Valid indicates whether the value is a known member of the SitePolarisation enum.
+func (e SitePolarisation) Valid() bool {
+	switch e {
+	case SitePolarisationHorizontal:
+		return true
+	case SitePolarisationSlant:
+		return true
+	case SitePolarisationVertical:
+		return true
+	default:
+		return false
+	}
+}
+
 // Defines values for Verdict.
 const (
 	Clear      Verdict = "clear"
@@ -409,6 +430,24 @@ func (e Verdict) Valid() bool {
 	}
 }
 
+// Defines values for Existing.
+const (
+	ExistingRefuse  Existing = "refuse"
+	ExistingReplace Existing = "replace"
+)
+
+// Valid indicates whether the value is a known member of the Existing enum.
+func (e Existing) Valid() bool {
+	switch e {
+	case ExistingRefuse:
+		return true
+	case ExistingReplace:
+		return true
+	default:
+		return false
+	}
+}
+
 // Defines values for GetAssessmentParamsInclude.
 const (
 	GetAssessmentParamsIncludeSamples GetAssessmentParamsInclude = "samples"
@@ -418,6 +457,42 @@ const (
 func (e GetAssessmentParamsInclude) Valid() bool {
 	switch e {
 	case GetAssessmentParamsIncludeSamples:
+		return true
+	default:
+		return false
+	}
+}
+
+// Defines values for ImportSitesCsvParamsExisting.
+const (
+	ImportSitesCsvParamsExistingRefuse  ImportSitesCsvParamsExisting = "refuse"
+	ImportSitesCsvParamsExistingReplace ImportSitesCsvParamsExisting = "replace"
+)
+
+// Valid indicates whether the value is a known member of the ImportSitesCsvParamsExisting enum.
+func (e ImportSitesCsvParamsExisting) Valid() bool {
+	switch e {
+	case ImportSitesCsvParamsExistingRefuse:
+		return true
+	case ImportSitesCsvParamsExistingReplace:
+		return true
+	default:
+		return false
+	}
+}
+
+// Defines values for ImportSitesGeojsonParamsExisting.
+const (
+	ImportSitesGeojsonParamsExistingRefuse  ImportSitesGeojsonParamsExisting = "refuse"
+	ImportSitesGeojsonParamsExistingReplace ImportSitesGeojsonParamsExisting = "replace"
+)
+
+// Valid indicates whether the value is a known member of the ImportSitesGeojsonParamsExisting enum.
+func (e ImportSitesGeojsonParamsExisting) Valid() bool {
+	switch e {
+	case ImportSitesGeojsonParamsExistingRefuse:
+		return true
+	case ImportSitesGeojsonParamsExistingReplace:
 		return true
 	default:
 		return false
@@ -1702,6 +1777,21 @@ type Reassessment struct {
 	Changes []Change `json:"changes"`
 }
 
+// RowNote A word about one row of a list. `field` and `detail` read on as one sentence.
+type RowNote struct {
+	// Line The row's line, from 1; in GeoJSON the number of its feature.
+	Line int32 `json:"line"`
+
+	// Id The id in the row; left out where none could be read.
+	Id *string `json:"id,omitempty"`
+
+	// Field The column or member at fault; left out where it is about the whole row.
+	Field *string `json:"field,omitempty"`
+
+	// Detail What is wrong, and what would be right.
+	Detail string `json:"detail"`
+}
+
 // Samples The arrays behind the answer, one entry a sample from A to B. Null is a place without a height.
 type Samples struct {
 	// K The k-factor of bulge_m.
@@ -1724,6 +1814,155 @@ type Samples struct {
 
 	// F1M First Fresnel radius, metres.
 	F1M []float64 `json:"f1_m"`
+}
+
+// Site A site, as it is kept.
+type Site struct {
+	// Id Names the site: letters, digits, point, underscore and hyphen, a letter or digit first.
+	Id string `json:"id"`
+
+	// Name What people call the place; may be empty.
+	Name string `json:"name"`
+
+	// Lon Longitude, WGS 84 degrees, east positive.
+	Lon float64 `json:"lon"`
+
+	// Lat Latitude, WGS 84 degrees, north positive.
+	Lat float64 `json:"lat"`
+
+	// AntennaHeightM Height of the antenna's centre above what `height_above` says, metres: 0 to 1000 above ground or roof, -500 to 10000 above sea level.
+	AntennaHeightM float64 `json:"antenna_height_m"`
+
+	// HeightAbove What the antenna height is measured from. `roof` is the top of what stands at that point: of the surface, or of the
+	// canopy or buildings known there.
+	HeightAbove HeightAbove `json:"height_above"`
+
+	// FrequencyGhz Frequency of the site, GHz; left out, not stated.
+	FrequencyGhz *float64 `json:"frequency_ghz,omitempty"`
+
+	// Polarisation Polarisation of the site's antennas; left out, not stated.
+	Polarisation *SitePolarisation `json:"polarisation,omitempty"`
+
+	// RangeM How far the site serves, metres; left out, not stated.
+	RangeM *float64 `json:"range_m,omitempty"`
+
+	// Sectors What the antennas serve.
+	Sectors []SiteSector `json:"sectors"`
+
+	// CreatedAt When it was first kept, UTC.
+	CreatedAt time.Time `json:"created_at"`
+
+	// ChangedAt When it became what it is, UTC.
+	ChangedAt time.Time `json:"changed_at"`
+}
+
+// SiteCollection Sites as GeoJSON, one feature a sector.
+type SiteCollection = json.RawMessage
+
+// SiteImport What became of a list of sites. What was not counted stands in the problems.
+type SiteImport struct {
+	// Created Sites that are new.
+	Created int32 `json:"created"`
+
+	// Replaced Sites that stand in place of another.
+	Replaced int32 `json:"replaced"`
+
+	// Unchanged Sites that were there as they are; counted where existing ones may be replaced.
+	Unchanged int32 `json:"unchanged"`
+
+	// Problems Rows that were not kept, by line; the first thousand.
+	Problems []RowNote `json:"problems"`
+
+	// MoreProblems How many problems more there are; left out if none.
+	MoreProblems *int32 `json:"more_problems,omitempty"`
+
+	// Warnings Rows that were kept as they stand and are worth a look; the first thousand.
+	Warnings []RowNote `json:"warnings"`
+
+	// MoreWarnings How many warnings more there are; left out if none.
+	MoreWarnings *int32 `json:"more_warnings,omitempty"`
+}
+
+// SiteList One page of the sites.
+type SiteList struct {
+	// Sites By id, in the order of its bytes.
+	Sites []Site `json:"sites"`
+
+	// NextPageToken The `page_token` of the next page; left out on the last one.
+	NextPageToken *string `json:"next_page_token,omitempty"`
+}
+
+// SitePolarisation Polarisation of the site's antennas; left out, not stated.
+type SitePolarisation string
+
+// SiteRequest A place with radio equipment, or with room for it.
+type SiteRequest struct {
+	// Id Names the site: letters, digits, point, underscore and hyphen, a letter or digit first.
+	Id string `json:"id"`
+
+	// Name What people call the place.
+	Name *string `json:"name,omitempty"`
+
+	// Lon Longitude, WGS 84 degrees, east positive.
+	Lon float64 `json:"lon"`
+
+	// Lat Latitude, WGS 84 degrees, north positive.
+	Lat float64 `json:"lat"`
+
+	// AntennaHeightM Height of the antenna's centre above what `height_above` says, metres: 0 to 1000 above ground or roof, -500 to 10000 above sea level.
+	AntennaHeightM float64 `json:"antenna_height_m"`
+
+	// HeightAbove What the antenna height is measured from. `roof` is the top of what stands at that point: of the surface, or of the
+	// canopy or buildings known there.
+	HeightAbove *HeightAbove `json:"height_above,omitempty"`
+
+	// FrequencyGhz Frequency of the site, GHz; left out, not stated.
+	FrequencyGhz *float64 `json:"frequency_ghz,omitempty"`
+
+	// Polarisation Polarisation of the site's antennas; left out, not stated.
+	Polarisation *SitePolarisation `json:"polarisation,omitempty"`
+
+	// RangeM How far the site serves, metres; left out, not stated.
+	RangeM *float64 `json:"range_m,omitempty"`
+
+	// Sectors What the antennas serve; left out or empty, one sector all round.
+	Sectors *[]SiteSectorRequest `json:"sectors,omitempty"`
+}
+
+// SiteSector What one antenna of a site serves, as it is kept.
+type SiteSector struct {
+	// AzimuthDeg Where its middle points, degrees clockwise from true north.
+	AzimuthDeg float64 `json:"azimuth_deg"`
+
+	// WidthDeg Its width, degrees, more than 0; 360 is all round.
+	WidthDeg float64 `json:"width_deg"`
+
+	// TiltDeg Tilt of the antenna, degrees, up positive, so that a downtilt is negative.
+	TiltDeg float64 `json:"tilt_deg"`
+
+	// Antenna Name of its antenna; left out, not stated.
+	Antenna *string `json:"antenna,omitempty"`
+
+	// Radio Name of its radio; left out, not stated.
+	Radio *string `json:"radio,omitempty"`
+}
+
+// SiteSectorRequest What one antenna of a site serves.
+type SiteSectorRequest struct {
+	// AzimuthDeg Where its middle points, degrees clockwise from true north.
+	AzimuthDeg float64 `json:"azimuth_deg"`
+
+	// WidthDeg Its width, degrees, more than 0; 360 is all round.
+	WidthDeg *float64 `json:"width_deg,omitempty"`
+
+	// TiltDeg Tilt of the antenna, degrees, up positive, so that a downtilt is negative.
+	TiltDeg *float64 `json:"tilt_deg,omitempty"`
+
+	// Antenna Name of its antenna; left out, not stated.
+	Antenna *string `json:"antenna,omitempty"`
+
+	// Radio Name of its radio; left out, not stated.
+	Radio *string `json:"radio,omitempty"`
 }
 
 // Spared What it spares at one end, dB.
@@ -1913,11 +2152,20 @@ type Void struct {
 // AssessmentId defines model for AssessmentId.
 type AssessmentId = string
 
+// Existing defines model for Existing.
+type Existing string
+
+// IfMatch defines model for IfMatch.
+type IfMatch = string
+
 // IfNoneMatch defines model for IfNoneMatch.
 type IfNoneMatch = string
 
 // RegisterName defines model for RegisterName.
 type RegisterName = string
+
+// SiteId defines model for SiteId.
+type SiteId = string
 
 // GetAssessmentParams defines parameters for GetAssessment.
 type GetAssessmentParams struct {
@@ -1952,6 +2200,51 @@ type GetRasterCoverageParams struct {
 	IfNoneMatch *IfNoneMatch `json:"If-None-Match,omitempty"`
 }
 
+// ListSitesParams defines parameters for ListSites.
+type ListSitesParams struct {
+	// PageSize How many sites a page has at most.
+	PageSize *int32 `form:"page_size,omitempty" json:"page_size,omitempty"`
+
+	// PageToken The `next_page_token` of the page before; left out, the first page.
+	PageToken *string `form:"page_token,omitempty" json:"page_token,omitempty"`
+}
+
+// ImportSitesCsvParams defines parameters for ImportSitesCsv.
+type ImportSitesCsvParams struct {
+	// Existing What becomes of a site whose id is taken. `refuse` makes it a problem of its row, `replace` puts the new one in its place.
+	Existing *ImportSitesCsvParamsExisting `form:"existing,omitempty" json:"existing,omitempty"`
+}
+
+// ImportSitesCsvParamsExisting defines parameters for ImportSitesCsv.
+type ImportSitesCsvParamsExisting string
+
+// ImportSitesGeojsonParams defines parameters for ImportSitesGeojson.
+type ImportSitesGeojsonParams struct {
+	// Existing What becomes of a site whose id is taken. `refuse` makes it a problem of its row, `replace` puts the new one in its place.
+	Existing *ImportSitesGeojsonParamsExisting `form:"existing,omitempty" json:"existing,omitempty"`
+}
+
+// ImportSitesGeojsonParamsExisting defines parameters for ImportSitesGeojson.
+type ImportSitesGeojsonParamsExisting string
+
+// DeleteSiteParams defines parameters for DeleteSite.
+type DeleteSiteParams struct {
+	// IfMatch The ETag of the site as the caller knows it; if it is another by now, nothing is changed and the answer is 412.
+	IfMatch *IfMatch `json:"If-Match,omitempty"`
+}
+
+// GetSiteParams defines parameters for GetSite.
+type GetSiteParams struct {
+	// IfNoneMatch The ETag that the caller has; the answer is 304 if it still holds.
+	IfNoneMatch *IfNoneMatch `json:"If-None-Match,omitempty"`
+}
+
+// PutSiteParams defines parameters for PutSite.
+type PutSiteParams struct {
+	// IfMatch The ETag of the site as the caller knows it; if it is another by now, nothing is changed and the answer is 412.
+	IfMatch *IfMatch `json:"If-Match,omitempty"`
+}
+
 // CreateAntennaJSONRequestBody defines body for CreateAntenna for application/json ContentType.
 type CreateAntennaJSONRequestBody = Antenna
 
@@ -1960,6 +2253,15 @@ type CreateAssessmentJSONRequestBody = AssessmentRequest
 
 // CreateRadioJSONRequestBody defines body for CreateRadio for application/json ContentType.
 type CreateRadioJSONRequestBody = Radio
+
+// CreateSiteJSONRequestBody defines body for CreateSite for application/json ContentType.
+type CreateSiteJSONRequestBody = SiteRequest
+
+// ImportSitesGeojsonApplicationGeoPlusJSONRequestBody defines body for ImportSitesGeojson for application/geo+json ContentType.
+type ImportSitesGeojsonApplicationGeoPlusJSONRequestBody = SiteCollection
+
+// PutSiteJSONRequestBody defines body for PutSite for application/json ContentType.
+type PutSiteJSONRequestBody = SiteRequest
 
 // ServerInterface represents all server handlers.
 type ServerInterface interface {
@@ -2017,6 +2319,33 @@ type ServerInterface interface {
 	// ReloadRasters Load the rasters anew
 	// (POST /v1/rasters/reload)
 	ReloadRasters(ctx echo.Context) error
+	// ListSites The sites, page by page
+	// (GET /v1/sites)
+	ListSites(ctx echo.Context, params ListSitesParams) error
+	// CreateSite Add a site
+	// (POST /v1/sites)
+	CreateSite(ctx echo.Context) error
+	// ExportSitesCsv All sites, as CSV
+	// (GET /v1/sites/export.csv)
+	ExportSitesCsv(ctx echo.Context) error
+	// ExportSitesGeojson All sites, as GeoJSON
+	// (GET /v1/sites/export.geojson)
+	ExportSitesGeojson(ctx echo.Context) error
+	// ImportSitesCsv Add many sites, from CSV
+	// (POST /v1/sites/import.csv)
+	ImportSitesCsv(ctx echo.Context, params ImportSitesCsvParams) error
+	// ImportSitesGeojson Add many sites, from GeoJSON
+	// (POST /v1/sites/import.geojson)
+	ImportSitesGeojson(ctx echo.Context, params ImportSitesGeojsonParams) error
+	// DeleteSite Take a site away
+	// (DELETE /v1/sites/{id})
+	DeleteSite(ctx echo.Context, id SiteId, params DeleteSiteParams) error
+	// GetSite Read a site
+	// (GET /v1/sites/{id})
+	GetSite(ctx echo.Context, id SiteId, params GetSiteParams) error
+	// PutSite Replace a site, or add it
+	// (PUT /v1/sites/{id})
+	PutSite(ctx echo.Context, id SiteId, params PutSiteParams) error
 }
 
 // ServerInterfaceWrapper converts echo contexts to parameters.
@@ -2317,6 +2646,202 @@ func (w *ServerInterfaceWrapper) ReloadRasters(ctx echo.Context) error {
 	return err
 }
 
+// ListSites converts echo context to params.
+func (w *ServerInterfaceWrapper) ListSites(ctx echo.Context) error {
+	var err error
+
+	// Parameter object where we will unmarshal all parameters from the context
+	var params ListSitesParams
+	// ------------- Optional query parameter "page_size" -------------
+
+	err = runtime.BindQueryParameterWithOptions("form", true, false, "page_size", ctx.QueryParams(), &params.PageSize, runtime.BindQueryParameterOptions{Type: "integer", Format: "int32"})
+	if err != nil {
+		return echo.NewHTTPError(http.StatusBadRequest, fmt.Sprintf("Invalid format for parameter page_size: %s", err))
+	}
+
+	// ------------- Optional query parameter "page_token" -------------
+
+	err = runtime.BindQueryParameterWithOptions("form", true, false, "page_token", ctx.QueryParams(), &params.PageToken, runtime.BindQueryParameterOptions{Type: "string", Format: ""})
+	if err != nil {
+		return echo.NewHTTPError(http.StatusBadRequest, fmt.Sprintf("Invalid format for parameter page_token: %s", err))
+	}
+
+	// Invoke the callback with all the unmarshaled arguments
+	err = w.Handler.ListSites(ctx, params)
+	return err
+}
+
+// CreateSite converts echo context to params.
+func (w *ServerInterfaceWrapper) CreateSite(ctx echo.Context) error {
+	var err error
+
+	// Invoke the callback with all the unmarshaled arguments
+	err = w.Handler.CreateSite(ctx)
+	return err
+}
+
+// ExportSitesCsv converts echo context to params.
+func (w *ServerInterfaceWrapper) ExportSitesCsv(ctx echo.Context) error {
+	var err error
+
+	// Invoke the callback with all the unmarshaled arguments
+	err = w.Handler.ExportSitesCsv(ctx)
+	return err
+}
+
+// ExportSitesGeojson converts echo context to params.
+func (w *ServerInterfaceWrapper) ExportSitesGeojson(ctx echo.Context) error {
+	var err error
+
+	// Invoke the callback with all the unmarshaled arguments
+	err = w.Handler.ExportSitesGeojson(ctx)
+	return err
+}
+
+// ImportSitesCsv converts echo context to params.
+func (w *ServerInterfaceWrapper) ImportSitesCsv(ctx echo.Context) error {
+	var err error
+
+	// Parameter object where we will unmarshal all parameters from the context
+	var params ImportSitesCsvParams
+	// ------------- Optional query parameter "existing" -------------
+
+	err = runtime.BindQueryParameterWithOptions("form", true, false, "existing", ctx.QueryParams(), &params.Existing, runtime.BindQueryParameterOptions{Type: "string", Format: ""})
+	if err != nil {
+		return echo.NewHTTPError(http.StatusBadRequest, fmt.Sprintf("Invalid format for parameter existing: %s", err))
+	}
+
+	// Invoke the callback with all the unmarshaled arguments
+	err = w.Handler.ImportSitesCsv(ctx, params)
+	return err
+}
+
+// ImportSitesGeojson converts echo context to params.
+func (w *ServerInterfaceWrapper) ImportSitesGeojson(ctx echo.Context) error {
+	var err error
+
+	// Parameter object where we will unmarshal all parameters from the context
+	var params ImportSitesGeojsonParams
+	// ------------- Optional query parameter "existing" -------------
+
+	err = runtime.BindQueryParameterWithOptions("form", true, false, "existing", ctx.QueryParams(), &params.Existing, runtime.BindQueryParameterOptions{Type: "string", Format: ""})
+	if err != nil {
+		return echo.NewHTTPError(http.StatusBadRequest, fmt.Sprintf("Invalid format for parameter existing: %s", err))
+	}
+
+	// Invoke the callback with all the unmarshaled arguments
+	err = w.Handler.ImportSitesGeojson(ctx, params)
+	return err
+}
+
+// DeleteSite converts echo context to params.
+func (w *ServerInterfaceWrapper) DeleteSite(ctx echo.Context) error {
+	var err error
+	// ------------- Path parameter "id" -------------
+	var id SiteId
+
+	err = runtime.BindStyledParameterWithOptions("simple", "id", ctx.Param("id"), &id, runtime.BindStyledParameterOptions{ParamLocation: runtime.ParamLocationPath, Explode: false, Required: true, Type: "string", Format: "", ValueIsUnescaped: ctx.Request().URL.RawPath == ""})
+	if err != nil {
+		return echo.NewHTTPError(http.StatusBadRequest, fmt.Sprintf("Invalid format for parameter id: %s", err))
+	}
+
+	// Parameter object where we will unmarshal all parameters from the context
+	var params DeleteSiteParams
+
+	headers := ctx.Request().Header
+	// ------------- Optional header parameter "If-Match" -------------
+	if valueList, found := headers[http.CanonicalHeaderKey("If-Match")]; found {
+		var IfMatch IfMatch
+		n := len(valueList)
+		if n != 1 {
+			return echo.NewHTTPError(http.StatusBadRequest, fmt.Sprintf("Expected one value for If-Match, got %d", n))
+		}
+
+		err = runtime.BindStyledParameterWithOptions("simple", "If-Match", valueList[0], &IfMatch, runtime.BindStyledParameterOptions{ParamLocation: runtime.ParamLocationHeader, Explode: false, Required: false, Type: "string", Format: ""})
+		if err != nil {
+			return echo.NewHTTPError(http.StatusBadRequest, fmt.Sprintf("Invalid format for parameter If-Match: %s", err))
+		}
+
+		params.IfMatch = &IfMatch
+	}
+
+	// Invoke the callback with all the unmarshaled arguments
+	err = w.Handler.DeleteSite(ctx, id, params)
+	return err
+}
+
+// GetSite converts echo context to params.
+func (w *ServerInterfaceWrapper) GetSite(ctx echo.Context) error {
+	var err error
+	// ------------- Path parameter "id" -------------
+	var id SiteId
+
+	err = runtime.BindStyledParameterWithOptions("simple", "id", ctx.Param("id"), &id, runtime.BindStyledParameterOptions{ParamLocation: runtime.ParamLocationPath, Explode: false, Required: true, Type: "string", Format: "", ValueIsUnescaped: ctx.Request().URL.RawPath == ""})
+	if err != nil {
+		return echo.NewHTTPError(http.StatusBadRequest, fmt.Sprintf("Invalid format for parameter id: %s", err))
+	}
+
+	// Parameter object where we will unmarshal all parameters from the context
+	var params GetSiteParams
+
+	headers := ctx.Request().Header
+	// ------------- Optional header parameter "If-None-Match" -------------
+	if valueList, found := headers[http.CanonicalHeaderKey("If-None-Match")]; found {
+		var IfNoneMatch IfNoneMatch
+		n := len(valueList)
+		if n != 1 {
+			return echo.NewHTTPError(http.StatusBadRequest, fmt.Sprintf("Expected one value for If-None-Match, got %d", n))
+		}
+
+		err = runtime.BindStyledParameterWithOptions("simple", "If-None-Match", valueList[0], &IfNoneMatch, runtime.BindStyledParameterOptions{ParamLocation: runtime.ParamLocationHeader, Explode: false, Required: false, Type: "string", Format: ""})
+		if err != nil {
+			return echo.NewHTTPError(http.StatusBadRequest, fmt.Sprintf("Invalid format for parameter If-None-Match: %s", err))
+		}
+
+		params.IfNoneMatch = &IfNoneMatch
+	}
+
+	// Invoke the callback with all the unmarshaled arguments
+	err = w.Handler.GetSite(ctx, id, params)
+	return err
+}
+
+// PutSite converts echo context to params.
+func (w *ServerInterfaceWrapper) PutSite(ctx echo.Context) error {
+	var err error
+	// ------------- Path parameter "id" -------------
+	var id SiteId
+
+	err = runtime.BindStyledParameterWithOptions("simple", "id", ctx.Param("id"), &id, runtime.BindStyledParameterOptions{ParamLocation: runtime.ParamLocationPath, Explode: false, Required: true, Type: "string", Format: "", ValueIsUnescaped: ctx.Request().URL.RawPath == ""})
+	if err != nil {
+		return echo.NewHTTPError(http.StatusBadRequest, fmt.Sprintf("Invalid format for parameter id: %s", err))
+	}
+
+	// Parameter object where we will unmarshal all parameters from the context
+	var params PutSiteParams
+
+	headers := ctx.Request().Header
+	// ------------- Optional header parameter "If-Match" -------------
+	if valueList, found := headers[http.CanonicalHeaderKey("If-Match")]; found {
+		var IfMatch IfMatch
+		n := len(valueList)
+		if n != 1 {
+			return echo.NewHTTPError(http.StatusBadRequest, fmt.Sprintf("Expected one value for If-Match, got %d", n))
+		}
+
+		err = runtime.BindStyledParameterWithOptions("simple", "If-Match", valueList[0], &IfMatch, runtime.BindStyledParameterOptions{ParamLocation: runtime.ParamLocationHeader, Explode: false, Required: false, Type: "string", Format: ""})
+		if err != nil {
+			return echo.NewHTTPError(http.StatusBadRequest, fmt.Sprintf("Invalid format for parameter If-Match: %s", err))
+		}
+
+		params.IfMatch = &IfMatch
+	}
+
+	// Invoke the callback with all the unmarshaled arguments
+	err = w.Handler.PutSite(ctx, id, params)
+	return err
+}
+
 // This is a simple interface which specifies echo.Route addition functions which
 // are present on both echo.Echo and echo.Group, since we want to allow using
 // either of them for path registration
@@ -2380,6 +2905,15 @@ func RegisterHandlersWithOptions(router EchoRouter, si ServerInterface, options 
 	router.POST(options.BaseURL+"/v1/radios", wrapper.CreateRadio, options.OperationMiddlewares["createRadio"]...)
 	router.DELETE(options.BaseURL+"/v1/radios/:name", wrapper.DeleteRadio, options.OperationMiddlewares["deleteRadio"]...)
 	router.GET(options.BaseURL+"/v1/radios/:name", wrapper.GetRadio, options.OperationMiddlewares["getRadio"]...)
+	router.GET(options.BaseURL+"/v1/sites", wrapper.ListSites, options.OperationMiddlewares["listSites"]...)
+	router.POST(options.BaseURL+"/v1/sites", wrapper.CreateSite, options.OperationMiddlewares["createSite"]...)
+	router.DELETE(options.BaseURL+"/v1/sites/:id", wrapper.DeleteSite, options.OperationMiddlewares["deleteSite"]...)
+	router.GET(options.BaseURL+"/v1/sites/:id", wrapper.GetSite, options.OperationMiddlewares["getSite"]...)
+	router.PUT(options.BaseURL+"/v1/sites/:id", wrapper.PutSite, options.OperationMiddlewares["putSite"]...)
+	router.POST(options.BaseURL+"/v1/sites/import.csv", wrapper.ImportSitesCsv, options.OperationMiddlewares["importSitesCsv"]...)
+	router.POST(options.BaseURL+"/v1/sites/import.geojson", wrapper.ImportSitesGeojson, options.OperationMiddlewares["importSitesGeojson"]...)
+	router.GET(options.BaseURL+"/v1/sites/export.csv", wrapper.ExportSitesCsv, options.OperationMiddlewares["exportSitesCsv"]...)
+	router.GET(options.BaseURL+"/v1/sites/export.geojson", wrapper.ExportSitesGeojson, options.OperationMiddlewares["exportSitesGeojson"]...)
 	router.GET(options.BaseURL+"/livez", wrapper.GetLive, options.OperationMiddlewares["getLive"]...)
 	router.GET(options.BaseURL+"/readyz", wrapper.GetReady, options.OperationMiddlewares["getReady"]...)
 
@@ -3791,6 +4325,884 @@ func (response ReloadRasters503ApplicationProblemPlusJSONResponse) VisitReloadRa
 	return err
 }
 
+type ListSitesRequestObject struct {
+	Params ListSitesParams
+}
+
+type ListSitesResponseObject interface {
+	VisitListSitesResponse(w http.ResponseWriter) error
+}
+
+type ListSites200JSONResponse SiteList
+
+func (response ListSites200JSONResponse) VisitListSitesResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/json")
+	w.WriteHeader(200)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ListSites400ApplicationProblemPlusJSONResponse struct {
+	ProblemApplicationProblemPlusJSONResponse
+}
+
+func (response ListSites400ApplicationProblemPlusJSONResponse) VisitListSitesResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(400)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ListSites500ApplicationProblemPlusJSONResponse Problem
+
+func (response ListSites500ApplicationProblemPlusJSONResponse) VisitListSitesResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(500)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ListSites503ApplicationProblemPlusJSONResponse Problem
+
+func (response ListSites503ApplicationProblemPlusJSONResponse) VisitListSitesResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(503)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type CreateSiteRequestObject struct {
+	Body *CreateSiteJSONRequestBody
+}
+
+type CreateSiteResponseObject interface {
+	VisitCreateSiteResponse(w http.ResponseWriter) error
+}
+
+type CreateSite201ResponseHeaders struct {
+	ETag     *string
+	Location *string
+}
+
+type CreateSite201JSONResponse struct {
+	Body    Site
+	Headers CreateSite201ResponseHeaders
+}
+
+func (response CreateSite201JSONResponse) VisitCreateSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response.Body); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/json")
+	if response.Headers.ETag != nil {
+		w.Header().Set("ETag", fmt.Sprint(*response.Headers.ETag))
+	}
+	if response.Headers.Location != nil {
+		w.Header().Set("Location", fmt.Sprint(*response.Headers.Location))
+	}
+	w.WriteHeader(201)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type CreateSite400ApplicationProblemPlusJSONResponse struct {
+	ProblemApplicationProblemPlusJSONResponse
+}
+
+func (response CreateSite400ApplicationProblemPlusJSONResponse) VisitCreateSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(400)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type CreateSite409ApplicationProblemPlusJSONResponse Problem
+
+func (response CreateSite409ApplicationProblemPlusJSONResponse) VisitCreateSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(409)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type CreateSite413ApplicationProblemPlusJSONResponse Problem
+
+func (response CreateSite413ApplicationProblemPlusJSONResponse) VisitCreateSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(413)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type CreateSite415ApplicationProblemPlusJSONResponse Problem
+
+func (response CreateSite415ApplicationProblemPlusJSONResponse) VisitCreateSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(415)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type CreateSite422ApplicationProblemPlusJSONResponse Problem
+
+func (response CreateSite422ApplicationProblemPlusJSONResponse) VisitCreateSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(422)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type CreateSite500ApplicationProblemPlusJSONResponse Problem
+
+func (response CreateSite500ApplicationProblemPlusJSONResponse) VisitCreateSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(500)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type CreateSite503ApplicationProblemPlusJSONResponse Problem
+
+func (response CreateSite503ApplicationProblemPlusJSONResponse) VisitCreateSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(503)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ExportSitesCsvRequestObject struct {
+}
+
+type ExportSitesCsvResponseObject interface {
+	VisitExportSitesCsvResponse(w http.ResponseWriter) error
+}
+
+type ExportSitesCsv200TextcsvResponse struct {
+	Body          io.Reader
+	ContentLength int64
+}
+
+func (response ExportSitesCsv200TextcsvResponse) VisitExportSitesCsvResponse(w http.ResponseWriter) error {
+
+	w.Header().Set("Content-Type", "text/csv")
+	if response.ContentLength != 0 {
+		w.Header().Set("Content-Length", fmt.Sprint(response.ContentLength))
+	}
+	w.WriteHeader(200)
+
+	if closer, ok := response.Body.(io.ReadCloser); ok {
+		defer closer.Close()
+	}
+	_, err := io.Copy(w, response.Body)
+	return err
+}
+
+type ExportSitesCsv500ApplicationProblemPlusJSONResponse struct {
+	ProblemApplicationProblemPlusJSONResponse
+}
+
+func (response ExportSitesCsv500ApplicationProblemPlusJSONResponse) VisitExportSitesCsvResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(500)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ExportSitesCsv503ApplicationProblemPlusJSONResponse Problem
+
+func (response ExportSitesCsv503ApplicationProblemPlusJSONResponse) VisitExportSitesCsvResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(503)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ExportSitesGeojsonRequestObject struct {
+}
+
+type ExportSitesGeojsonResponseObject interface {
+	VisitExportSitesGeojsonResponse(w http.ResponseWriter) error
+}
+
+type ExportSitesGeojson200ApplicationGeoPlusJSONResponse SiteCollection
+
+func (response ExportSitesGeojson200ApplicationGeoPlusJSONResponse) VisitExportSitesGeojsonResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/geo+json")
+	w.WriteHeader(200)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ExportSitesGeojson500ApplicationProblemPlusJSONResponse struct {
+	ProblemApplicationProblemPlusJSONResponse
+}
+
+func (response ExportSitesGeojson500ApplicationProblemPlusJSONResponse) VisitExportSitesGeojsonResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(500)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ExportSitesGeojson503ApplicationProblemPlusJSONResponse Problem
+
+func (response ExportSitesGeojson503ApplicationProblemPlusJSONResponse) VisitExportSitesGeojsonResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(503)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ImportSitesCsvRequestObject struct {
+	Params ImportSitesCsvParams
+	Body   io.Reader
+}
+
+type ImportSitesCsvResponseObject interface {
+	VisitImportSitesCsvResponse(w http.ResponseWriter) error
+}
+
+type ImportSitesCsv200JSONResponse SiteImport
+
+func (response ImportSitesCsv200JSONResponse) VisitImportSitesCsvResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/json")
+	w.WriteHeader(200)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ImportSitesCsv400ApplicationProblemPlusJSONResponse struct {
+	ProblemApplicationProblemPlusJSONResponse
+}
+
+func (response ImportSitesCsv400ApplicationProblemPlusJSONResponse) VisitImportSitesCsvResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(400)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ImportSitesCsv413ApplicationProblemPlusJSONResponse Problem
+
+func (response ImportSitesCsv413ApplicationProblemPlusJSONResponse) VisitImportSitesCsvResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(413)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ImportSitesCsv415ApplicationProblemPlusJSONResponse Problem
+
+func (response ImportSitesCsv415ApplicationProblemPlusJSONResponse) VisitImportSitesCsvResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(415)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ImportSitesCsv422ApplicationProblemPlusJSONResponse Problem
+
+func (response ImportSitesCsv422ApplicationProblemPlusJSONResponse) VisitImportSitesCsvResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(422)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ImportSitesCsv500ApplicationProblemPlusJSONResponse Problem
+
+func (response ImportSitesCsv500ApplicationProblemPlusJSONResponse) VisitImportSitesCsvResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(500)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ImportSitesCsv503ApplicationProblemPlusJSONResponse Problem
+
+func (response ImportSitesCsv503ApplicationProblemPlusJSONResponse) VisitImportSitesCsvResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(503)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ImportSitesGeojsonRequestObject struct {
+	Params ImportSitesGeojsonParams
+	Body   *ImportSitesGeojsonApplicationGeoPlusJSONRequestBody
+}
+
+type ImportSitesGeojsonResponseObject interface {
+	VisitImportSitesGeojsonResponse(w http.ResponseWriter) error
+}
+
+type ImportSitesGeojson200JSONResponse SiteImport
+
+func (response ImportSitesGeojson200JSONResponse) VisitImportSitesGeojsonResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/json")
+	w.WriteHeader(200)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ImportSitesGeojson400ApplicationProblemPlusJSONResponse struct {
+	ProblemApplicationProblemPlusJSONResponse
+}
+
+func (response ImportSitesGeojson400ApplicationProblemPlusJSONResponse) VisitImportSitesGeojsonResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(400)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ImportSitesGeojson413ApplicationProblemPlusJSONResponse Problem
+
+func (response ImportSitesGeojson413ApplicationProblemPlusJSONResponse) VisitImportSitesGeojsonResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(413)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ImportSitesGeojson415ApplicationProblemPlusJSONResponse Problem
+
+func (response ImportSitesGeojson415ApplicationProblemPlusJSONResponse) VisitImportSitesGeojsonResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(415)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ImportSitesGeojson422ApplicationProblemPlusJSONResponse Problem
+
+func (response ImportSitesGeojson422ApplicationProblemPlusJSONResponse) VisitImportSitesGeojsonResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(422)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ImportSitesGeojson500ApplicationProblemPlusJSONResponse Problem
+
+func (response ImportSitesGeojson500ApplicationProblemPlusJSONResponse) VisitImportSitesGeojsonResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(500)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type ImportSitesGeojson503ApplicationProblemPlusJSONResponse Problem
+
+func (response ImportSitesGeojson503ApplicationProblemPlusJSONResponse) VisitImportSitesGeojsonResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(503)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type DeleteSiteRequestObject struct {
+	Id     SiteId `json:"id"`
+	Params DeleteSiteParams
+}
+
+type DeleteSiteResponseObject interface {
+	VisitDeleteSiteResponse(w http.ResponseWriter) error
+}
+
+type DeleteSite204Response struct {
+}
+
+func (response DeleteSite204Response) VisitDeleteSiteResponse(w http.ResponseWriter) error {
+	w.WriteHeader(204)
+	return nil
+}
+
+type DeleteSite400ApplicationProblemPlusJSONResponse struct {
+	ProblemApplicationProblemPlusJSONResponse
+}
+
+func (response DeleteSite400ApplicationProblemPlusJSONResponse) VisitDeleteSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(400)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type DeleteSite404ApplicationProblemPlusJSONResponse Problem
+
+func (response DeleteSite404ApplicationProblemPlusJSONResponse) VisitDeleteSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(404)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type DeleteSite412ApplicationProblemPlusJSONResponse Problem
+
+func (response DeleteSite412ApplicationProblemPlusJSONResponse) VisitDeleteSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(412)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type DeleteSite500ApplicationProblemPlusJSONResponse Problem
+
+func (response DeleteSite500ApplicationProblemPlusJSONResponse) VisitDeleteSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(500)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type DeleteSite503ApplicationProblemPlusJSONResponse Problem
+
+func (response DeleteSite503ApplicationProblemPlusJSONResponse) VisitDeleteSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(503)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type GetSiteRequestObject struct {
+	Id     SiteId `json:"id"`
+	Params GetSiteParams
+}
+
+type GetSiteResponseObject interface {
+	VisitGetSiteResponse(w http.ResponseWriter) error
+}
+
+type GetSite200ResponseHeaders struct {
+	ETag *string
+}
+
+type GetSite200JSONResponse struct {
+	Body    Site
+	Headers GetSite200ResponseHeaders
+}
+
+func (response GetSite200JSONResponse) VisitGetSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response.Body); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/json")
+	if response.Headers.ETag != nil {
+		w.Header().Set("ETag", fmt.Sprint(*response.Headers.ETag))
+	}
+	w.WriteHeader(200)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type GetSite304Response struct {
+}
+
+func (response GetSite304Response) VisitGetSiteResponse(w http.ResponseWriter) error {
+	w.WriteHeader(304)
+	return nil
+}
+
+type GetSite400ApplicationProblemPlusJSONResponse struct {
+	ProblemApplicationProblemPlusJSONResponse
+}
+
+func (response GetSite400ApplicationProblemPlusJSONResponse) VisitGetSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(400)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type GetSite404ApplicationProblemPlusJSONResponse Problem
+
+func (response GetSite404ApplicationProblemPlusJSONResponse) VisitGetSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(404)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type GetSite500ApplicationProblemPlusJSONResponse Problem
+
+func (response GetSite500ApplicationProblemPlusJSONResponse) VisitGetSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(500)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type GetSite503ApplicationProblemPlusJSONResponse Problem
+
+func (response GetSite503ApplicationProblemPlusJSONResponse) VisitGetSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(503)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type PutSiteRequestObject struct {
+	Id     SiteId `json:"id"`
+	Params PutSiteParams
+	Body   *PutSiteJSONRequestBody
+}
+
+type PutSiteResponseObject interface {
+	VisitPutSiteResponse(w http.ResponseWriter) error
+}
+
+type PutSite200ResponseHeaders struct {
+	ETag *string
+}
+
+type PutSite200JSONResponse struct {
+	Body    Site
+	Headers PutSite200ResponseHeaders
+}
+
+func (response PutSite200JSONResponse) VisitPutSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response.Body); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/json")
+	if response.Headers.ETag != nil {
+		w.Header().Set("ETag", fmt.Sprint(*response.Headers.ETag))
+	}
+	w.WriteHeader(200)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type PutSite201ResponseHeaders struct {
+	ETag     *string
+	Location *string
+}
+
+type PutSite201JSONResponse struct {
+	Body    Site
+	Headers PutSite201ResponseHeaders
+}
+
+func (response PutSite201JSONResponse) VisitPutSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response.Body); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/json")
+	if response.Headers.ETag != nil {
+		w.Header().Set("ETag", fmt.Sprint(*response.Headers.ETag))
+	}
+	if response.Headers.Location != nil {
+		w.Header().Set("Location", fmt.Sprint(*response.Headers.Location))
+	}
+	w.WriteHeader(201)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type PutSite400ApplicationProblemPlusJSONResponse struct {
+	ProblemApplicationProblemPlusJSONResponse
+}
+
+func (response PutSite400ApplicationProblemPlusJSONResponse) VisitPutSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(400)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type PutSite412ApplicationProblemPlusJSONResponse Problem
+
+func (response PutSite412ApplicationProblemPlusJSONResponse) VisitPutSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(412)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type PutSite413ApplicationProblemPlusJSONResponse Problem
+
+func (response PutSite413ApplicationProblemPlusJSONResponse) VisitPutSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(413)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type PutSite415ApplicationProblemPlusJSONResponse Problem
+
+func (response PutSite415ApplicationProblemPlusJSONResponse) VisitPutSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(415)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type PutSite422ApplicationProblemPlusJSONResponse Problem
+
+func (response PutSite422ApplicationProblemPlusJSONResponse) VisitPutSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(422)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type PutSite500ApplicationProblemPlusJSONResponse Problem
+
+func (response PutSite500ApplicationProblemPlusJSONResponse) VisitPutSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(500)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
+type PutSite503ApplicationProblemPlusJSONResponse Problem
+
+func (response PutSite503ApplicationProblemPlusJSONResponse) VisitPutSiteResponse(w http.ResponseWriter) error {
+
+	var buf bytes.Buffer
+	if err := json.NewEncoder(&buf).Encode(response); err != nil {
+		return err
+	}
+	w.Header().Set("Content-Type", "application/problem+json")
+	w.WriteHeader(503)
+	_, err := buf.WriteTo(w)
+	return err
+}
+
 // StrictServerInterface represents all server handlers.
 type StrictServerInterface interface {
 	// GetLive The process runs
@@ -3847,6 +5259,33 @@ type StrictServerInterface interface {
 	// ReloadRasters Load the rasters anew
 	// (POST /v1/rasters/reload)
 	ReloadRasters(ctx context.Context, request ReloadRastersRequestObject) (ReloadRastersResponseObject, error)
+	// ListSites The sites, page by page
+	// (GET /v1/sites)
+	ListSites(ctx context.Context, request ListSitesRequestObject) (ListSitesResponseObject, error)
+	// CreateSite Add a site
+	// (POST /v1/sites)
+	CreateSite(ctx context.Context, request CreateSiteRequestObject) (CreateSiteResponseObject, error)
+	// ExportSitesCsv All sites, as CSV
+	// (GET /v1/sites/export.csv)
+	ExportSitesCsv(ctx context.Context, request ExportSitesCsvRequestObject) (ExportSitesCsvResponseObject, error)
+	// ExportSitesGeojson All sites, as GeoJSON
+	// (GET /v1/sites/export.geojson)
+	ExportSitesGeojson(ctx context.Context, request ExportSitesGeojsonRequestObject) (ExportSitesGeojsonResponseObject, error)
+	// ImportSitesCsv Add many sites, from CSV
+	// (POST /v1/sites/import.csv)
+	ImportSitesCsv(ctx context.Context, request ImportSitesCsvRequestObject) (ImportSitesCsvResponseObject, error)
+	// ImportSitesGeojson Add many sites, from GeoJSON
+	// (POST /v1/sites/import.geojson)
+	ImportSitesGeojson(ctx context.Context, request ImportSitesGeojsonRequestObject) (ImportSitesGeojsonResponseObject, error)
+	// DeleteSite Take a site away
+	// (DELETE /v1/sites/{id})
+	DeleteSite(ctx context.Context, request DeleteSiteRequestObject) (DeleteSiteResponseObject, error)
+	// GetSite Read a site
+	// (GET /v1/sites/{id})
+	GetSite(ctx context.Context, request GetSiteRequestObject) (GetSiteResponseObject, error)
+	// PutSite Replace a site, or add it
+	// (PUT /v1/sites/{id})
+	PutSite(ctx context.Context, request PutSiteRequestObject) (PutSiteResponseObject, error)
 }
 
 type StrictHandlerFunc func(ctx echo.Context, request any) (any, error)
@@ -4358,6 +5797,299 @@ func (sh *strictHandler) ReloadRasters(ctx echo.Context) error {
 		return err
 	} else if validResponse, ok := response.(ReloadRastersResponseObject); ok {
 		return validResponse.VisitReloadRastersResponse(ctx.Response())
+	} else if response != nil {
+		return fmt.Errorf("unexpected response type: %T", response)
+	}
+	return nil
+}
+
+// ListSites operation middleware
+func (sh *strictHandler) ListSites(ctx echo.Context, params ListSitesParams) error {
+	var request ListSitesRequestObject
+
+	request.Params = params
+
+	handler := func(ctx echo.Context, request interface{}) (interface{}, error) {
+		return sh.ssi.ListSites(ctx.Request().Context(), request.(ListSitesRequestObject))
+	}
+	for _, middleware := range sh.middlewares {
+		handler = middleware(handler, "ListSites")
+	}
+
+	response, err := handler(ctx, request)
+
+	if err != nil {
+		return err
+	} else if validResponse, ok := response.(ListSitesResponseObject); ok {
+		return validResponse.VisitListSitesResponse(ctx.Response())
+	} else if response != nil {
+		return fmt.Errorf("unexpected response type: %T", response)
+	}
+	return nil
+}
+
+// CreateSite operation middleware
+func (sh *strictHandler) CreateSite(ctx echo.Context) error {
+	var request CreateSiteRequestObject
+
+	var body CreateSiteJSONRequestBody
+	var err error
+	if binder, ok := ctx.Echo().Binder.(*echo.DefaultBinder); ok {
+		// A request validator built on kin-openapi's openapi3filter with
+		// KeepValidatedValue leaves the value it validated on the body. Bind
+		// that value, matching member names exactly, so the handler receives
+		// what was validated instead of a second, case-insensitive decode.
+		// Otherwise bind only the request body, so that path and query
+		// parameters are not also bound into the body struct.
+		if vb, ok := ctx.Request().Body.(interface{ ValidatedValue() any }); !ok || runtime.BindJSONValue(vb.ValidatedValue(), &body) != nil {
+			err = binder.BindBody(ctx, &body)
+		}
+	} else {
+		// A custom binder is installed on the Echo instance; defer to it
+		// entirely, since echo.Binder does not expose body-only binding and
+		// the binder may do more than decode (for example call ctx.Validate).
+		err = ctx.Bind(&body)
+	}
+	if err != nil {
+		return err
+	}
+	request.Body = &body
+
+	handler := func(ctx echo.Context, request interface{}) (interface{}, error) {
+		return sh.ssi.CreateSite(ctx.Request().Context(), request.(CreateSiteRequestObject))
+	}
+	for _, middleware := range sh.middlewares {
+		handler = middleware(handler, "CreateSite")
+	}
+
+	response, err := handler(ctx, request)
+
+	if err != nil {
+		return err
+	} else if validResponse, ok := response.(CreateSiteResponseObject); ok {
+		return validResponse.VisitCreateSiteResponse(ctx.Response())
+	} else if response != nil {
+		return fmt.Errorf("unexpected response type: %T", response)
+	}
+	return nil
+}
+
+// ExportSitesCsv operation middleware
+func (sh *strictHandler) ExportSitesCsv(ctx echo.Context) error {
+	var request ExportSitesCsvRequestObject
+
+	handler := func(ctx echo.Context, request interface{}) (interface{}, error) {
+		return sh.ssi.ExportSitesCsv(ctx.Request().Context(), request.(ExportSitesCsvRequestObject))
+	}
+	for _, middleware := range sh.middlewares {
+		handler = middleware(handler, "ExportSitesCsv")
+	}
+
+	response, err := handler(ctx, request)
+
+	if err != nil {
+		return err
+	} else if validResponse, ok := response.(ExportSitesCsvResponseObject); ok {
+		return validResponse.VisitExportSitesCsvResponse(ctx.Response())
+	} else if response != nil {
+		return fmt.Errorf("unexpected response type: %T", response)
+	}
+	return nil
+}
+
+// ExportSitesGeojson operation middleware
+func (sh *strictHandler) ExportSitesGeojson(ctx echo.Context) error {
+	var request ExportSitesGeojsonRequestObject
+
+	handler := func(ctx echo.Context, request interface{}) (interface{}, error) {
+		return sh.ssi.ExportSitesGeojson(ctx.Request().Context(), request.(ExportSitesGeojsonRequestObject))
+	}
+	for _, middleware := range sh.middlewares {
+		handler = middleware(handler, "ExportSitesGeojson")
+	}
+
+	response, err := handler(ctx, request)
+
+	if err != nil {
+		return err
+	} else if validResponse, ok := response.(ExportSitesGeojsonResponseObject); ok {
+		return validResponse.VisitExportSitesGeojsonResponse(ctx.Response())
+	} else if response != nil {
+		return fmt.Errorf("unexpected response type: %T", response)
+	}
+	return nil
+}
+
+// ImportSitesCsv operation middleware
+func (sh *strictHandler) ImportSitesCsv(ctx echo.Context, params ImportSitesCsvParams) error {
+	var request ImportSitesCsvRequestObject
+
+	request.Params = params
+
+	request.Body = ctx.Request().Body
+
+	handler := func(ctx echo.Context, request interface{}) (interface{}, error) {
+		return sh.ssi.ImportSitesCsv(ctx.Request().Context(), request.(ImportSitesCsvRequestObject))
+	}
+	for _, middleware := range sh.middlewares {
+		handler = middleware(handler, "ImportSitesCsv")
+	}
+
+	response, err := handler(ctx, request)
+
+	if err != nil {
+		return err
+	} else if validResponse, ok := response.(ImportSitesCsvResponseObject); ok {
+		return validResponse.VisitImportSitesCsvResponse(ctx.Response())
+	} else if response != nil {
+		return fmt.Errorf("unexpected response type: %T", response)
+	}
+	return nil
+}
+
+// ImportSitesGeojson operation middleware
+func (sh *strictHandler) ImportSitesGeojson(ctx echo.Context, params ImportSitesGeojsonParams) error {
+	var request ImportSitesGeojsonRequestObject
+
+	request.Params = params
+
+	var body ImportSitesGeojsonApplicationGeoPlusJSONRequestBody
+	var err error
+	if binder, ok := ctx.Echo().Binder.(*echo.DefaultBinder); ok {
+		// A request validator built on kin-openapi's openapi3filter with
+		// KeepValidatedValue leaves the value it validated on the body. Bind
+		// that value, matching member names exactly, so the handler receives
+		// what was validated instead of a second, case-insensitive decode.
+		// Otherwise bind only the request body, so that path and query
+		// parameters are not also bound into the body struct.
+		if vb, ok := ctx.Request().Body.(interface{ ValidatedValue() any }); !ok || runtime.BindJSONValue(vb.ValidatedValue(), &body) != nil {
+			err = binder.BindBody(ctx, &body)
+		}
+	} else {
+		// A custom binder is installed on the Echo instance; defer to it
+		// entirely, since echo.Binder does not expose body-only binding and
+		// the binder may do more than decode (for example call ctx.Validate).
+		err = ctx.Bind(&body)
+	}
+	if err != nil {
+		return err
+	}
+	request.Body = &body
+
+	handler := func(ctx echo.Context, request interface{}) (interface{}, error) {
+		return sh.ssi.ImportSitesGeojson(ctx.Request().Context(), request.(ImportSitesGeojsonRequestObject))
+	}
+	for _, middleware := range sh.middlewares {
+		handler = middleware(handler, "ImportSitesGeojson")
+	}
+
+	response, err := handler(ctx, request)
+
+	if err != nil {
+		return err
+	} else if validResponse, ok := response.(ImportSitesGeojsonResponseObject); ok {
+		return validResponse.VisitImportSitesGeojsonResponse(ctx.Response())
+	} else if response != nil {
+		return fmt.Errorf("unexpected response type: %T", response)
+	}
+	return nil
+}
+
+// DeleteSite operation middleware
+func (sh *strictHandler) DeleteSite(ctx echo.Context, id SiteId, params DeleteSiteParams) error {
+	var request DeleteSiteRequestObject
+
+	request.Id = id
+	request.Params = params
+
+	handler := func(ctx echo.Context, request interface{}) (interface{}, error) {
+		return sh.ssi.DeleteSite(ctx.Request().Context(), request.(DeleteSiteRequestObject))
+	}
+	for _, middleware := range sh.middlewares {
+		handler = middleware(handler, "DeleteSite")
+	}
+
+	response, err := handler(ctx, request)
+
+	if err != nil {
+		return err
+	} else if validResponse, ok := response.(DeleteSiteResponseObject); ok {
+		return validResponse.VisitDeleteSiteResponse(ctx.Response())
+	} else if response != nil {
+		return fmt.Errorf("unexpected response type: %T", response)
+	}
+	return nil
+}
+
+// GetSite operation middleware
+func (sh *strictHandler) GetSite(ctx echo.Context, id SiteId, params GetSiteParams) error {
+	var request GetSiteRequestObject
+
+	request.Id = id
+	request.Params = params
+
+	handler := func(ctx echo.Context, request interface{}) (interface{}, error) {
+		return sh.ssi.GetSite(ctx.Request().Context(), request.(GetSiteRequestObject))
+	}
+	for _, middleware := range sh.middlewares {
+		handler = middleware(handler, "GetSite")
+	}
+
+	response, err := handler(ctx, request)
+
+	if err != nil {
+		return err
+	} else if validResponse, ok := response.(GetSiteResponseObject); ok {
+		return validResponse.VisitGetSiteResponse(ctx.Response())
+	} else if response != nil {
+		return fmt.Errorf("unexpected response type: %T", response)
+	}
+	return nil
+}
+
+// PutSite operation middleware
+func (sh *strictHandler) PutSite(ctx echo.Context, id SiteId, params PutSiteParams) error {
+	var request PutSiteRequestObject
+
+	request.Id = id
+	request.Params = params
+
+	var body PutSiteJSONRequestBody
+	var err error
+	if binder, ok := ctx.Echo().Binder.(*echo.DefaultBinder); ok {
+		// A request validator built on kin-openapi's openapi3filter with
+		// KeepValidatedValue leaves the value it validated on the body. Bind
+		// that value, matching member names exactly, so the handler receives
+		// what was validated instead of a second, case-insensitive decode.
+		// Otherwise bind only the request body, so that path and query
+		// parameters are not also bound into the body struct.
+		if vb, ok := ctx.Request().Body.(interface{ ValidatedValue() any }); !ok || runtime.BindJSONValue(vb.ValidatedValue(), &body) != nil {
+			err = binder.BindBody(ctx, &body)
+		}
+	} else {
+		// A custom binder is installed on the Echo instance; defer to it
+		// entirely, since echo.Binder does not expose body-only binding and
+		// the binder may do more than decode (for example call ctx.Validate).
+		err = ctx.Bind(&body)
+	}
+	if err != nil {
+		return err
+	}
+	request.Body = &body
+
+	handler := func(ctx echo.Context, request interface{}) (interface{}, error) {
+		return sh.ssi.PutSite(ctx.Request().Context(), request.(PutSiteRequestObject))
+	}
+	for _, middleware := range sh.middlewares {
+		handler = middleware(handler, "PutSite")
+	}
+
+	response, err := handler(ctx, request)
+
+	if err != nil {
+		return err
+	} else if validResponse, ok := response.(PutSiteResponseObject); ok {
+		return validResponse.VisitPutSiteResponse(ctx.Response())
 	} else if response != nil {
 		return fmt.Errorf("unexpected response type: %T", response)
 	}

@@ -10,6 +10,7 @@ import (
 	"github.com/labstack/echo/v4/middleware"
 
 	"ridgehop/internal/assess"
+	"ridgehop/internal/screening/sites"
 	"ridgehop/internal/store"
 	"ridgehop/internal/telemetry"
 )
@@ -63,6 +64,7 @@ type Dependencies struct {
 	Elevation Elevation
 	Antennas  Register[assess.Antenna]
 	Radios    Register[assess.Radio]
+	Sites     *sites.Register
 	Health    *telemetry.Health
 	Metrics   *telemetry.Metrics
 	Log       *slog.Logger
@@ -90,8 +92,10 @@ func NewHandler(contract *Contract, d Dependencies) (http.Handler, error) {
 	e.Binder = binder{contract}
 	e.HTTPErrorHandler = answerProblem(d.Log)
 	e.Use(identified, watched(d.Log, d.Metrics), recovered(d.Log), limited(d.MostAtOnce, d.Metrics), timed, hardened)
-	e.Use(middleware.BodyLimitWithConfig(middleware.BodyLimitConfig{Limit: bodyLimit}))
-	RegisterHandlers(e, NewStrictHandler(&handlers{d}, nil))
+	e.Use(middleware.BodyLimitWithConfig(middleware.BodyLimitConfig{
+		Limit: bodyLimit, Skipper: func(c echo.Context) bool { return takesList(c.Path()) },
+	}))
+	RegisterHandlersWithOptions(e, NewStrictHandler(&handlers{d}, nil), RegisterHandlersOptions{OperationMiddlewares: importRoutes()})
 	e.GET("/metrics", echo.WrapHandler(d.Metrics.Handler()))
 	e.GET("/openapi.yaml", func(c echo.Context) error { return c.Blob(http.StatusOK, "application/yaml", contractYAML) })
 	e.GET("/docs", func(c echo.Context) error { return c.HTMLBlob(http.StatusOK, page) })

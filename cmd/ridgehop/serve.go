@@ -15,6 +15,7 @@ import (
 	"ridgehop/api"
 	"ridgehop/internal/assess"
 	"ridgehop/internal/config"
+	"ridgehop/internal/screening/sites"
 	"ridgehop/internal/store"
 	"ridgehop/internal/telemetry"
 )
@@ -58,7 +59,7 @@ func (c *serveCommand) Run(ctx context.Context, s streams) error {
 	health := telemetry.NewHealth(storeCheck(kept), terrainCheck(loaded))
 	handler, err := api.NewHandler(contract, api.Dependencies{
 		Assessor: assess.NewService(loaded).WithEquipment(equipment), Keeper: kept, Lister: loaded, Elevation: loaded,
-		Antennas: equipment.Antennas, Radios: equipment.Radios,
+		Antennas: equipment.Antennas, Radios: equipment.Radios, Sites: sites.NewRegister(shelf{kept}),
 		Health: health, Metrics: telemetry.NewMetrics(), Log: log, MostAtOnce: c.MostAtOnce,
 	})
 	if err != nil {

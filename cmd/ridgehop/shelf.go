@@ -31,6 +31,14 @@ func (s shelf) DropEntry(ctx context.Context, kind, name string) error {
 	return inWords(s.kept.DropEntry(ctx, kind, name))
 }
 
+func (s shelf) EntriesAfter(ctx context.Context, kind, after string, most int) ([][]byte, error) {
+	return s.kept.EntriesAfter(ctx, kind, after, most)
+}
+
+func (s shelf) ChangeEntries(ctx context.Context, kind string, names []string, change func(name string, was []byte) ([]byte, error)) error {
+	return s.kept.ChangeEntries(ctx, kind, names, change)
+}
+
 func inWords(err error) error {
 	switch {
 	case errors.Is(err, store.ErrNotFound):
