@@ -67,16 +67,20 @@ func BenchmarkJudge(b *testing.B) {
 	service := NewService(rollingTerrain(b))
 	for _, c := range []struct {
 		name              string
+		azimuthDeg        float64
 		heightM, spacingM float64
 		want              profile.Verdict
 	}{
-		{"clear", 200, 0, profile.Clear}, {"clear, a sample a pixel", 200, 30.75, profile.Clear},
-		{"a little to spare", 68, 0, profile.Clear},
-		{"obstructed", 5, 0, profile.Obstructed},
+		// 334 pixels: the path crosses as many lines between pixel centres.
+		{"334 pixels, clear", 0, 200, 0, profile.Clear},
+		{"askew, clear", 37, 200, 0, profile.Clear}, {"askew, clear, a sample a pixel", 37, 200, 30.75, profile.Clear},
+		{"askew, a little to spare", 37, 68, 0, profile.Clear},
+		{"askew, obstructed", 37, 5, 0, profile.Obstructed},
 	} {
 		b.Run(c.name, func(b *testing.B) {
 			r, a, ws := rollingLink(c.heightM), &Assessment{}, &profile.Workspace{}
-			r.SpacingM = c.spacingM
+			far := geodesy.Direct(orb.Point{r.A.Lon, r.A.Lat}, c.azimuthDeg, 334*30.72)
+			r.B.Lon, r.B.Lat, r.SpacingM = far.Lon(), far.Lat(), c.spacingM
 			if err := service.judge(context.Background(), r, a, ws, whole); err != nil {
 				b.Fatal(err)
 			}

@@ -25,7 +25,9 @@ func (s *sampler) exact() error {
 	s.compose(distances)
 	widest := 0.0
 	for i := 1; i < len(distances); i++ {
-		widest = max(widest, distances[i]-distances[i-1])
+		if step := distances[i] - distances[i-1]; step > widest { // several times as fast as max, which minds NaN
+			widest = step
+		}
 	}
 	s.into.SpacingM = widest
 	return nil

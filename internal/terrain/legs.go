@@ -108,7 +108,11 @@ func (l *lines) find() {
 	} else {
 		t += off * l.perLine
 	}
-	t = min(max(t, l.t), l.end)
+	if t < l.t {
+		t = l.t
+	} else if t > l.end {
+		t = l.end
+	}
 	l.stride, l.t = t-l.t, t
 }
 

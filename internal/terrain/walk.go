@@ -144,13 +144,13 @@ func (w *walk) cellAtHand(cur *cursor, c *stretch) bool {
 	north, south := float64(upper[0]), float64(lower[0])
 	east := float64(upper[1]) - north
 	twist := float64(lower[1]) - south - east
-	x, y := c.ub-i, c.vb-j
 	last := &w.out.nodes[n-1]
-	bend := -twist * (c.ub - c.ua) * (c.vb - c.va) / ((c.b - c.a) * (c.b - c.a))
-	if bend != bend || last.at != c.a { // a corner is void
+	if twist != twist || last.at != c.a { // a corner is void
 		return false
 	}
-	last.bend = bend
+	perM := 1 / (c.b - c.a)
+	last.bend = -twist * ((c.ub - c.ua) * perM) * ((c.vb - c.va) * perM)
+	x, y := c.ub-i, c.vb-j
 	w.out.nodes = append(w.out.nodes, stripNode{at: c.b, height: north + x*east + y*(south-north+x*twist), source: last.source})
 	return true
 }
