@@ -31,6 +31,7 @@ type streams struct {
 type commands struct {
 	Serve   serveCommand   `cmd:"" help:"Serve the API, the drawings and the page of the contract over HTTP."`
 	Assess  assessCommand  `cmd:"" help:"Judge the link that a JSON file, or standard input, describes."`
+	Screen  screenCommand  `cmd:"" help:"Ask of a list of places which of a list of sites can serve each, and with what mast."`
 	Rasters rastersCommand `cmd:"" help:"List and check the elevation rasters."`
 	Pattern patternCommand `cmd:"" help:"Turn an antenna's pattern from CSV into the JSON of a description."`
 	Version versionCommand `cmd:"" help:"Print the version of the program and of what it computes with."`
