@@ -7,7 +7,7 @@ import (
 
 func TestValidate(t *testing.T) {
 	here := t.TempDir()
-	terrain := Terrain{Rasters: []string{here}, CacheMB: 512, Open: 64}
+	terrain := Terrain{Rasters: []string{here}, CacheMB: 512, Open: 64, BlocksMB: 4096}
 	service := Service{Listen: "127.0.0.1:0", MostAtOnce: 64}
 	missing := filepath.Join(here, "none")
 	cases := []struct {
@@ -19,6 +19,9 @@ func TestValidate(t *testing.T) {
 		{"no such folder", func(t *Terrain, _ *Service) { t.Rasters = append(t.Rasters, missing) }, "--rasters " + missing + ": there is no such folder"},
 		{"tiny cache", func(t *Terrain, _ *Service) { t.CacheMB = 1 }, "--cache-mb 1: it must be 16 to 1048576"},
 		{"no open files", func(t *Terrain, _ *Service) { t.Open = 0 }, "--open-rasters 0: it must be 1 to 10000"},
+		{"no such catalogue", func(t *Terrain, _ *Service) { t.Catalogue = missing }, "--catalogue " + missing + ": there is no such file"},
+		{"a folder for a catalogue", func(t *Terrain, _ *Service) { t.Catalogue = here }, "--catalogue " + here + ": there is no such file"},
+		{"hardly a block", func(t *Terrain, _ *Service) { t.BlocksMB = 1 }, "--blocks-mb 1: it must be 64 to 1073741824"},
 		{"no port", func(_ *Terrain, s *Service) { s.Listen = "localhost" }, "--listen localhost: it must be a host and a port, like 127.0.0.1:8080"},
 		{"nobody served", func(_ *Terrain, s *Service) { s.MostAtOnce = 0 }, "--most-at-once 0: it must be 1 to 100000"},
 	}
