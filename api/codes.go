@@ -35,6 +35,8 @@ func reasonCodes() []stableCode {
 		{"void_at_end", inReasons, "No ground height is known at an end, so that its antenna cannot be placed."},
 		{"nothing_between", inReasons, "Between what the antennas stand on nothing is left to judge."},
 		{"raster_unreachable", inReasons, "A raster lies under the path but did not answer."},
+		{"vertical_datum_in_doubt", inReasons, "Heights on different datums meet on the path and may be off by more than there is to spare."},
+		{"antenna_below_top", inReasons, "An antenna lies below what a surface raster shows at its place, a roof or trees."},
 		{"spacing_too_coarse", inReasons, "The spacing that was asked for steps over whole pixels, where a ridge may lie unseen."},
 		{"radio_will_decide", inReasons, "The line is open but the Fresnel zone is not; whether traffic passes depends on the radio's margin."},
 		{"radio_meets_target", inReasons, "The radio meets its target in both directions."},
@@ -50,6 +52,9 @@ func reasonCodes() []stableCode {
 
 func cautionCodes() []stableCode {
 	return []stableCode{
+		{"bare_earth_only", inCautions, "Only bare earth is known: no roof and no tree is counted."},
+		{"trees_not_known", inCautions, "Only bare earth and buildings are known: no tree is counted."},
+		{"no_roof_found", inCautions, "Nothing stands at an end whose antenna height counts from a roof: it counts from the ground."},
 		{"own_building", inCautions, "What an antenna stands on is not judged, as far as the detail says."},
 		{"cover_not_added", inCautions, "The stated cover was not added where a surface raster holds it already."},
 		{"cover_left_out", inCautions, "Heights of trees or buildings were not counted, since a surface raster there holds them already."},

@@ -56,6 +56,12 @@ func newGeometry(link *Link, p *Profile) geometry {
 // d1 d2 / (2 k a)).
 func bulgeFactor(k float64) float64 { return 1 / (2 * k * p526.EarthRadiusKM * 1000) }
 
+// BulgeM is the earth bulge in metres at a distance from A on a path, both in
+// metres, at the k-factor k > 0 (P.526-16 2.1).
+func BulgeM(k, distanceM, lengthM float64) float64 {
+	return distanceM * (lengthM - distanceM) * bulgeFactor(k)
+}
+
 // topM is what the line must clear at sample i: terrain height and cover.
 func (g *geometry) topM(i int) float64 {
 	top := g.p.GroundM[i]

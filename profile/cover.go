@@ -29,8 +29,19 @@ func (p *Profile) AddCover(c Cover) {
 		p.CoverM = resized(p.CoverM, n)
 		clear(p.CoverM)
 	}
-	for i := 1; i < n-1; i++ {
-		p.CoverM[i] = p.covered(i, c)
+	added := 0.0 // at the sample before
+	for i := range n {
+		more := 0.0
+		if i > 0 && i < n-1 {
+			cover := p.covered(i, c)
+			more, p.CoverM[i] = cover-p.CoverM[i], cover
+		}
+		// Where both ends of a stretch rise alike it runs as before, only higher;
+		// otherwise no lower than straight.
+		if i > 0 && len(p.BendPerM) > 0 && more != added {
+			p.BendPerM[i-1] = max(0, p.BendPerM[i-1])
+		}
+		added = more
 	}
 }
 

@@ -4,6 +4,7 @@ import (
 	"context"
 	"fmt"
 	"io/fs"
+	"log/slog"
 	"os"
 	"path/filepath"
 
@@ -35,7 +36,35 @@ func (c *rastersCheck) Run(ctx context.Context, s streams) error {
 		}
 		files = append(files, found...)
 	}
-	return checkFiles(ctx, s, files)
+	if err := checkFiles(ctx, s, files); err != nil || c.Catalogue == "" {
+		return err
+	}
+	return c.loads(ctx, s)
+}
+
+// loads loads the catalogue as a service would, now that no raster of it hurts:
+// geoid grids and outlines of buildings are read too.
+func (c *rastersCheck) loads(ctx context.Context, s streams) error {
+	loaded, err := loadTerrain(ctx, terrainFlags{Rasters: c.Rasters, Catalogue: c.Catalogue, CacheMB: 64, Open: 8}, "", slog.New(slog.DiscardHandler))
+	if err != nil {
+		return err
+	}
+	defer loaded.Close()
+	rasters, err := loaded.Rasters(ctx)
+	if err != nil {
+		return err
+	}
+	unusable := 0
+	for _, r := range rasters {
+		if r.Problem != "" {
+			unusable++
+			_, _ = fmt.Fprintf(s.out, "unfit: %s: %s\n", r.Name, r.Problem)
+		}
+	}
+	if unusable > 0 {
+		return inputError{fmt.Errorf("%d of the catalogue's files are unfit", unusable)}
+	}
+	return nil
 }
 
 // sources checks the catalogue itself, and lists the rasters that lie on disk.

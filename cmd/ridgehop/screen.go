@@ -35,7 +35,7 @@ type screenCommand struct {
 	MastLimitM   float64 `help:"Highest mast at a candidate, m." name:"mast-limit-m" default:"10"`
 	Workers      int     `help:"Links judged at once; 0 is one a processor." default:"0"`
 	MaxRows      int     `help:"Most candidates that are read." name:"max-rows" default:"1000000"`
-	Restart      bool    `help:"Start anew where other inputs or settings began the output."`
+	Restart      bool    `help:"Start anew where other inputs or settings began the output, or where it is there already."`
 	ChunkRows    int     `hidden:"" name:"chunk-rows" default:"4096"`
 }
 
@@ -47,6 +47,9 @@ func (c *screenCommand) Run(ctx context.Context, s streams) error {
 	}
 	to, err := listFormat("--out", c.Out)
 	if err != nil {
+		return err
+	}
+	if err := c.spareFiles(); err != nil {
 		return err
 	}
 	plan, err := c.plan(s)
@@ -78,6 +81,24 @@ func (c *screenCommand) Run(ctx context.Context, s streams) error {
 		return err
 	}
 	return c.screen(ctx, s, assess.NewService(loaded), plan, candidateList{file: in, format: from, how: reading}, part)
+}
+
+// spareFiles refuses an output that would take the place of an input, or, unless
+// the caller says so, of an output that is there.
+func (c *screenCommand) spareFiles() error {
+	there, err := os.Stat(c.Out)
+	if err != nil {
+		return nil // nothing is there
+	}
+	for flag, name := range map[string]string{"--sites": c.Sites, "--candidates": c.Candidates} {
+		if input, err := os.Stat(name); err == nil && os.SameFile(there, input) {
+			return inputError{fmt.Errorf("--out %s: it is the file of %s; name another", c.Out, flag)}
+		}
+	}
+	if !c.Restart {
+		return inputError{fmt.Errorf("--out %s: it is there already; name another, or make it anew with --restart", c.Out)}
+	}
+	return nil
 }
 
 // screen runs the screening into part, and makes the output of it.

@@ -52,8 +52,11 @@ func (a *Assessment) identify() error {
 	}
 	p := &a.Profile
 	fmt.Fprintf(&asked, "%d samples, step %v, pixel %v\n", len(p.DistanceM), p.SpacingM, p.PixelM)
-	// A geoid grid has no version: what it makes of the ends stands for it.
-	fmt.Fprintf(&asked, "datum %s, ends at %v and %v\n", p.VerticalDatum, a.GroundAM, a.GroundBM)
+	// A geoid grid has no version, and priorities have none: what they make of the
+	// heights stands for them.
+	fmt.Fprintf(&asked, "datum %s\n", p.VerticalDatum)
+	asked.Write(packed(p.GroundM))
+	asked.Write(packed(p.CoverM))
 	fmt.Fprintf(&asked, "engine %s\n", a.Engine)
 	sum := sha256.Sum256(asked.Bytes())
 	digest := base32.StdEncoding.WithPadding(base32.NoPadding).EncodeToString(sum[:])

@@ -110,6 +110,7 @@ func (a *Assessment) particular() []Caution {
 		add("raster_kinds_mixed", "Part of the path rests on bare earth and part on a surface with roofs and trees.")
 	}
 	a.leftOutCaution(add)
+	a.coverCautions(add)
 	if lowest := lowestM(p); lowest < seaFloorM {
 		add("below_sea_level", "The terrain lies down to %.0f m below sea level: where that is the floor of water, its surface counts instead.", -lowest)
 	}

@@ -48,6 +48,33 @@ func (a *Assessment) datumCautions(add func(code, format string, args ...any)) {
 	}
 }
 
+// coverCautions say what of trees and buildings is not known.
+func (a *Assessment) coverCautions(add func(code, format string, args ...any)) {
+	p := &a.Profile
+	kinds := map[profile.Kind]bool{}
+	for _, s := range p.Sources {
+		kinds[s.Kind] = true
+	}
+	if kinds[profile.KindGround] && !kinds[profile.KindSurface] && !kinds[profile.KindUnstated] && a.Request.CoverHeightM == 0 {
+		switch {
+		case kinds[profile.KindCanopy]:
+		case kinds[profile.KindBuildings]:
+			add("trees_not_known", "Only bare earth and buildings are known here: no tree is counted. State cover_height_m, or load a canopy or a surface model.")
+		default:
+			add("bare_earth_only", "Only bare earth is known here: no roof and no tree is counted. State cover_height_m, or load a surface model, canopy or buildings.")
+		}
+	}
+	for _, end := range []struct {
+		name string
+		e    End
+		from profile.HeightFrom
+	}{{"A", a.Request.A, a.Link.HeightAFrom}, {"B", a.Request.B, a.Link.HeightBFrom}} {
+		if end.e.HeightAbove == AboveRoof && end.from == profile.FromGround && len(p.CoverIndex) > 0 {
+			add("no_roof_found", "Nothing stands at %s as far as the data shows: its height above the roof counts from the ground. Is the place right?", end.name)
+		}
+	}
+}
+
 // leftOutCaution says which heights of trees and buildings were not counted.
 func (a *Assessment) leftOutCaution(add func(code, format string, args ...any)) {
 	if names := a.Profile.LeftOut; len(names) > 0 {

@@ -145,7 +145,7 @@ func TestInvalidAntennaHeights(t *testing.T) {
 func TestCautions(t *testing.T) {
 	quiet := func() (Request, profile.Profile) {
 		return Request{FrequencyGHz: 13, A: End{HeightAbove: AboveRoof}, B: End{HeightAbove: AboveSeaLevel}}, profile.Profile{
-			Sources: []profile.Source{{Kind: profile.KindGround}}, SourceIndex: []int16{0}, SpacingM: 7.5, PixelM: 30,
+			Sources: []profile.Source{{Kind: profile.KindGround}, {Kind: profile.KindCanopy}}, SourceIndex: []int16{0}, SpacingM: 7.5, PixelM: 30,
 		}
 	}
 	kinds := func(p *profile.Profile, kinds ...profile.Kind) {
@@ -159,7 +159,10 @@ func TestCautions(t *testing.T) {
 		spoil func(*Request, *profile.Profile)
 		want  []string
 	}{
-		{"bare earth", func(*Request, *profile.Profile) {}, []string{"vertical_datum_unstated"}},
+		{"bare earth and canopy", func(*Request, *profile.Profile) {}, []string{"vertical_datum_unstated"}},
+		{"bare earth", func(_ *Request, p *profile.Profile) { kinds(p, profile.KindGround) }, []string{"bare_earth_only", "vertical_datum_unstated"}},
+		{"bare earth and buildings", func(_ *Request, p *profile.Profile) { kinds(p, profile.KindGround, profile.KindBuildings) }, []string{"trees_not_known", "vertical_datum_unstated"}},
+		{"a roof that is not there", func(_ *Request, p *profile.Profile) { p.CoverM, p.CoverIndex = []float64{0}, []int16{-1} }, []string{"no_roof_found", "vertical_datum_unstated"}},
 		{"no raster at all", func(_ *Request, p *profile.Profile) { kinds(p) }, nil},
 		{"brought", func(_ *Request, p *profile.Profile) { kinds(p, profile.KindProfile) }, nil},
 		{"surface", func(_ *Request, p *profile.Profile) { kinds(p, profile.KindSurface) }, []string{"vertical_datum_unstated"}},

@@ -59,6 +59,11 @@ func TestOwnBuilding(t *testing.T) {
 		r.A.AntennaHeightM, r.A.HeightAbove = heightM, AboveGround
 		return r
 	}
+	down := func() Request { // from the roof to the street 60 m on
+		r := onRoof()
+		r.B = End{Lon: 7.0008, Lat: 46, Placed: true, AntennaHeightM: 8}
+		return r
+	}
 	cases := []struct {
 		name    string
 		kind    profile.Kind
@@ -70,7 +75,9 @@ func TestOwnBuilding(t *testing.T) {
 		{"a flat roof", profile.KindSurface, own, onRoof(), [2]float64{20, 22}, true},
 		{"by its height above ground", profile.KindSurface, own, onGround(31.5), [2]float64{20, 22}, true},
 		{"of outlines", profile.KindBuildings, own, onRoof(), [2]float64{20, 22}, true},
-		{"an antenna on its wall", profile.KindSurface, own, onGround(12), [2]float64{20, 22}, true},
+		{"an antenna on its wall", profile.KindBuildings, own, onGround(12), [2]float64{20, 22}, true},
+		{"below the top of who knows what", profile.KindSurface, own, onGround(12), [2]float64{20, 22}, false},
+		{"a beam down through its own roof", profile.KindSurface, building(0, 40, 30), down(), [2]float64{1, 12}, false},
 		{"a taller neighbour", profile.KindSurface, both(own, building(30, 40, 45)), onRoof(), [2]float64{20, 22}, false},
 		{"a tower on the roof", profile.KindSurface, both(own, building(10, 15, 40)), onRoof(), [2]float64{8, 10}, false},
 		{"a parapet below the antenna", profile.KindSurface, both(own, building(18, 20, 31)), onRoof(), [2]float64{20, 22}, true},

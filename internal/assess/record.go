@@ -194,8 +194,18 @@ func unpackedPlaces(kept []byte, lengthM float64) []float64 {
 	for i := range out {
 		out[i] = float64(binary.LittleEndian.Uint32(kept[4*i:])) / placesPerM
 	}
-	if n := len(out); n > 0 {
-		out[n-1] = lengthM
+	n := len(out)
+	if n == 0 {
+		return out
+	}
+	// Rounding may have put two places in one: they go on rising.
+	const apart = 0.1 / placesPerM
+	for i := 1; i < n; i++ {
+		out[i] = max(out[i], out[i-1]+apart)
+	}
+	out[n-1] = lengthM
+	for i := n - 2; i >= 0 && out[i] >= out[i+1]; i-- {
+		out[i] = out[i+1] - apart
 	}
 	return out
 }

@@ -4,6 +4,7 @@ import (
 	"context"
 	"errors"
 	"fmt"
+	"math"
 	"sync"
 
 	"ridgehop/internal/radio"
@@ -76,6 +77,8 @@ func (s *Service) judge(ctx context.Context, request Request, a *Assessment, ws 
 	}
 	a.doubtCoarseSpacing()
 	a.doubtUnreachable()
+	a.doubtDatums()
+	a.doubtBelowTop()
 	if a.Request.Radio != nil {
 		if err := s.judgeRadio(ctx, a, ws); err != nil {
 			return err
@@ -131,6 +134,47 @@ func (a *Assessment) doubtUnreachable() {
 	if len(a.Profile.Unreachable) > 0 && j.Verdict != profile.Obstructed {
 		j.Verdict = profile.Unknown
 	}
+}
+
+// ReasonDatumDoubt says that heights on different datums met on the path, further
+// apart, as far as is known, than the path has to spare.
+const ReasonDatumDoubt profile.ReasonCode = "vertical_datum_in_doubt"
+
+// doubtDatums withholds clear where heights that could not be brought to one
+// datum may be off by more than there is to spare.
+func (a *Assessment) doubtDatums() {
+	j := &a.Judgement
+	spare, size := math.Inf(1), 0.0
+	for _, c := range j.Clearance {
+		spare = min(spare, c.ClearanceM-c.F1Fraction*c.F1M)
+	}
+	for _, d := range a.Profile.DatumDoubts {
+		size = max(size, d.SizeM)
+	}
+	if j.Verdict != profile.Clear || size < spare || !a.datumsMeet() {
+		return
+	}
+	j.Verdict = profile.Unknown
+	j.Reasons = append(j.Reasons, profile.Reason{Code: ReasonDatumDoubt, Sentence: fmt.Sprintf(
+		"Heights on different vertical datums meet on this path and may be off by up to about %.0f m, more than the %.1f m to spare: name the geoid grids in the catalogue.", size, spare)})
+}
+
+// datumsMeet reports whether heights above different datums decide together.
+func (a *Assessment) datumsMeet() bool {
+	if a.Request.A.HeightAbove == AboveSeaLevel || a.Request.B.HeightAbove == AboveSeaLevel {
+		return true
+	}
+	first, seen := "", false
+	for _, s := range a.Profile.Sources {
+		if s.Kind == profile.KindCanopy || s.Kind == profile.KindBuildings {
+			continue
+		}
+		if seen && s.VerticalDatum != first {
+			return true
+		}
+		first, seen = s.VerticalDatum, true
+	}
+	return false
 }
 
 // cover is what the caller says of trees and buildings.

@@ -4,6 +4,8 @@ import (
 	"context"
 	"errors"
 	"fmt"
+	"math"
+	"slices"
 
 	"ridgehop/profile"
 )
@@ -55,14 +57,30 @@ func differences(before, now *profile.Profile) []string {
 		}
 	}
 	for _, s := range before.Sources {
-		if named(now.Sources, s.Name) == nil {
+		away := slices.ContainsFunc(now.Unreachable, func(u profile.Unreachable) bool { return u.Source == s.Name })
+		if named(now.Sources, s.Name) == nil && !away {
 			out = append(out, fmt.Sprintf("Raster %s no longer speaks on the path.", s.Name))
 		}
+	}
+	if len(out) == 0 && len(now.Unreachable) == 0 && (before.VerticalDatum != now.VerticalDatum || endsMoved(before, now)) {
+		out = append(out, "Heights are brought to another vertical datum, or put together otherwise, now.")
 	}
 	if len(before.Unreachable) > 0 && len(now.Unreachable) == 0 {
 		out = append(out, "A raster that did not answer then answers now.")
 	}
 	return out
+}
+
+// endsMoved reports whether the ground at either end is another one, by more than
+// a record's rounding.
+func endsMoved(before, now *profile.Profile) bool {
+	const rounding = 0.01
+	b, n := before.GroundM, now.GroundM
+	if len(b) == 0 || len(n) == 0 {
+		return false
+	}
+	moved := func(x, y float64) bool { return math.Abs(x-y) > rounding || math.IsNaN(x) != math.IsNaN(y) }
+	return moved(b[0], n[0]) || moved(b[len(b)-1], n[len(n)-1])
 }
 
 func named(sources []profile.Source, name string) *profile.Source {

@@ -36,6 +36,7 @@ type state struct {
 	bytes, modified   int64
 	errorM, lengthM   float64
 	priority          int
+	beside            besideFile
 }
 
 // states are those of the usable rasters, and of the sources by degrees of the
@@ -43,7 +44,7 @@ type state struct {
 func (t *Terrain) states() map[string]state {
 	out := make(map[string]state, len(t.byName))
 	for name, e := range t.byName {
-		out[name] = state{e.path, string(e.Kind), e.VerticalDatum, e.bytes, e.Modified.UnixNano(), e.ErrorM, e.CorrelationM, e.Priority}
+		out[name] = state{e.path, string(e.Kind), e.VerticalDatum, e.bytes, e.Modified.UnixNano(), e.ErrorM, e.CorrelationM, e.Priority, e.beside}
 	}
 	for _, s := range t.sources {
 		if s.tiles != nil {

@@ -3,6 +3,7 @@ package terrain
 import (
 	"context"
 	"encoding/binary"
+	"errors"
 	"fmt"
 	"math"
 
@@ -96,8 +97,11 @@ func (c *chunks) read(ctx context.Context, key chunkKey) (*chunk, error) {
 		}
 		return key.entry.current(d)
 	})
-	if err == nil {
+	switch {
+	case err == nil:
 		c.toDisk(key, out)
+	case errors.Is(err, raster.ErrChanged):
+		key.entry.gone.Store(true)
 	}
 	return out, err
 }
@@ -105,7 +109,7 @@ func (c *chunks) read(ctx context.Context, key chunkKey) (*chunk, error) {
 // diskKey names a chunk of a remote raster's version; what it holds depends on
 // how chunks are cut, so the size is part of it.
 func (key chunkKey) diskKey(out *chunk) string {
-	return fmt.Sprintf("%s %s %d %d %d %d", key.entry.Name, key.entry.known, out.x, out.y, out.width, out.height)
+	return fmt.Sprintf("%s %s %d %d %d %d", key.entry.path, key.entry.known, out.x, out.y, out.width, out.height)
 }
 
 // fromDisk fills the chunk from the disk, if it is there.

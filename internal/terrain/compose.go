@@ -33,7 +33,7 @@ func (s *sampler) compose(distances []float64) {
 		}
 		into.BendPerM[i] = 0
 		if i > 0 {
-			into.BendPerM[i-1] = bendBetween(&readers, before, here)
+			into.BendPerM[i-1] = bendBetween(&readers, &before, &here, d-distances[i-1])
 		}
 		before = here
 	}
@@ -82,7 +82,8 @@ func (s *sampler) alone(distances []float64) bool {
 type mix struct {
 	groundM, coverM float64
 	ground, cover   int16
-	top             [2]layer // the layers whose sum is the top; none is layerCount
+	top             [2]layer            // the layers whose sum is the top; none is layerCount
+	tops            [layerCount]float64 // how high each layer that counts reaches; NaN for the others
 }
 
 // mixed reads the layers at a distance, which is no less than in the call
@@ -98,31 +99,58 @@ func mixed(readers *[layerCount]reader, d float64) mix {
 		}
 	}
 	ground, surface := h[groundLayer], h[surfaceLayer]
-	out := mix{groundM: ground, ground: source[groundLayer], cover: -1, top: [2]layer{groundLayer, layerCount}}
+	out := mix{groundM: ground, ground: source[groundLayer], cover: -1, top: topOf(groundLayer), tops: h}
+	for l := canopyLayer; l < layerCount; l++ {
+		out.tops[l] += ground // heights above it
+		if surface == surface {
+			out.tops[l] = math.NaN() // the surface speaks
+		}
+	}
 	switch {
 	case ground != ground:
-		out.groundM, out.ground, out.top[0] = surface, source[surfaceLayer], surfaceLayer
+		out.groundM, out.ground, out.top = surface, source[surfaceLayer], topOf(surfaceLayer)
 	case surface > ground:
-		out.coverM, out.cover, out.top[0] = surface-ground, source[surfaceLayer], surfaceLayer
+		out.coverM, out.cover, out.top = surface-ground, source[surfaceLayer], topOf(surfaceLayer)
 	case surface == surface:
 		// The surface lies below the ground, by an error of one of the two.
 	default:
 		for _, l := range []layer{canopyLayer, buildingsLayer, outlinesLayer} {
 			if h[l] > out.coverM {
-				out.coverM, out.cover, out.top[1] = h[l], source[l], l
+				out.coverM, out.cover, out.top = h[l], source[l], topOf(l)
 			}
 		}
 	}
 	return out
 }
 
-// bendBetween is how the top runs from one place to the next. Where another
-// layer is on top at either end, it runs no lower than both.
-func bendBetween(readers *[layerCount]reader, a, b mix) float64 {
-	if a.top == b.top {
-		return bendOf(readers, a.top)
+// bendBetween is how the top runs from one place to the next, a distance stepM
+// apart. Where another layer is on top at either end, or may rise above the top in
+// between, it runs no lower than both.
+func bendBetween(readers *[layerCount]reader, a, b *mix, stepM float64) float64 {
+	bend := bendOf(readers, a.top)
+	if a.top != b.top {
+		bend = max(0, bend, bendOf(readers, b.top))
 	}
-	return max(0, bendOf(readers, a.top), bendOf(readers, b.top))
+	topA, topB := a.groundM+a.coverM, b.groundM+b.coverM
+	for l := range a.tops {
+		layers := topOf(layer(l))
+		if layers == a.top || a.tops[l] != a.tops[l] || b.tops[l] != b.tops[l] {
+			continue
+		}
+		other := bendOf(readers, layers)
+		if (other-bend)*stepM*stepM/4 > min(topA-a.tops[l], topB-b.tops[l]) {
+			bend = other
+		}
+	}
+	return bend
+}
+
+// topOf are the layers whose sum is the top where a layer is what stands highest.
+func topOf(l layer) [2]layer {
+	if l <= surfaceLayer {
+		return [2]layer{l, layerCount}
+	}
+	return [2]layer{groundLayer, l}
 }
 
 func bendOf(readers *[layerCount]reader, top [2]layer) float64 {

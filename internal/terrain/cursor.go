@@ -29,6 +29,7 @@ type cursor struct {
 
 	found []int32                // scratch
 	away  *[]profile.Unreachable // takes note of sources that do not answer
+	dead  []int32                // tiles that did not: they are not asked again
 }
 
 // pixel states of a lookup.
@@ -146,9 +147,16 @@ func (c *cursor) fetch(n int32, i, j int) error {
 	if c.m.turn != 0 {
 		x -= c.m.turn * floorDiv(x, c.m.turn)
 	}
-	got, err := c.chunks.at(c.ctx, t.entry, x, j-t.j)
+	var got *chunk
+	err := error(raster.ErrUnreachable)
+	if !slices.Contains(c.dead, n) {
+		got, err = c.chunks.at(c.ctx, t.entry, x, j-t.j)
+	}
 	if unreachable(err) {
-		c.noteAway(t.entry, err)
+		if got == nil && !slices.Contains(c.dead, n) {
+			c.noteAway(t.entry, err)
+			c.dead = append(c.dead, n)
+		}
 		c.columns, c.rows, c.uEnd, c.vEnd, c.chunk = 0, 0, 0, 0, nil
 		return nil
 	}

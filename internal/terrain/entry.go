@@ -26,6 +26,7 @@ type entry struct {
 	info     raster.Info
 	path     string
 	bytes    int64
+	beside   besideFile // the file beside it that says where its pixels lie
 	remote   bool
 	outlines *footprints.Footprints
 	gone     atomic.Bool // a remote one that was replaced since it was looked at
@@ -65,7 +66,7 @@ func (e *entry) unchanged() error {
 	if err != nil {
 		return errors.New("the file is gone")
 	}
-	if stat.Size() != e.bytes || !stat.ModTime().Equal(e.Modified) {
+	if stat.Size() != e.bytes || !stat.ModTime().Equal(e.Modified) || besideOf(e.path) != e.beside {
 		return errors.New("the file has changed since it was loaded: reload the rasters to use it as it is now")
 	}
 	return nil
@@ -113,4 +114,23 @@ func kindIn(text string) profile.Kind {
 		return profile.KindSurface
 	}
 	return profile.KindUnstated
+}
+
+// besideFile is the size and the date of the file beside a raster that says where
+// its pixels lie; zero where there is none.
+type besideFile struct {
+	Bytes    int64
+	Modified int64 // nanoseconds since 1970
+}
+
+func besideOf(path string) besideFile {
+	beside := raster.Beside(path)
+	if beside == "" {
+		return besideFile{}
+	}
+	stat, err := os.Stat(beside)
+	if err != nil {
+		return besideFile{}
+	}
+	return besideFile{stat.Size(), stat.ModTime().UnixNano()}
 }

@@ -65,14 +65,14 @@ func (s *sampler) nodes() []float64 {
 		next := length
 		for l := range s.strips {
 			strip := &s.strips[l]
-			for at[l] < len(strip.nodes) && strip.nodes[at[l]].at <= out[len(out)-1] {
+			for at[l] < len(strip.nodes) && strip.nodes[at[l]].at <= out[len(out)-1]+leastStepM {
 				at[l]++
 			}
 			if at[l] < len(strip.nodes) {
 				next = min(next, strip.nodes[at[l]].at)
 			}
 		}
-		if !(next < length) {
+		if !(next < length-leastStepM) {
 			break
 		}
 		out = append(out, next)

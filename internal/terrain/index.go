@@ -23,6 +23,7 @@ type Index map[string]IndexRow
 type IndexRow struct {
 	Bytes    int64
 	Modified time.Time
+	Beside   besideFile
 	Info     raster.Info
 	Bound    orb.Bound
 	PixelM   float64
@@ -33,7 +34,7 @@ type IndexRow struct {
 // it was.
 func (x Index) recall(e *entry) bool {
 	row, ok := x[e.path]
-	if !ok || e.stat() != nil || row.Bytes != e.bytes || !row.Modified.Equal(e.Modified) {
+	if !ok || e.stat() != nil || row.Bytes != e.bytes || !row.Modified.Equal(e.Modified) || row.Beside != e.beside {
 		return false
 	}
 	e.describe(row.Info)
@@ -55,7 +56,7 @@ func (t *Terrain) index() Index {
 			continue
 		}
 		e.mu.Lock()
-		out[e.path] = IndexRow{Bytes: e.bytes, Modified: e.Modified, Info: e.info, Bound: e.Bound, PixelM: e.PixelM, Version: e.known}
+		out[e.path] = IndexRow{Bytes: e.bytes, Modified: e.Modified, Beside: e.beside, Info: e.info, Bound: e.Bound, PixelM: e.PixelM, Version: e.known}
 		e.mu.Unlock()
 	}
 	return out
@@ -74,7 +75,7 @@ type savedRow struct {
 }
 
 // indexFormat stands at the start of a saved index; another one is not read.
-const indexFormat = "ridgehop rasters 1"
+const indexFormat = "ridgehop rasters 2"
 
 // Save writes the index to a file, whole or not at all.
 func (x Index) Save(path string) error {

@@ -101,6 +101,9 @@ func TestReloadUnderLoad(t *testing.T) {
 		must(t, os.Rename(fresh, filepath.Join(folder, "a.asc")))
 		_, err := live.Reload(context.Background())
 		must(t, err)
+		for enough, deadline := answered.Load()+8, time.Now().Add(5*time.Second); answered.Load() < enough && time.Now().Before(deadline); {
+			time.Sleep(time.Millisecond)
+		}
 	}
 	stop()
 	readers.Wait()

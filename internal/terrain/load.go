@@ -198,7 +198,7 @@ func (e *entry) stat() error {
 	if err != nil {
 		return errors.New("cannot be read")
 	}
-	e.Modified, e.bytes = stat.ModTime(), stat.Size()
+	e.Modified, e.bytes, e.beside = stat.ModTime(), stat.Size(), besideOf(e.path)
 	return nil
 }
 

@@ -18,6 +18,7 @@ func (t *Terrain) Sample(ctx context.Context, path profile.Path, how profile.Sam
 	defer t.scratch.Put(s.scratch)
 	s.sources.into = into
 	into.Resize(0)
+	into.PixelM = 0
 	if err := s.cross(how.Rasters); err != nil {
 		return err
 	}

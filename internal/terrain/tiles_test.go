@@ -274,7 +274,7 @@ func TestReplacedObject(t *testing.T) {
 	for _, path := range []profile.Path{near47, near46} {
 		p = sampled(t, terrain, path, profile.Sampling{})
 		if p.GroundM[0] != 777 || p.Sources[0].Version == before.Sources[0].Version {
-			t.Errorf("the next: got %g of %v, want 777 of another version than %v", p.GroundM[0], p.Sources, before.Sources)
+			t.Errorf("the next: got %g of %v (%v), want 777 of another version than %v", p.GroundM[0], p.Sources, p.Unreachable, before.Sources)
 		}
 	}
 }

@@ -69,6 +69,9 @@ func (e *entry) current(d *raster.Dataset) error {
 		return e.unchanged()
 	case d.Version() != e.known:
 		e.gone.Store(true)
+		if e.source.tiles == nil {
+			return fmt.Errorf("%w: it was replaced; reload the rasters to have the new one", raster.ErrChanged)
+		}
 		return fmt.Errorf("%w: it was replaced; ask again to have the new one", raster.ErrChanged)
 	}
 	return nil

@@ -214,13 +214,17 @@ const partsOfCell = 16
 func (w *walk) irregular(l int, c *stretch, p *piece, voidFrom float64) (float64, error) {
 	level := &w.levels[l]
 	a := c.a
-	ha, _, err := level.cur.height(c.ua, c.va)
+	// On the outer edge itself the pixel that a place lies in may be the one
+	// beyond it: both ends are looked at a little inwards.
+	inward := (c.b - c.a) * 1e-7
+	u, v := p.at(c.a + inward)
+	ha, _, err := level.cur.height(u, v)
 	if err != nil {
 		return voidFrom, err
 	}
 	for k := 1; k <= partsOfCell; k++ {
 		b := c.a + (c.b-c.a)*float64(k)/partsOfCell
-		u, v := p.at(b)
+		u, v := p.at(min(b, c.b-inward))
 		hb, tile, err := level.cur.height(u, v)
 		if err != nil {
 			return voidFrom, err
@@ -234,6 +238,7 @@ func (w *walk) irregular(l int, c *stretch, p *piece, voidFrom float64) (float64
 			fallthrough
 		case known:
 			w.out.known(a, ha, b, hb, 0, w.sources.of(level.mosaic, tile))
+			w.joined = nil
 		case voidFrom != voidFrom:
 			voidFrom = a
 		}

@@ -1,5 +1,7 @@
 package catalogue
 
+import "strings"
+
 // ellipsoid is the datum that needs no grid: its undulation is 0.
 const ellipsoid = "ellipsoid"
 
@@ -60,4 +62,25 @@ func (r *reader) gridFile(e entry, text string) (string, bool) {
 		problem = r.unlikeFile(path)
 	}
 	return path, e.allowed(text, problem)
+}
+
+// meantDatum is the name that another spelling of a datum stands for; empty where
+// it stands for none. Heights above the ellipsoid under a name that is taken for
+// a national datum would be tens of metres off.
+func meantDatum(text string) string {
+	switch strings.NewReplacer("-", "", "_", "", " ", "").Replace(strings.ToLower(text)) {
+	case "wgs84", "grs80", "etrs89", "ellipsoidal", "ellipsoidheight", "epsg4979":
+		return ellipsoid
+	case "egm1996", "epsg5773":
+		return "egm96"
+	case "egm08", "epsg3855":
+		return "egm2008"
+	case "egm96", "egm2008", ellipsoid:
+		for _, known := range []string{"egm96", "egm2008", ellipsoid} {
+			if strings.NewReplacer("-", "", "_", "", " ", "").Replace(strings.ToLower(text)) == known && text != known {
+				return known
+			}
+		}
+	}
+	return ""
 }

@@ -102,6 +102,12 @@ func (f fields) oneOrigin() {
 // readDatum wants a datum where heights count from one.
 func (f fields) readDatum(kind profile.Kind) string {
 	e, stated := f.get("datum")
+	if stated {
+		if meant := meantDatum(e.node.Value); meant != "" {
+			e.fault("is %s; write %s", shown(e.node.Value), meant)
+			return ""
+		}
+	}
 	switch kind {
 	case profile.KindGround, profile.KindSurface:
 		if _, ok := f.need("datum", "say what the heights count from: egm96, egm2008, ellipsoid or another name"); !ok {
