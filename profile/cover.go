@@ -37,8 +37,9 @@ func (p *Profile) AddCover(c Cover) {
 			more, p.CoverM[i] = cover-p.CoverM[i], cover
 		}
 		// Where both ends of a stretch rise alike it runs as before, only higher;
-		// otherwise no lower than straight.
-		if i > 0 && len(p.BendPerM) > 0 && more != added {
+		// otherwise, or where cover of its own dips between them, no lower than
+		// straight.
+		if i > 0 && len(p.BendPerM) > 0 && (more != added || c.StatedM > 0 && p.hasCover(i-1) && p.hasCover(i)) {
 			p.BendPerM[i-1] = max(0, p.BendPerM[i-1])
 		}
 		added = more
@@ -87,3 +88,6 @@ func (p *Profile) coverKind(i int) Kind {
 	}
 	return KindGround
 }
+
+// hasCover is whether a source gives cover at sample i.
+func (p *Profile) hasCover(i int) bool { return len(p.CoverIndex) > 0 && p.CoverIndex[i] >= 0 }

@@ -137,10 +137,10 @@ func bendBetween(readers *[layerCount]reader, a, b *mix, stepM float64) float64 
 		if layers == a.top || a.tops[l] != a.tops[l] || b.tops[l] != b.tops[l] {
 			continue
 		}
-		other := bendOf(readers, layers)
-		if (other-bend)*stepM*stepM/4 > min(topA-a.tops[l], topB-b.tops[l]) {
-			bend = other
-		}
+		// It lies a gap below at both ends; (d - d_i) (d_i+1 - d) is a quarter of
+		// the square of the step at most, in the middle.
+		gap := min(topA-a.tops[l], topB-b.tops[l])
+		bend = max(bend, bendOf(readers, layers)-4*gap/(stepM*stepM))
 	}
 	return bend
 }

@@ -103,3 +103,49 @@ func BenchmarkExactPath(b *testing.B) {
 	b.ReportMetric(float64(b.Elapsed().Nanoseconds())/float64(b.N)/float64(len(into.GroundM)), "ns/sample")
 	b.ReportMetric(float64(len(into.GroundM)), "samples")
 }
+
+// A path that leaves a fine raster for a coarse one joins it by a jump: nothing of
+// the coarse ground is lowered towards the fine, and each keeps its name.
+func TestJumpsBetweenRasters(t *testing.T) {
+	terrain := loadedGrids(t, map[string]grid{
+		"coarse.asc": square(40, 30, constant(100)), "fine.asc": square(10, 10, constant(0)),
+	})
+	at, r := metresFrom(t, terrain), rand.New(rand.NewPCG(8, 1))
+	for range 300 {
+		y := 44 + 7*r.Float64() // along the half pixel outside the fine raster's outermost centres
+		p := sampled(t, terrain, pathOf(t, at(-400+r.Float64(), y), at(300, y+2*r.Float64()-1)), profile.Sampling{})
+		for i := 1; i < len(p.DistanceM); i++ {
+			step := p.DistanceM[i] - p.DistanceM[i-1]
+			if jump := math.Abs(p.GroundM[i] - p.GroundM[i-1]); jump > 1 && step > 2*jointM {
+				t.Fatalf("at %g m: got a slope of %g m over %g m, want a jump", p.DistanceM[i], jump, step)
+			}
+			coarse := p.Sources[p.SourceIndex[i]].Name == "coarse.asc"
+			if (p.GroundM[i] > 50) != coarse {
+				t.Fatalf("at %g m: got %g m of %s", p.DistanceM[i], p.GroundM[i], p.Sources[p.SourceIndex[i]].Name)
+			}
+		}
+	}
+}
+
+// A surface that dips below bare earth at both ends of a cell and rises above it
+// in between counts where it does.
+func TestTopBetweenLayers(t *testing.T) {
+	twist := func(column, row int) float64 { // 90 m with 140 m at two opposite corners of every other cell
+		if (column+row)%2 == 0 {
+			return 140
+		}
+		return 90
+	}
+	folder := gridsOf(t, map[string]grid{"earth.asc": square(10, 10, constant(100)), "top.asc": square(10, 10, twist)})
+	terrain := stated(t, folder, "sources:\n"+oneSource("earth", "ground", "datum: odn, files: [earth.asc]")+oneSource("top", "surface", "datum: odn, files: [top.asc]"))
+	at := metresFrom(t, terrain)
+	for _, ends := range [][2]orb.Point{{at(-34, -33), at(36, 37)}, {at(-35.2, 35), at(35, -34.9)}, {at(-30, 12), at(33, -4)}} {
+		path := pathOf(t, ends[0], ends[1])
+		exact, dense := sampled(t, terrain, path, profile.Sampling{}), sampled(t, terrain, path, profile.Sampling{SpacingM: 0.05})
+		for i, d := range dense.DistanceM {
+			if got, want := topAt(exact, d), dense.GroundM[i]+dense.CoverM[i]; got < want-0.002 || got > want+15 {
+				t.Fatalf("at %g m: got a top of %g m, want %g, and not much more", d, got, want)
+			}
+		}
+	}
+}
