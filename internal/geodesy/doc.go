@@ -4,7 +4,8 @@
 // Geodesy 87 (2013), which converges everywhere, poles, antimeridian and
 // antipodes included.
 //
-// It also knows where a compass points: the World Magnetic Model 2025.
+// It also knows where a compass points, by the World Magnetic Model 2025, and how
+// high the geoid lies above the ellipsoid, by grids that are read here.
 //
 // Points are orb.Point: longitude, latitude, in degrees. Everything here is
 // safe for concurrent use.

@@ -14,6 +14,7 @@ import (
 
 	"github.com/paulmach/orb"
 
+	"ridgehop/internal/geodesy"
 	"ridgehop/profile"
 )
 
@@ -143,20 +144,20 @@ func TestRealTerrain(t *testing.T) {
 // reading of the 15' grid comes within 0.06 m. The fifth lies beside the
 // meridian where the grid begins and ends again.
 func TestPublishedUndulations(t *testing.T) {
-	raw, err := os.ReadFile(firstOf(t, egm96Files, "proj-data"))
+	f, err := os.Open(firstOf(t, egm96Files, "proj-data"))
 	must(t, err)
-	// NOAA's GTX format: big-endian, south-western node, steps, rows and
-	// columns, then rows from the south.
-	be := binary.BigEndian
-	double := func(at int) float64 { return math.Float64frombits(be.Uint64(raw[at:])) }
-	south, west, step := double(0), double(8), double(16)
-	rows, columns := int(be.Uint32(raw[32:])), int(be.Uint32(raw[36:]))
-	if rows != 721 || columns != 1440 || len(raw) != 40+4*rows*columns || step != 0.25 {
-		t.Fatalf("got %d x %d nodes of %g degrees in %d bytes, want 1440 x 721 of 0.25", columns, rows, step, len(raw))
-	}
-	g := grid{columns: columns, rows: rows, left: west - step/2, top: south + (float64(rows)-0.5)*step, pixel: step}
+	defer f.Close()
+	geoid, err := geodesy.ReadGTX(f)
+	must(t, err)
+	// A node every quarter of a degree, pole to pole; a raster's pixels lie around them.
+	const columns, rows, step = 1440, 721, 0.25
+	g := grid{columns: columns, rows: rows, left: -180 - step/2, top: 90 + step/2, pixel: step}
 	g.height = func(column, row int) float64 {
-		return float64(math.Float32frombits(be.Uint32(raw[40+4*((rows-1-row)*columns+column):])))
+		n, ok := geoid.UndulationM(-180+float64(column)*step, 90-float64(row)*step)
+		if !ok {
+			t.Fatalf("got no undulation at node %d, %d", column, row)
+		}
+		return n
 	}
 	terrain := loadedGrids(t, map[string]grid{"egm96.asc": g})
 	cases := []struct {

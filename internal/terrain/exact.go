@@ -40,7 +40,7 @@ func (s *sampler) lay(l layer) error {
 	if len(s.layers[l]) == 0 {
 		return nil
 	}
-	w := walk{ctx: s.ctx, levels: s.levels(l), lengthM: s.line.LengthM(), out: out, sources: &s.sources}
+	w := walk{ctx: s.ctx, levels: s.levels(l), out: out, sources: &s.sources}
 	if err := w.run(0, 0, s.line.LengthM()); err != nil {
 		return err
 	}

@@ -12,7 +12,6 @@ import (
 type walk struct {
 	ctx     context.Context
 	levels  []level
-	lengthM float64
 	out     *strip
 	sources *sources
 	joined  *chunk // the chunk of the last stretch, if it lay within one

@@ -68,19 +68,14 @@ func (r *reader) gridFile(e entry, text string) (string, bool) {
 // it stands for none. Heights above the ellipsoid under a name that is taken for
 // a national datum would be tens of metres off.
 func meantDatum(text string) string {
-	switch strings.NewReplacer("-", "", "_", "", " ", "").Replace(strings.ToLower(text)) {
-	case "wgs84", "grs80", "etrs89", "ellipsoidal", "ellipsoidheight", "epsg4979":
-		return ellipsoid
-	case "egm1996", "epsg5773":
-		return "egm96"
-	case "egm08", "epsg3855":
-		return "egm2008"
-	case "egm96", "egm2008", ellipsoid:
-		for _, known := range []string{"egm96", "egm2008", ellipsoid} {
-			if strings.NewReplacer("-", "", "_", "", " ", "").Replace(strings.ToLower(text)) == known && text != known {
-				return known
-			}
-		}
+	plain := strings.NewReplacer("-", "", "_", "", " ", "").Replace(strings.ToLower(text))
+	meant := map[string]string{
+		"wgs84": ellipsoid, "grs80": ellipsoid, "etrs89": ellipsoid, "ellipsoidal": ellipsoid, "ellipsoidheight": ellipsoid, "epsg4979": ellipsoid,
+		"egm1996": "egm96", "epsg5773": "egm96", "egm08": "egm2008", "epsg3855": "egm2008",
+		ellipsoid: ellipsoid, "egm96": "egm96", "egm2008": "egm2008",
+	}[plain]
+	if meant == text { // spelt right
+		return ""
 	}
-	return ""
+	return meant
 }
