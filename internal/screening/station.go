@@ -3,9 +3,10 @@ package screening
 import (
 	"math"
 
-	"github.com/tidwall/geodesic"
+	"github.com/paulmach/orb"
 
 	"ridgehop/internal/assess"
+	"ridgehop/internal/geodesy"
 	"ridgehop/internal/screening/intake"
 )
 
@@ -104,20 +105,12 @@ func (s *station) covers(azimuthDeg float64) bool {
 }
 
 // line measures the path to a candidate: its length, and the azimuths at the
-// site and at the candidate.
+// site and at the candidate. Places that are no places were refused before: NaN
+// is within no range.
 func (s *station) line(c *intake.Candidate) (lengthM, azimuthDeg, backDeg float64) {
-	geodesic.WGS84.Inverse(s.lat, s.lon, c.Lat, c.Lon, &lengthM, &azimuthDeg, &backDeg)
-	return lengthM, compass(azimuthDeg), compass(backDeg + 180)
-}
-
-// compass brings an azimuth into 0 <= azimuth < 360.
-func compass(deg float64) float64 {
-	deg = math.Mod(deg, 360)
-	if deg < 0 {
-		deg += 360
+	path, err := geodesy.NewLine(orb.Point{s.lon, s.lat}, c.Point())
+	if err != nil {
+		return math.NaN(), math.NaN(), math.NaN()
 	}
-	if deg >= 360 { // a rounding below 0
-		return 0
-	}
-	return deg
+	return path.LengthM(), path.AzimuthADeg(), path.AzimuthBDeg()
 }
